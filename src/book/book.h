@@ -1,0 +1,168 @@
+/* book: the one SQLite file that holds a plant's description and readings: made, opened, migrated,
+ * loaded, read, checked. The only user of SQLite. Nothing is ever overwritten: corrections are new
+ * versions, descriptions are kept, every batch and description hashes its content and the head
+ * before it. */
+#ifndef WEIRBOOK_BOOK_H
+#define WEIRBOOK_BOOK_H
+
+#include "base/base.h"
+#include "frame/frame.h"
+#include "plant/plant.h"
+
+#define BOOK_APPLICATION_ID 0x57656972 /* "Weir" */
+
+struct book;
+
+enum book_mode { BOOK_READ, BOOK_WRITE };
+
+struct author {
+    const char *who;  /* from --by or the login */
+    const char *when; /* clock_stamp() */
+};
+
+/* Makes a book from a finished draft. Never over an existing file. A failure leaves no file. */
+MUST_USE enum status book_create(const char *path, const struct plant_draft *draft,
+                                 const struct author *author, struct fault *f);
+/* Opens a book. Says so, and touches nothing, when the file is no book, is a newer book, has hard
+ * links, holds triggers that are not ours, or (BOOK_WRITE) cannot be written. A book that another
+ * process is writing is waited for (5 s), then a fault names it. BOOK_READ never writes but to roll
+ * back what a killed load left. */
+MUST_USE enum status book_open(struct book **out, const char *path, enum book_mode mode,
+                               struct fault *f);
+void book_close(struct book *b); /* accepts NULL; abandons a load that was not ended */
+const char *book_sqlite_version(void);
+int book_format(void); /* the newest format this program writes: user_version */
+
+/* ---- description
+ * --------------------------------------------------------------------------------- */
+
+/* The description in force as a draft (its rows as written) and, finished, as a plant. */
+MUST_USE enum status book_plant(struct book *b, struct arena *a, struct plant_draft **draft,
+                                struct plant **plant, struct fault *f);
+/* Puts a changed description in force. Refuses to drop a point or parameter that has readings.
+ * *changed is false (and nothing written) when it says the same as the one in force. */
+MUST_USE enum status book_apply(struct book *b, const struct plant_draft *draft,
+                                const struct author *author, const char *reason, bool *changed,
+                                struct fault *f);
+
+/* ---- loading: one transaction for one file
+ * ---------------------------------------------------------- */
+
+struct book_counts {
+    long rows, accepted, present, revised, aside;
+};
+
+struct book_source {
+    const char *file; /* as given */
+    int64_t bytes;
+    uint8_t digest[DIGEST_BYTES];
+    const char *dialect_told; /* how it was understood */
+    const char *reason;       /* why values were revised; "" when none were to be */
+};
+
+enum book_outcome { BOOK_ACCEPTED, BOOK_PRESENT, BOOK_REVISED, BOOK_CONTRADICTS };
+
+/* What stands in the book under a reading's key, when it contradicts. */
+struct book_clash {
+    const char *text, *file; /* die with the next call */
+    long line;
+    char unit[32];
+};
+
+/* Whether a file with this digest was loaded before; *batch, *when, *file of that load (in the
+ * arena). */
+MUST_USE enum status book_known(struct book *b, struct arena *a, const uint8_t digest[DIGEST_BYTES],
+                                bool *known, int64_t *batch, const char **file, const char **when,
+                                struct book_counts *counts, struct fault *f);
+/* With `revise`, a value that contradicts the book becomes a revision of it; it never revises a row
+ * of its own file. A reading under a key whose newest version is withdrawn contradicts nothing and
+ * is accepted. */
+MUST_USE enum status book_load_begin(struct book *b, const struct plant *plant,
+                                     const struct author *author, bool revise, struct fault *f);
+MUST_USE enum status book_load_reading(struct book *b, const struct reading *r,
+                                       enum book_outcome *outcome, struct book_clash *clash,
+                                       struct fault *f);
+MUST_USE enum status book_load_aside(struct book *b, const struct row_text *row, enum reason reason,
+                                     const char *explanation, struct fault *f);
+/* Writes the batch with its counts and hash and commits; rows must equal the four counts. */
+MUST_USE enum status book_load_end(struct book *b, const struct book_source *source, long rows,
+                                   struct book_counts *counts, int64_t *batch, struct fault *f);
+void book_load_abandon(struct book *b); /* rolls back: a dry run, a fault */
+
+/* ---- reading
+ * ------------------------------------------------------------------------------------------ */
+
+/* Adds the readings of the spans to a frame (all versions; the frame keeps the newest), and for a
+ * totalizer's column the last reading before the span. Touches only those rows (by index). Texts
+ * live in the arena. */
+MUST_USE enum status book_fill(struct book *b, struct arena *a, const struct plant *plant,
+                               const struct frame_span *spans, size_t count, struct frame *frame,
+                               struct fault *f);
+/* One span per column that has a reading in first..last, for commands that want all. */
+MUST_USE enum status book_spans(struct book *b, struct arena *a, day_t first, day_t last,
+                                struct frame_span **spans, size_t *count, struct fault *f);
+/* The first and last day that has a reading; DAY_NONE in an empty book. */
+MUST_USE enum status book_extent(struct book *b, day_t *first, day_t *last, struct fault *f);
+/* Every reading in force of first..last (DAY_NONE: open), in order of point, parameter, day and
+ * time; withdrawn ones left out. What is handed over dies with the call. */
+typedef enum status book_reading_sink(void *context, const struct reading *r, struct fault *f);
+MUST_USE enum status book_each(struct book *b, const struct plant *plant, day_t first, day_t last,
+                               book_reading_sink *sink, void *context, struct fault *f);
+
+struct book_aside {
+    int64_t batch;
+    struct row_text row;
+    const char *reason, *explanation;
+};
+typedef enum status book_aside_sink(void *context, const struct book_aside *aside, struct fault *f);
+/* Rows set aside; first..last bounds the days of those whose date could be read, others always come
+ * (DAY_NONE: all). */
+MUST_USE enum status book_asides(struct book *b, day_t first, day_t last, book_aside_sink *sink,
+                                 void *context, struct fault *f);
+
+struct book_revision {
+    day_t day;
+    int minute;
+    int point, parameter;
+    const char *sample, *old_text, *new_text, *unit, *who, *when, *reason, *file;
+    long line;
+    int version;
+};
+typedef enum status book_revision_sink(void *context, const struct book_revision *r,
+                                       struct fault *f);
+MUST_USE enum status book_revisions(struct book *b, const struct plant *plant, day_t first,
+                                    day_t last, book_revision_sink *sink, void *context,
+                                    struct fault *f);
+
+struct book_batch {
+    int64_t batch;
+    const char *file, *when, *who, *kind; /* kind: "load", "description" */
+    const char *reason;
+    struct book_counts counts;
+    char head[2 * DIGEST_BYTES + 1];
+};
+typedef enum status book_batch_sink(void *context, const struct book_batch *batch, struct fault *f);
+MUST_USE enum status book_batches(struct book *b, book_batch_sink *sink, void *context,
+                                  struct fault *f);
+/* The newest head of the hash chain, as hex. */
+MUST_USE enum status book_head(struct book *b, char out[2 * DIGEST_BYTES + 1], struct fault *f);
+
+/* ---- proving the book sound
+ * ------------------------------------------------------------------------------- */
+
+struct book_finding {
+    const char *what; /* "pages", "foreign keys", "chain", "batch", "reading", "description" */
+    bool good;
+    int64_t batch;    /* 0 when none */
+    const char *file; /* "" when none */
+    long line;        /* 0 when none */
+    const char *note; /* what was found, and what to do */
+};
+typedef enum status book_finding_sink(void *context, const struct book_finding *finding,
+                                      struct fault *f);
+/* SQLite's integrity check, foreign keys, schema, then every batch, reading and description against
+ * its hash chain. One good finding per kind of check when all is well. */
+MUST_USE enum status book_check(struct book *b, book_finding_sink *sink, void *context,
+                                struct fault *f);
+
+#endif

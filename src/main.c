@@ -1,0 +1,15 @@
+/* weirbook: the daily numbers of a wastewater treatment plant. The table of its commands. */
+#include "command/command.h"
+
+#include "base/poison.h"
+
+static const struct command *const commands[] = {
+    &command_new,    &command_load,    &command_day,   &command_process,
+    &command_permit, &command_report,  &command_plant, &command_export,
+    &command_check,  &command_formula, &command_help,  &command_completion,
+};
+
+int main(int argc, char **argv)
+{
+    return command_main(commands, NELEM(commands), argc, argv);
+}

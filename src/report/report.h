@@ -1,0 +1,158 @@
+/* report: the page model and its writers: text, CSV, JSON, workbook. Writers only render: they
+ * neither compute nor round, so that all forms of a page agree. */
+#ifndef WEIRBOOK_REPORT_H
+#define WEIRBOOK_REPORT_H
+
+#include "base/base.h"
+#include "frame/frame.h"
+#include "permit/permit.h"
+#include "plant/plant.h"
+#include "process/process.h"
+
+/* ---- the page model ----------------------------------------------------------------------------
+ * Everything a page points at belongs to its arena; writers only read. */
+
+/* Colour follows the word, never alone. FLAG_LIGHT marks nothing bad: weekends, figures of habit.
+ */
+enum flag { FLAG_NONE, FLAG_BAD, FLAG_SHORT, FLAG_WATCH, FLAG_GOOD, FLAG_LIGHT, FLAGS };
+enum align {
+    ALIGN_LEFT,
+    ALIGN_RIGHT,
+    ALIGN_POINT
+}; /* ALIGN_POINT: numbers by their decimal point */
+
+enum cell_kind {
+    CELL_EMPTY,
+    CELL_TEXT,
+    CELL_NUMBER, /* `text` is the number as printed; a workbook gets it as a number */
+    CELL_DATE    /* `text` is YYYY-MM-DD; a workbook gets a true date */
+};
+
+struct cell {
+    enum cell_kind kind;
+    const char *text; /* never NULL */
+    enum flag flag;
+};
+
+struct column {
+    const char *key;   /* CSV heading and JSON key; NULL: not in those */
+    const char *title; /* heading on a page, units included: "BOD5, mg/L" */
+    enum align align;
+    bool wraps; /* long text may run over several lines */
+    int rank;   /* columns of a higher rank are dropped first when a page is too wide; 0: never */
+};
+
+struct table {
+    const char *title; /* "" for none */
+    const struct column *column;
+    size_t columns;
+    struct cell *cell; /* row after row */
+    size_t rows, room;
+    struct arena *arena;
+};
+
+struct table *table_new(struct arena *a, const char *title, const struct column *column,
+                        size_t columns);
+/* One more row, all cells empty; returns its first cell, which stays in place until the next row.
+ */
+struct cell *table_row(struct table *t);
+struct cell cell_text(const char *text);
+struct cell cell_number(const char *text); /* "" becomes CELL_EMPTY */
+struct cell cell_count(struct arena *a, long n);
+struct cell cell_day(struct arena *a, day_t day); /* DAY_NONE becomes CELL_EMPTY */
+struct cell cell_flagged(struct cell c, enum flag flag);
+
+enum block_kind { BLOCK_HEADING, BLOCK_LINE, BLOCK_TABLE, BLOCK_SPACE, BLOCK_NEW_PAGE };
+struct block {
+    enum block_kind kind;
+    const char *text; /* BLOCK_HEADING, BLOCK_LINE (wrapped to the width) */
+    enum flag flag;   /* of a BLOCK_LINE */
+    const struct table *table;
+};
+
+struct page {
+    struct arena *arena;
+    struct block *block;
+    size_t blocks, room;
+};
+
+struct page *page_new(struct arena *a);
+void page_heading(struct page *p, const char *text);
+void page_line(struct page *p, enum flag flag, const char *format, ...) PRINTS(3, 4);
+void page_table(struct page *p, const struct table *t);
+void page_space(struct page *p);
+void page_break(struct page *p); /* a form feed on paper */
+
+/* ---- writers
+ * ------------------------------------------------------------------------------------- To a
+ * stream; the caller flushes and checks it once at the end (a full device is a failure). */
+
+struct text_style {
+    int width;   /* columns: 100, or less on a narrow terminal */
+    bool colour; /* only on a terminal that wants it (NO_COLOR, TERM=dumb) */
+};
+
+void write_text(FILE *out, const struct page *p, const struct text_style *style);
+void write_csv(FILE *out, const struct table *t); /* columns with a key, RFC 4180, LF, guarded */
+void write_json(
+    FILE *out,
+    const struct table *t); /* an array of objects; numbers as written, empty cells null */
+
+/* ---- the month ----------------------------------------------------------------------------------
+ */
+
+struct month_aside { /* a row set aside, for the page */
+    const char *file, *reason, *explanation, *date, *point, *parameter, *value;
+    long line;
+    int column;
+};
+struct month_revision {
+    const char *date, *point, *parameter, *old_text, *new_text, *unit, *who, *when, *reason, *file;
+    long line;
+};
+
+struct month_input {
+    const struct plant *plant;
+    const struct frame *frame;
+    const struct permit_month *permit;
+    const struct process_figure *process; /* by week or month, for the text and the workbook */
+    size_t process_count;                 /* 0: none */
+    const struct process_figure *daily;   /* by day, for the workbook; */
+    size_t daily_count;                   /* 0: none */
+    const struct month_aside *aside;
+    size_t asides;
+    const struct month_revision *revision;
+    size_t revisions;
+    const char *head;    /* the book's newest head, hex */
+    const char *version; /* the program's */
+    day_t printed;
+};
+
+/* A process figure as it is printed: three significant figures, whole digits never rounded away, at
+ * most six decimals (common practice, no source). "" for NULL. */
+const char *report_process_number(struct arena *a, const struct fraction *value);
+/* Process figures as a table with the columns of the interface: by day
+ * date,name,at,parameter,value, unit,note; by longer steps
+ * from,to,name,at,parameter,count,mean,min,max,unit. */
+struct table *report_process_table(struct arena *a, const struct process_figure *figure,
+                                   size_t count, enum process_step step);
+
+/* `permit` as a table with the seventeen columns of the interface (for --as csv|json). */
+struct table *report_permit_table(struct arena *a, const struct permit_month *m);
+/* `permit` as a page: exceedances, shortfalls, then every limit with figure, limit, samples,
+ * verdict. */
+struct page *report_permit_page(struct arena *a, const struct plant *plant,
+                                const struct permit_month *m);
+/* The monthly summary as text: the permit page, daily values, rows set aside, revisions, the rules
+ * used, cautions, a place for the certification. Fits 100 columns, US Letter or A4. */
+struct page *report_month_page(struct arena *a, const struct month_input *in);
+/* The same as a workbook: Summary, Limits, Daily, Process (when given), Exceedances, Set aside,
+ * Corrections (when there are any), Rules and notes. Written beside `path` and renamed. */
+MUST_USE enum status report_month_workbook(struct arena *a, const struct month_input *in,
+                                           const char *path, struct fault *f);
+/* A stream written beside `path` and renamed once whole: for the text report. `path` may be an
+ * existing plain file, which is replaced, or nothing yet; on a fault it is as it was. */
+MUST_USE enum status report_file(const char *path, void (*write)(FILE *out, const void *context),
+                                 const void *context, struct fault *f);
+
+#endif
