@@ -9,13 +9,14 @@
 #include <stdint.h>
 #include <stdio.h>
 
-#define MUST_USE       __attribute__((warn_unused_result))
-#define PRINTS(f, a)   __attribute__((format(printf, f, a)))
-#define NELEM(a)       (sizeof(a) / sizeof((a)[0]))
+#define MUST_USE     __attribute__((warn_unused_result))
+#define PRINTS(f, a) __attribute__((format(printf, f, a)))
+#define NELEM(a)     (sizeof(a) / sizeof((a)[0]))
 
 /* ---- faults -------------------------------------------------------------------------------
  * A function that can fail returns a status, gives results through pointers, and takes a fault as
- * its last argument. The first fault wins: whoever knows the cause writes it, callers pass it up. */
+ * its last argument. The first fault wins: whoever knows the cause writes it, callers pass it up.
+ */
 
 enum status { OK = 0, FAULT = 1 };
 
@@ -59,13 +60,15 @@ struct arena;
 
 struct arena *arena_new(void);
 void arena_free(struct arena *a); /* accepts NULL */
-void *arena_alloc(struct arena *a, size_t size) __attribute__((returns_nonnull, malloc)); /* zeroed */
-char *arena_text(struct arena *a, const char *s);                  /* copy of a C string */
-char *arena_bytes(struct arena *a, const char *s, size_t length);  /* copy, NUL added */
+/* Zeroed, aligned to 16 bytes. */
+void *arena_alloc(struct arena *a, size_t size) __attribute__((returns_nonnull, malloc));
+char *arena_text(struct arena *a, const char *s);                 /* copy of a C string */
+char *arena_bytes(struct arena *a, const char *s, size_t length); /* copy, NUL added */
 char *arena_print(struct arena *a, const char *format, ...) PRINTS(2, 3);
 /* A growing array in an arena: returns room for one more element of `size` bytes (zeroed) and
  * counts it in *count. Pass the same `array`, `count`, `capacity` each time. */
-void *arena_push(struct arena *a, void *array_pointer, size_t *count, size_t *capacity, size_t size);
+void *arena_push(struct arena *a, void *array_pointer, size_t *count, size_t *capacity,
+                 size_t size);
 size_t arena_used(const struct arena *a);
 
 /* ---- text ---------------------------------------------------------------------------------
@@ -87,11 +90,12 @@ void text_add_char(struct text *t, char c);
 void text_print(struct text *t, const char *format, ...) PRINTS(2, 3);
 void text_vprint(struct text *t, const char *format, va_list ap);
 
-bool text_equal(const char *a, const char *b);             /* accepts NULL on either side */
-bool text_equal_nocase(const char *a, const char *b);      /* ASCII letters only */
-bool text_is_utf8(const char *s, size_t length);           /* strict */
-int text_width(const char *utf8);                          /* columns on a terminal (utf8proc) */
-/* Adds s with control bytes and bidirectional marks shown as \xNN, so that no file can draw on a terminal. */
+bool text_equal(const char *a, const char *b);        /* accepts NULL on either side */
+bool text_equal_nocase(const char *a, const char *b); /* ASCII letters only */
+bool text_is_utf8(const char *s, size_t length);      /* strict */
+int text_width(const char *utf8);                     /* columns on a terminal (utf8proc) */
+/* Adds s with control bytes and bidirectional marks shown as \xNN, so that no file can draw on a
+ * terminal. */
 void text_add_escaped(struct text *t, const char *s);
 /* The known word nearest to `word` (edit distance, case ignored), or NULL when none is near. */
 const char *text_nearest(const char *word, const char *const *known, size_t count);
@@ -107,18 +111,18 @@ enum weekday { SUNDAY, MONDAY, TUESDAY, WEDNESDAY, THURSDAY, FRIDAY, SATURDAY };
 
 bool day_from(int year, int month, int date, day_t *out); /* false: no such day */
 void day_split(day_t day, int *year, int *month, int *date);
-bool day_parse(const char *iso, day_t *out);              /* YYYY-MM-DD exactly */
-void day_write(day_t day, char out[11]);                  /* YYYY-MM-DD */
+bool day_parse(const char *iso, day_t *out); /* YYYY-MM-DD exactly */
+void day_write(day_t day, char out[11]);     /* YYYY-MM-DD */
 enum weekday day_weekday(day_t day);
 day_t month_first(day_t day);
 day_t month_last(day_t day);
-day_t month_step(day_t first, int months);                /* first day of the month `months` away */
-bool month_parse(const char *iso, day_t *first);          /* YYYY-MM */
-const char *month_name(int month);                        /* 1: "January" */
-extern const char *const weekday_names[7];                /* "sunday" ... */
+day_t month_step(day_t first, int months);       /* first day of the month `months` away */
+bool month_parse(const char *iso, day_t *first); /* YYYY-MM */
+const char *month_name(int month);               /* 1: "January" */
+extern const char *const weekday_names[7];       /* "sunday" ... */
 /* Minutes after midnight, 0 to 1440 ("24:00"); H:MM, HH:MM, HH:MM:SS. -1 stands for "no time". */
 bool minute_parse(const char *s, int *out);
-void minute_write(int minute, char out[6]);               /* "" for -1 */
+void minute_write(int minute, char out[6]); /* "" for -1 */
 
 /* The only readers of the clock. */
 day_t clock_today(void);
@@ -156,15 +160,21 @@ const struct fraction *fraction_from_ratio(struct arena *a, int64_t n, int64_t d
 const struct fraction *fraction_from_decimal(struct arena *a, struct decimal d);
 /* "12.5", "-3", "2/3", "8896443230521/1290320000000", "3785411.784"; NULL when it is not one. */
 const struct fraction *fraction_parse(struct arena *a, const char *s);
-const struct fraction *fraction_add(struct arena *, const struct fraction *, const struct fraction *);
-const struct fraction *fraction_subtract(struct arena *, const struct fraction *, const struct fraction *);
-const struct fraction *fraction_multiply(struct arena *, const struct fraction *, const struct fraction *);
-const struct fraction *fraction_divide(struct arena *, const struct fraction *, const struct fraction *); /* asserts: not by 0 */
+const struct fraction *fraction_add(struct arena *, const struct fraction *,
+                                    const struct fraction *);
+const struct fraction *fraction_subtract(struct arena *, const struct fraction *,
+                                         const struct fraction *);
+const struct fraction *fraction_multiply(struct arena *, const struct fraction *,
+                                         const struct fraction *);
+/* Asserts: not by 0. */
+const struct fraction *fraction_divide(struct arena *, const struct fraction *,
+                                       const struct fraction *);
 const struct fraction *fraction_power(struct arena *, const struct fraction *, unsigned n);
 int fraction_compare(const struct fraction *, const struct fraction *);
 int fraction_sign(const struct fraction *); /* -1, 0, 1 */
 /* Rounded to `decimals` places (negative: to tens, hundreds), exactly. */
-const struct fraction *fraction_round(struct arena *, const struct fraction *, int decimals, enum rounding);
+const struct fraction *fraction_round(struct arena *, const struct fraction *, int decimals,
+                                      enum rounding);
 /* Rounded and written with that many decimals; never "-0". Negative decimals print zeros. */
 void fraction_write(struct text *, const struct fraction *, int decimals, enum rounding);
 char *fraction_print(struct arena *, const struct fraction *, int decimals, enum rounding);
@@ -175,12 +185,15 @@ bool fraction_write_all(struct text *, const struct fraction *, int most);
  * 0.9965 to two figures is 1.0 (one decimal), 9.96 is 10 (none). For zero: figures - 1. */
 int fraction_decimals_for(const struct fraction *, int figures, enum rounding);
 double fraction_double(const struct fraction *); /* nearest double: for workbooks and charts only */
-const struct fraction *fraction_from_double(struct arena *, double); /* exact value of a finite double */
+/* The exact value of a finite double. */
+const struct fraction *fraction_from_double(struct arena *, double);
 
 /* A geometric mean is product^(1/n) and is rounded and compared through its n-th power, exactly.
  * product >= 0, n >= 1. */
-const struct fraction *root_round(struct arena *, const struct fraction *product, unsigned n, int decimals, enum rounding);
-int root_compare(struct arena *, const struct fraction *product, unsigned n, const struct fraction *to);
+const struct fraction *root_round(struct arena *, const struct fraction *product, unsigned n,
+                                  int decimals, enum rounding);
+int root_compare(struct arena *, const struct fraction *product, unsigned n,
+                 const struct fraction *to);
 
 /* ---- units --------------------------------------------------------------------------------
  * schema/units.csv compiled in: spelling, kind, exact factor and offset to the base of the kind.
@@ -198,7 +211,8 @@ bool unit_same_kind(const struct unit *a, const struct unit *b);
 /* The nearest known spelling, or NULL. */
 const char *unit_nearest(const char *name);
 /* Exact; both of one kind (asserted). */
-const struct fraction *unit_convert(struct arena *a, const struct fraction *value, const struct unit *from, const struct unit *to);
+const struct fraction *unit_convert(struct arena *a, const struct fraction *value,
+                                    const struct unit *from, const struct unit *to);
 
 /* ---- digests ------------------------------------------------------------------------------
  * SHA-256 (FIPS 180-4) by libnettle, for the book's chain and the identity of files. */
@@ -208,12 +222,14 @@ struct digest; /* one running hash, in an arena */
 struct digest *digest_new(struct arena *a);
 void digest_add(struct digest *d, const void *bytes, size_t length);
 void digest_end(struct digest *d, uint8_t out[DIGEST_BYTES]); /* and starts afresh */
-void digest_write(const uint8_t in[DIGEST_BYTES], char out[2 * DIGEST_BYTES + 1]); /* lower-case hex */
+/* Lower-case hex. */
+void digest_write(const uint8_t in[DIGEST_BYTES], char out[2 * DIGEST_BYTES + 1]);
 
 /* ---- output -------------------------------------------------------------------------------
- * A cell of CSV: quoted where RFC 4180 asks for it. With `guard`, text that a spreadsheet would take
- * for a formula (first byte = + - @ tab CR) gets a leading apostrophe, unless it is a number; a
- * reader takes exactly one off again (OWASP, CSV injection; CWE-1236). */
+ * A cell of CSV: quoted where RFC 4180 asks for it. With `guard`, text that a spreadsheet would
+ * take for a formula (first byte = + - @ tab CR) gets a leading apostrophe, unless it is a number;
+ * a reader takes exactly one off again (OWASP, CSV injection; CWE-1236). Text with apostrophes of
+ * its own before such a byte gets one more, so that every text comes back as it was. */
 void csv_cell(struct text *t, const char *s, bool guard);
 /* Takes the guard off a cell in place: drops one leading apostrophe when a guarded byte follows. */
 const char *csv_unguard(const char *s);

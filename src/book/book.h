@@ -99,8 +99,9 @@ MUST_USE enum status book_fill(struct book *b, struct arena *a, const struct pla
                                const struct frame_span *spans, size_t count, struct frame *frame,
                                struct fault *f);
 /* One span per column that has a reading in first..last, for commands that want all. */
-MUST_USE enum status book_spans(struct book *b, struct arena *a, day_t first, day_t last,
-                                struct frame_span **spans, size_t *count, struct fault *f);
+MUST_USE enum status book_spans(struct book *b, struct arena *a, const struct plant *plant,
+                                day_t first, day_t last, struct frame_span **spans, size_t *count,
+                                struct fault *f);
 /* The first and last day that has a reading; DAY_NONE in an empty book. */
 MUST_USE enum status book_extent(struct book *b, day_t *first, day_t *last, struct fault *f);
 /* Every reading in force of first..last (DAY_NONE: open), in order of point, parameter, day and
@@ -151,7 +152,8 @@ MUST_USE enum status book_head(struct book *b, char out[2 * DIGEST_BYTES + 1], s
  * ------------------------------------------------------------------------------- */
 
 struct book_finding {
-    const char *what; /* "pages", "foreign keys", "chain", "batch", "reading", "description" */
+    const char *what; /* "pages", "foreign keys", "schema", "chain", "batch", "reading",
+                       * "row set aside", "description" */
     bool good;
     int64_t batch;    /* 0 when none */
     const char *file; /* "" when none */
@@ -161,7 +163,8 @@ struct book_finding {
 typedef enum status book_finding_sink(void *context, const struct book_finding *finding,
                                       struct fault *f);
 /* SQLite's integrity check, foreign keys, schema, then every batch, reading and description against
- * its hash chain. One good finding per kind of check when all is well. */
+ * its hash chain. One good finding per kind of check when all is well; of one kind twenty are told
+ * and the rest counted. */
 MUST_USE enum status book_check(struct book *b, book_finding_sink *sink, void *context,
                                 struct fault *f);
 

@@ -127,8 +127,8 @@ static enum status add_figures(struct making *m, const struct frame *frame, day_
         const char *what =
             *g->parameter ? arena_print(m->arena, "%s %s", g->name, g->parameter) : g->name;
         add(m, m->figures, "figure", g->at, what,
-            cell_number(figure_text(m->arena, g->value, FIGURES_TEXT)),
-            cell_number(figure_text(m->arena, g->value, FIGURES_FILE)), g->unit, g->note);
+            cell_number(figure_print(m->arena, g->value, FIGURES_TEXT)),
+            cell_number(figure_print(m->arena, g->value, FIGURES_FILE)), g->unit, g->note);
     }
     return OK;
 }

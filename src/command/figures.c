@@ -19,7 +19,7 @@ static void drop_zeros(char *s)
     s[n] = '\0';
 }
 
-const char *figure_text(struct arena *a, const struct fraction *value, int figures)
+const char *figure_print(struct arena *a, const struct fraction *value, int figures)
 {
     if (!value)
         return "";

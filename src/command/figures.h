@@ -8,6 +8,6 @@
 enum { FIGURES_TEXT = 4, FIGURES_FILE = 10 };
 
 /* "" for NULL. */
-const char *figure_text(struct arena *a, const struct fraction *value, int figures);
+const char *figure_print(struct arena *a, const struct fraction *value, int figures);
 
 #endif

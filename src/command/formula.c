@@ -126,7 +126,7 @@ static enum status work(struct session *s, const struct formula_options *o, stru
     struct table *t = table_new(s->arena, "", result_columns, NELEM(result_columns));
     struct cell *c = table_row(t);
     c[0] = cell_text(r.formula->name);
-    c[1] = cell_number(figure_text(s->arena, r.value, 15));
+    c[1] = cell_number(figure_print(s->arena, r.value, 15));
     c[2] = cell_text(r.unit);
     session_print(s, o->as, page, t);
     return OK;

@@ -50,7 +50,7 @@ static void add_day(struct arena *a, struct table *t, const struct process_figur
     c[1] = cell_text(g->name);
     c[2] = cell_text(g->at);
     c[3] = cell_text(g->parameter);
-    c[4] = cell_number(figure_text(a, g->value, figures));
+    c[4] = cell_number(figure_print(a, g->value, figures));
     c[5] = cell_text(g->unit);
     c[6] = cell_text(g->note);
 }
@@ -64,9 +64,9 @@ static void add_step(struct arena *a, struct table *t, const struct process_figu
     c[3] = cell_text(g->at);
     c[4] = cell_text(g->parameter);
     c[5] = cell_count(a, g->count);
-    c[6] = cell_number(figure_text(a, g->value, figures));
-    c[7] = cell_number(figure_text(a, g->least, figures));
-    c[8] = cell_number(figure_text(a, g->most, figures));
+    c[6] = cell_number(figure_print(a, g->value, figures));
+    c[7] = cell_number(figure_print(a, g->least, figures));
+    c[8] = cell_number(figure_print(a, g->most, figures));
     c[9] = cell_text(g->unit);
 }
 

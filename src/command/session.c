@@ -103,7 +103,7 @@ enum status session_frame_all(struct session *s, const struct plant *plant, day_
 {
     struct frame_span *spans = NULL;
     size_t count = 0;
-    if (book_spans(s->book, s->arena, first, last, &spans, &count, f) != OK)
+    if (book_spans(s->book, s->arena, plant, first, last, &spans, &count, f) != OK)
         return FAULT;
     return session_frame(s, plant, spans, count, first, last, out, f);
 }

@@ -6,7 +6,8 @@
 
 /* What a day of a totalizer's column comes to. */
 struct meter_day {
-    const struct fraction *volume; /* in the parameter's unit; NULL: `why` says so, or an empty day */
+    const struct fraction
+        *volume; /* in the parameter's unit; NULL: `why` says so, or an empty day */
     const char *why;
     size_t readings;
 };
@@ -46,6 +47,9 @@ const struct column *frame_column(const struct frame *f, int point, int paramete
 const struct reading *const *column_day(const struct column *c, day_t day, size_t *count);
 bool column_has(const struct column *c, day_t first, day_t last);
 
+/* Whether frame_in_unit can turn one into the other. */
+bool units_meet(const struct unit *a, const struct unit *b);
+
 /* Whether a totalizer stands at the point and parameter at any time. */
 bool totalizer_at(const struct plant *p, int point, int parameter);
 void totalizer_work(struct frame *f, struct column *c);
@@ -53,8 +57,8 @@ void totalizer_work(struct frame *f, struct column *c);
 /* Once the columns stand. */
 void discharge_mark(struct frame *f);
 
-/* The day's amount by the day rule, whatever the no-discharge marks say. False: no number; `out` then
- * holds the state and why. */
+/* The day's amount by the day rule, whatever the no-discharge marks say. False: no number; `out`
+ * then holds the state and why. */
 bool day_work(const struct frame *f, const struct column *c, day_t day, const struct rules *rules,
               const struct unit *unit, struct day_value *out);
 

@@ -109,9 +109,9 @@ void problem_of_file(struct plant_draft *d, enum plant_file file, const char *to
 /* ---- cells: each returns false once it has kept a problem ---- */
 
 const char *cell(const struct plant_row *row, int column); /* "" when blank or absent */
-bool cell_blank(const struct plant_row *row, int column);
+bool read_blank(const struct plant_row *row, int column);
 /* The index of a word in a list; a blank cell is a problem. */
-bool cell_word(struct plant_draft *d, const struct plant_row *row, int column, const char *what,
+bool read_word(struct plant_draft *d, const struct plant_row *row, int column, const char *what,
                const char *const *words, size_t count, int *out);
 /* The same for a word that is not a whole cell. */
 bool word_in(struct plant_draft *d, const struct plant_row *row, int column, const char *what,
@@ -119,19 +119,19 @@ bool word_in(struct plant_draft *d, const struct plant_row *row, int column, con
 bool number_in(struct plant_draft *d, const struct plant_row *row, int column, const char *text,
                struct decimal *out);
 /* Blank: not set. */
-bool cell_number(struct plant_draft *d, const struct plant_row *row, int column,
+bool read_number(struct plant_draft *d, const struct plant_row *row, int column,
                  struct optional *out);
 /* Blank: not set. Zero and less are problems. */
-bool cell_positive(struct plant_draft *d, const struct plant_row *row, int column,
+bool read_positive(struct plant_draft *d, const struct plant_row *row, int column,
                    struct optional *out);
 /* A whole number from `least` to `most`; a blank cell leaves *out alone. */
-bool cell_whole(struct plant_draft *d, const struct plant_row *row, int column, int least, int most,
+bool read_whole(struct plant_draft *d, const struct plant_row *row, int column, int least, int most,
                 int *out);
 /* Digits alone, at most `most`; false without a problem. */
 bool whole_parse(const char *text, int most, int *out);
-bool cell_day(struct plant_draft *d, const struct plant_row *row, int column, day_t *out);
+bool read_day(struct plant_draft *d, const struct plant_row *row, int column, day_t *out);
 /* Two day cells, the first not after the second where both are given. */
-bool cell_days(struct plant_draft *d, const struct plant_row *row, int from_column, day_t *from,
+bool read_days(struct plant_draft *d, const struct plant_row *row, int from_column, day_t *from,
                day_t *to);
 bool unit_in(struct plant_draft *d, const struct plant_row *row, int column, const char *text,
              const struct unit **out);
@@ -140,8 +140,8 @@ bool point_in(struct plant_draft *d, const struct plant_row *row, int column, co
 bool parameter_in(struct plant_draft *d, const struct plant_row *row, int column, const char *text,
                   int *out);
 /* The name something new is known by: no blanks, none of the signs that other columns use. */
-bool cell_id(struct plant_draft *d, const struct plant_row *row, int column);
-bool cell_given(struct plant_draft *d, const struct plant_row *row, int column);
+bool read_id(struct plant_draft *d, const struct plant_row *row, int column);
+bool read_given(struct plant_draft *d, const struct plant_row *row, int column);
 /* Splits at blanks (sign ' ') or at another sign, trimmed, into at most `most` parts; returns how
  * many there are, `most` + 1 when there are more. The parts live in the draft's arena. */
 size_t split(struct plant_draft *d, const char *text, char sign, const char **parts, size_t most);
@@ -158,7 +158,7 @@ int rule_find(const char *name); /* -1 when unknown */
 bool rule_set(struct plant_draft *d, const struct plant_row *row, int column, struct rules *r,
               enum rule rule, const char *value);
 /* A cell of `name=value;name=value`. */
-bool cell_rules(struct plant_draft *d, const struct plant_row *row, int column, struct rules *r);
+bool read_rules(struct plant_draft *d, const struct plant_row *row, int column, struct rules *r);
 
 /* ---- limits ---- */
 
@@ -166,11 +166,11 @@ bool statistic_in(struct plant_draft *d, const struct plant_row *row, int column
                   enum statistic *out, int *percentile);
 bool statistic_counts_samples(enum statistic s); /* monthly-, quarterly-, annual-samples */
 bool statistic_is_total(enum statistic s);
-bool cell_season(struct plant_draft *d, const struct plant_row *row, struct season *out);
-bool cell_condition(struct plant_draft *d, const struct plant_row *row, struct condition *out);
-bool cell_frequency(struct plant_draft *d, const struct plant_row *row, const struct rules *rules,
+bool read_season(struct plant_draft *d, const struct plant_row *row, struct season *out);
+bool read_condition(struct plant_draft *d, const struct plant_row *row, struct condition *out);
+bool read_frequency(struct plant_draft *d, const struct plant_row *row, const struct rules *rules,
                     struct frequency *out);
-bool cell_allowed(struct plant_draft *d, const struct plant_row *row, struct limit *l);
+bool read_allowed(struct plant_draft *d, const struct plant_row *row, struct limit *l);
 /* Whether the unit can carry a figure of this basis and statistic of this parameter. */
 bool unit_fits(struct plant_draft *d, const struct plant_row *row, int column, int parameter,
                enum basis basis, enum statistic statistic, const struct unit *unit);

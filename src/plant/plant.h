@@ -22,11 +22,11 @@ enum plant_file {
 #define PLANT_COLUMNS_MOST 20
 
 struct plant_layout {
-    const char *file;                          /* "limits.csv" */
-    bool required;                             /* the folder must have it */
-    size_t columns;                            /* how many it may have */
-    size_t needed;                             /* the first `needed` must be in the header */
-    const char *column[PLANT_COLUMNS_MOST];    /* names, in the order of the design */
+    const char *file;                       /* "limits.csv" */
+    bool required;                          /* the folder must have it */
+    size_t columns;                         /* how many it may have */
+    size_t needed;                          /* the first `needed` must be in the header */
+    const char *column[PLANT_COLUMNS_MOST]; /* names, in the order of the design */
 };
 
 const struct plant_layout *plant_layout(enum plant_file file);
@@ -36,17 +36,40 @@ int plant_column(enum plant_file file, const char *name, const char **nearest);
 /* ---- rules: conventions that permits differ in ---------------------------------------------- */
 
 enum rule {
-    RULE_NONDETECT, RULE_SIGN, RULE_GEOMEAN_ZERO, RULE_WEEK_STARTS, RULE_WEEK_COUNTS_IN,
-    RULE_ROUNDING, RULE_DIGITS, RULE_COMPARE, RULE_REMOVAL, RULE_LOAD_FACTOR, RULE_LOAD_AVERAGE,
-    RULE_COUNT_BY, RULE_NO_DISCHARGE, RULE_DNQ, RULE_LONG_AVERAGE, RULE_PERCENTILE,
-    RULE_LOAD_TOTAL, RULE_FLOW, RULE_INFLUENT, RULE_WINDOW, RULES
+    RULE_NONDETECT,
+    RULE_SIGN,
+    RULE_GEOMEAN_ZERO,
+    RULE_WEEK_STARTS,
+    RULE_WEEK_COUNTS_IN,
+    RULE_ROUNDING,
+    RULE_DIGITS,
+    RULE_COMPARE,
+    RULE_REMOVAL,
+    RULE_LOAD_FACTOR,
+    RULE_LOAD_AVERAGE,
+    RULE_COUNT_BY,
+    RULE_NO_DISCHARGE,
+    RULE_DNQ,
+    RULE_LONG_AVERAGE,
+    RULE_PERCENTILE,
+    RULE_LOAD_TOTAL,
+    RULE_FLOW,
+    RULE_INFLUENT,
+    RULE_WINDOW,
+    RULES
 };
 
 /* The words of each rule, in the order of the design; the first is the default. */
 enum { NONDETECT_ZERO, NONDETECT_HALF, NONDETECT_FULL, NONDETECT_MEDIAN };
 enum { SIGN_ANY, SIGN_ALL, SIGN_NEVER };
 /* week_starts: enum weekday */
-enum { WEEK_COUNTS_END, WEEK_COUNTS_START, WEEK_COUNTS_MOST_DAYS, WEEK_COUNTS_SPLIT, WEEK_COUNTS_DAYS_1_7 };
+enum {
+    WEEK_COUNTS_END,
+    WEEK_COUNTS_START,
+    WEEK_COUNTS_MOST_DAYS,
+    WEEK_COUNTS_SPLIT,
+    WEEK_COUNTS_DAYS_1_7
+};
 /* rounding: enum rounding */
 enum { DIGITS_LIMIT, DIGITS_FIGURES, DIGITS_NUMBER };
 enum { COMPARE_ROUNDED, COMPARE_RAW };
@@ -55,7 +78,11 @@ enum { LOAD_AVERAGE_DAILY, LOAD_AVERAGE_PRODUCT };
 enum { COUNT_BY_DAY, COUNT_BY_READING };
 enum { NO_DISCHARGE_SKIP, NO_DISCHARGE_ZERO };
 enum { DNQ_VALUE, DNQ_ZERO, DNQ_HALF };
-enum { LONG_AVERAGE_DEFAULT, LONG_AVERAGE_MONTHS, LONG_AVERAGE_DAYS }; /* default: months for rolling, days for annual */
+enum {
+    LONG_AVERAGE_DEFAULT,
+    LONG_AVERAGE_MONTHS,
+    LONG_AVERAGE_DAYS
+}; /* default: months for rolling, days for annual */
 enum { PERCENTILE_NEAREST_RANK, PERCENTILE_LINEAR, PERCENTILE_WEIBULL };
 enum { LOAD_TOTAL_DAYS, LOAD_TOTAL_SUM };
 enum { WINDOW_DAYS, WINDOW_RESULTS };
@@ -63,21 +90,21 @@ enum { WINDOW_DAYS, WINDOW_RESULTS };
 enum rule_kind { RULE_IS_WORD, RULE_IS_NUMBER, RULE_IS_DIGITS, RULE_IS_POINT };
 
 struct rule_info {
-    const char *name;               /* "week_counts_in" */
+    const char *name; /* "week_counts_in" */
     enum rule_kind kind;
-    const char *const *words;       /* RULE_IS_WORD, RULE_IS_DIGITS; NULL-terminated */
-    const char *fallback;           /* the default, as written */
-    const char *meaning;            /* one line, for the manual */
+    const char *const *words; /* RULE_IS_WORD, RULE_IS_DIGITS; NULL-terminated */
+    const char *fallback;     /* the default, as written */
+    const char *meaning;      /* one line, for the manual */
 };
 
 const struct rule_info *rule_info(enum rule r);
 
 /* One full set: every rule has a value. */
 struct rules {
-    int word[RULES];               /* index of the word; of a point (RULE_IS_POINT), -1 when unset */
-    struct decimal number[RULES];  /* RULE_IS_NUMBER; RULE_IS_DIGITS with DIGITS_NUMBER: the count */
-    const char *text[RULES];       /* as written; "" for an unset point */
-    bool own[RULES];               /* set by this row itself, not inherited (R41 needs it) */
+    int word[RULES];              /* index of the word; of a point (RULE_IS_POINT), -1 when unset */
+    struct decimal number[RULES]; /* RULE_IS_NUMBER; RULE_IS_DIGITS with DIGITS_NUMBER: the count */
+    const char *text[RULES];      /* as written; "" for an unset point */
+    bool own[RULES];              /* set by this row itself, not inherited (R41 needs it) */
 };
 
 /* A sentence that says the rule in force, for reports and the manual: "less-than results count as
@@ -88,25 +115,76 @@ const char *rule_sentence(struct arena *a, const struct rules *rules, enum rule 
  * Cross references are indexes into the plant's arrays; -1 where there is none. */
 
 enum role {
-    ROLE_INFLUENT, ROLE_PRIMARY_EFFLUENT, ROLE_AERATION, ROLE_SECONDARY_EFFLUENT, ROLE_RETURN_SLUDGE,
-    ROLE_WASTE_SLUDGE, ROLE_EFFLUENT, ROLE_UPSTREAM, ROLE_DOWNSTREAM, ROLE_DIGESTER_FEED,
-    ROLE_DIGESTER, ROLE_DIGESTED_SLUDGE, ROLE_CAKE, ROLE_CHEMICAL, ROLE_OTHER, ROLES
+    ROLE_INFLUENT,
+    ROLE_PRIMARY_EFFLUENT,
+    ROLE_AERATION,
+    ROLE_SECONDARY_EFFLUENT,
+    ROLE_RETURN_SLUDGE,
+    ROLE_WASTE_SLUDGE,
+    ROLE_EFFLUENT,
+    ROLE_UPSTREAM,
+    ROLE_DOWNSTREAM,
+    ROLE_DIGESTER_FEED,
+    ROLE_DIGESTER,
+    ROLE_DIGESTED_SLUDGE,
+    ROLE_CAKE,
+    ROLE_CHEMICAL,
+    ROLE_OTHER,
+    ROLES
 };
 enum basin_kind {
-    BASIN_AERATION, BASIN_ANOXIC, BASIN_PRIMARY_CLARIFIER, BASIN_SECONDARY_CLARIFIER, BASIN_CONTACT,
-    BASIN_DIGESTER, BASIN_THICKENER, BASIN_LAGOON, BASIN_GRIT, BASIN_FILTER, BASIN_MEMBRANE,
-    BASIN_CARBON, BASIN_ULTRAVIOLET, BASIN_OZONE, BASIN_DRYING_BED, BASIN_KINDS
+    BASIN_AERATION,
+    BASIN_ANOXIC,
+    BASIN_PRIMARY_CLARIFIER,
+    BASIN_SECONDARY_CLARIFIER,
+    BASIN_CONTACT,
+    BASIN_DIGESTER,
+    BASIN_THICKENER,
+    BASIN_LAGOON,
+    BASIN_GRIT,
+    BASIN_FILTER,
+    BASIN_MEMBRANE,
+    BASIN_CARBON,
+    BASIN_ULTRAVIOLET,
+    BASIN_OZONE,
+    BASIN_DRYING_BED,
+    BASIN_KINDS
 };
-enum day_rule { DAY_MEAN, DAY_FLOW_WEIGHTED, DAY_MAX, DAY_MIN, DAY_SUM, DAY_LAST, DAY_GEOMETRIC, DAY_RULES };
+enum day_rule {
+    DAY_MEAN,
+    DAY_FLOW_WEIGHTED,
+    DAY_MAX,
+    DAY_MIN,
+    DAY_SUM,
+    DAY_LAST,
+    DAY_GEOMETRIC,
+    DAY_RULES
+};
 enum average { AVERAGE_ARITHMETIC, AVERAGE_GEOMETRIC, AVERAGES };
 enum basis { BASIS_CONCENTRATION, BASIS_LOAD, BASIS_REMOVAL, BASIS_FLOW, BASIS_COUNT, BASES };
 enum bound { BOUND_MAX, BOUND_MIN, BOUND_BELOW, BOUND_ABOVE, BOUND_REPORT, BOUND_TARGET, BOUNDS };
 enum statistic {
-    STAT_INSTANTANEOUS, STAT_DAILY, STAT_WEEKLY_AVERAGE, STAT_MONTHLY_AVERAGE, STAT_ROLLING_7_DAY,
-    STAT_ROLLING_30_DAY, STAT_MONTHLY_GEOMEAN, STAT_WEEKLY_GEOMEAN, STAT_MONTHLY_TOTAL,
-    STAT_QUARTERLY_AVERAGE, STAT_SEMIANNUAL_AVERAGE, STAT_ANNUAL_AVERAGE, STAT_ROLLING_12_MONTH,
-    STAT_ANNUAL_TOTAL, STAT_MONTHLY_MEDIAN, STAT_PERCENTILE, STAT_ROLLING_7_DAY_MEDIAN,
-    STAT_ROLLING_30_DAY_GEOMEAN, STAT_MONTHLY_SAMPLES, STAT_QUARTERLY_SAMPLES, STAT_ANNUAL_SAMPLES,
+    STAT_INSTANTANEOUS,
+    STAT_DAILY,
+    STAT_WEEKLY_AVERAGE,
+    STAT_MONTHLY_AVERAGE,
+    STAT_ROLLING_7_DAY,
+    STAT_ROLLING_30_DAY,
+    STAT_MONTHLY_GEOMEAN,
+    STAT_WEEKLY_GEOMEAN,
+    STAT_MONTHLY_TOTAL,
+    STAT_QUARTERLY_AVERAGE,
+    STAT_SEMIANNUAL_AVERAGE,
+    STAT_ANNUAL_AVERAGE,
+    STAT_ROLLING_12_MONTH,
+    STAT_ANNUAL_TOTAL,
+    STAT_MONTHLY_MEDIAN,
+    STAT_PERCENTILE,
+    STAT_ROLLING_7_DAY_MEDIAN,
+    STAT_ROLLING_30_DAY_GEOMEAN,
+    STAT_MONTHLY_SAMPLES,
+    STAT_QUARTERLY_SAMPLES,
+    STAT_ANNUAL_SAMPLES,
     STATISTICS
 };
 enum sample_type { SAMPLE_ANY, SAMPLE_GRAB, SAMPLE_COMPOSITE, SAMPLE_METER, SAMPLE_TYPES };
@@ -172,8 +250,8 @@ struct condition { /* EFF FLOW monthly-average > 2.5 MGD */
 };
 
 struct frequency {
-    int count;      /* 3 of 3/week */
-    enum per per;   /* PER_NONE: the limit names none */
+    int count;    /* 3 of 3/week */
+    enum per per; /* PER_NONE: the limit names none */
     const char *text;
 };
 
@@ -217,7 +295,13 @@ struct meter {
     day_t from, to;
 };
 
-enum process_source { SOURCE_READING, SOURCE_BASIN_VOLUME, SOURCE_BASIN_AREA, SOURCE_BASIN_WEIR, SOURCE_NUMBER };
+enum process_source {
+    SOURCE_READING,
+    SOURCE_BASIN_VOLUME,
+    SOURCE_BASIN_AREA,
+    SOURCE_BASIN_WEIR,
+    SOURCE_NUMBER
+};
 
 /* One argument of one of the plant's own figures. Whether the formula and argument exist is for the
  * process room to say (it owns the catalogue). */
@@ -246,14 +330,15 @@ struct plant {
     size_t point_count, parameter_count, basin_count, limit_count, meter_count, process_count;
 };
 
-int plant_point(const struct plant *p, const char *id);      /* -1 when unknown */
-int plant_parameter(const struct plant *p, const char *id);  /* -1 when unknown */
+int plant_point(const struct plant *p, const char *id);     /* -1 when unknown */
+int plant_parameter(const struct plant *p, const char *id); /* -1 when unknown */
 const char *plant_nearest_point(const struct plant *p, const char *id);
 const char *plant_nearest_parameter(const struct plant *p, const char *id);
 /* The meter in force at a point and parameter on a day, or NULL. */
 const struct meter *plant_meter(const struct plant *p, int point, int parameter, day_t day);
 bool basin_in_service(const struct basin *b, day_t day);
-/* Whether a day lies in the season (an unset one holds every day; 02-28 as its end takes in 02-29). */
+/* Whether a day lies in the season (an unset one holds every day; 02-28 as its end takes in 02-29).
+ */
 bool season_holds(const struct season *s, day_t day);
 /* Whether season, from and to of a limit all hold on a day. */
 bool limit_in_force(const struct limit *l, day_t day);
@@ -267,9 +352,9 @@ struct plant_row {
     enum plant_file file;
     const char *name; /* the file as the person knows it: "marrow-bend/plant/limits.csv" */
     long line;
-    bool builtin;                            /* a row of the built-in catalogue */
-    const char *cell[PLANT_COLUMNS_MOST];    /* by column of the layout; NULL: no such column */
-    int at[PLANT_COLUMNS_MOST];              /* where the cell stands in its row, from 1; 0: not known */
+    bool builtin;                         /* a row of the built-in catalogue */
+    const char *cell[PLANT_COLUMNS_MOST]; /* by column of the layout; NULL: no such column */
+    int at[PLANT_COLUMNS_MOST]; /* where the cell stands in its row, from 1; 0: not known */
 };
 
 struct plant_draft *plant_draft_new(struct arena *a);

@@ -1,5 +1,5 @@
-/* The equations of the catalogue, parsed into a small tree and worked over exact fractions. Only the
- * catalogue's own texts come here: a text that cannot be read is a bug and asserts.
+/* The equations of the catalogue, parsed into a small tree and worked over exact fractions. Only
+ * the catalogue's own texts come here: a text that cannot be read is a bug and asserts.
  *
  * Read are + - * / ^ (powers from the right, before a sign), parentheses, numbers, arguments, pi,
  * gal_per_ft3 (1728/231), min max abs sqrt exp log10, and over lists sum mean count sumproduct.
@@ -25,16 +25,16 @@ MUST_USE enum status equation_work(const struct scope *s, const struct node *n,
                                    const struct fraction **out);
 
 /* What must hold between arguments: "dried >= filter; ashed <= dried". */
-struct condition {
+struct requirement {
     const struct node *left, *right;
-    enum { CONDITION_OVER, CONDITION_AT_LEAST, CONDITION_UNDER, CONDITION_AT_MOST } comparison;
+    enum { REQUIRE_OVER, REQUIRE_AT_LEAST, REQUIRE_UNDER, REQUIRE_AT_MOST } comparison;
     const char *text; /* this condition alone */
-    const struct condition *next;
+    const struct requirement *next;
 };
 
-const struct condition *conditions_parse(struct arena *a, const struct formula *formula,
-                                         const char *text);
-MUST_USE enum status conditions_hold(const struct scope *s, const struct condition *first);
+const struct requirement *requirements_parse(struct arena *a, const struct formula *formula,
+                                             const char *text);
+MUST_USE enum status requirements_hold(const struct scope *s, const struct requirement *first);
 
 /* The value of a finite double as a fraction; a fault for infinity and what is no number. */
 MUST_USE enum status equation_finite(const struct scope *s, double x, const struct fraction **out);

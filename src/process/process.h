@@ -25,6 +25,7 @@ struct formula {
     size_t arguments;
     const char *result, *unit;
     const char *equation; /* what is worked: + - * / ^ ( ) and named functions; or "rule: ..." */
+    const char *requires; /* what must hold between arguments: "dried >= filter; ..."; or NULL */
     const char *source;   /* published source, or "common practice, no source" */
     const char *trap;     /* one line, or NULL */
     const char *usual;    /* usual range with its source, or NULL */
@@ -88,7 +89,8 @@ struct process_options {
     int smooth; /* days of the moving average under inventory and wasting for SRT; 1: none */
 };
 
-/* The days a process table needs beside its own (smoothing reaches back). */
+/* The first day a frame for the table must hold: smoothing reaches back, and whether a figure's
+ * parts are measured at all is judged over the 30 days before `from` too. */
 day_t process_reach(const struct process_options *o);
 /* Every figure whose parts are measured at this plant at all, for each day or step; figures come
  * out in order of date, then of the catalogue. Weeks start by the plant's rule. */

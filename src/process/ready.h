@@ -1,4 +1,5 @@
-/* A formula made ready once and worked many times: its bounds, defaults, conditions and equation. */
+/* A formula made ready once and worked many times: its bounds, defaults, conditions and equation.
+ */
 #ifndef WEIRBOOK_PROCESS_READY_H
 #define WEIRBOOK_PROCESS_READY_H
 
@@ -10,9 +11,9 @@ struct ready {
     const struct fraction *fallback[FORMULA_ARGUMENTS_MOST];
     const struct fraction *above[FORMULA_ARGUMENTS_MOST], *at_least[FORMULA_ARGUMENTS_MOST];
     const struct fraction *below[FORMULA_ARGUMENTS_MOST], *at_most[FORMULA_ARGUMENTS_MOST];
-    const struct condition *conditions;
-    const struct node *equation;     /* NULL with a rule */
-    const struct formula_rule *rule; /* NULL with an equation */
+    const struct requirement *requirements;
+    const struct node *equation;     /* NULL where the rule works the formula */
+    const struct formula_rule *rule; /* NULL where the equation says it all */
 };
 
 const struct ready *formula_ready(struct arena *a, const struct formula *formula);

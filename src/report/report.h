@@ -115,10 +115,11 @@ struct month_input {
     const struct plant *plant;
     const struct frame *frame;
     const struct permit_month *permit;
-    const struct process_figure *process; /* by week or month, for the text and the workbook */
-    size_t process_count;                 /* 0: none */
-    const struct process_figure *daily;   /* by day, for the workbook; */
-    size_t daily_count;                   /* 0: none */
+    const struct process_figure *process; /* of the days of the month, for the workbook; may be none */
+    size_t process_count;
+    /* The same by month (or week), for the page and below the days of the workbook; may be none. */
+    const struct process_figure *process_month;
+    size_t process_months;
     const struct month_aside *aside;
     size_t asides;
     const struct month_revision *revision;
@@ -127,15 +128,6 @@ struct month_input {
     const char *version; /* the program's */
     day_t printed;
 };
-
-/* A process figure as it is printed: three significant figures, whole digits never rounded away, at
- * most six decimals (common practice, no source). "" for NULL. */
-const char *report_process_number(struct arena *a, const struct fraction *value);
-/* Process figures as a table with the columns of the interface: by day
- * date,name,at,parameter,value, unit,note; by longer steps
- * from,to,name,at,parameter,count,mean,min,max,unit. */
-struct table *report_process_table(struct arena *a, const struct process_figure *figure,
-                                   size_t count, enum process_step step);
 
 /* `permit` as a table with the seventeen columns of the interface (for --as csv|json). */
 struct table *report_permit_table(struct arena *a, const struct permit_month *m);

@@ -1,0 +1,443 @@
+/* read: readings, revisions and rows set aside out of the book. All questions go by index; what
+ * they cost depends on what is asked for, not on how much the book holds. */
+#include "book/store.h"
+
+#include <stdlib.h>
+#include <string.h>
+
+#include "base/poison.h"
+
+/* DAY_NONE: an open end. */
+static void bind_days(sqlite3_stmt *s, int at, day_t first, day_t last)
+{
+    bind_int(s, at, first == DAY_NONE ? INT32_MIN : first);
+    bind_int(s, at + 1, last == DAY_NONE ? INT32_MAX : last);
+}
+
+static bool names_column(const struct series_name *s, int point, int parameter)
+{
+    return s->plant_point == point && s->plant_parameter == parameter;
+}
+
+/* ---- into a frame ---- */
+
+struct filling {
+    struct book *book;
+    struct names names;
+    struct pack pack;
+    struct arena *arena;
+    struct frame *frame;
+};
+
+static enum status keep(struct filling *g, sqlite3_stmt *s, struct reading *r, struct fault *f)
+{
+    struct stored row;
+    if (row_read(g->book, &g->names, s, &row, f) != OK ||
+        row_reading(g->book, &g->names, &g->pack, &row, r, f) != OK)
+        return FAULT;
+    r->text = arena_text(g->arena, r->text); /* the other texts live in the arena already */
+    return OK;
+}
+
+static enum status fill_series(struct filling *g, int64_t series, day_t first, day_t last,
+                               struct fault *f)
+{
+    sqlite3_stmt *s = NULL;
+    struct reading r;
+    bool row = false;
+    enum status rc = OK;
+    TRY(book_statement(g->book, SERIES_SPAN, &s, f));
+    bind_int(s, 1, series);
+    bind_days(s, 2, first, last);
+    for (;;) {
+        TRY(book_step(g->book, s, &row, f));
+        if (!row)
+            break;
+        TRY(keep(g, s, &r, f));
+        frame_add(g->frame, &r);
+    }
+done:
+    if (s)
+        sqlite3_reset(s);
+    return rc;
+}
+
+/* The last number before a day: where a totalizer's first difference starts. Codes and readings
+ * that were withdrawn are passed over; of each reading only the newest version counts. */
+static enum status fill_start(struct filling *g, int64_t series, day_t first, struct fault *f)
+{
+    sqlite3_stmt *s = NULL;
+    struct reading r, before = {.day = DAY_NONE};
+    bool row = false;
+    enum status rc = OK;
+    TRY(book_statement(g->book, SERIES_BEFORE, &s, f));
+    bind_int(s, 1, series);
+    bind_int(s, 2, first);
+    for (;;) {
+        TRY(book_step(g->book, s, &row, f));
+        if (!row)
+            break;
+        TRY(keep(g, s, &r, f));
+        bool older_version = r.day == before.day && r.minute == before.minute;
+        before = r;
+        if (older_version || r.qualifier >= QUALIFIER_CODE)
+            continue;
+        frame_add(g->frame, &r);
+        break;
+    }
+done:
+    if (s)
+        sqlite3_reset(s);
+    return rc;
+}
+
+static bool is_totalized(const struct plant *plant, const struct frame_span *span)
+{
+    for (size_t i = 0; i < plant->meter_count; i++) {
+        const struct meter *m = &plant->meters[i];
+        if (m->kind == METER_TOTALIZER && m->point == span->point &&
+            m->parameter == span->parameter)
+            return true;
+    }
+    return false;
+}
+
+static enum status fill_span(struct filling *g, const struct plant *plant,
+                             const struct frame_span *span, struct fault *f)
+{
+    bool totalized = is_totalized(plant, span) && span->first != DAY_NONE;
+    for (size_t i = 0; i < g->names.series_count; i++) {
+        const struct series_name *s = &g->names.series[i];
+        if (!names_column(s, span->point, span->parameter))
+            continue;
+        if (totalized && fill_start(g, s->id, span->first, f) != OK)
+            return FAULT;
+        if (fill_series(g, s->id, span->first, span->last, f) != OK)
+            return FAULT;
+    }
+    return OK;
+}
+
+static int order_spans(const void *a, const void *b)
+{
+    const struct frame_span *x = a, *y = b;
+    if (x->point != y->point)
+        return x->point < y->point ? -1 : 1;
+    if (x->parameter != y->parameter)
+        return x->parameter < y->parameter ? -1 : 1;
+    return (x->first > y->first) - (x->first < y->first);
+}
+
+/* Spans of one column that meet become one: no reading is handed over twice. */
+static struct frame_span *merge_spans(struct arena *a, const struct frame_span *spans,
+                                      size_t *count)
+{
+    struct frame_span *out = arena_alloc(a, (*count + 1) * sizeof *out);
+    size_t kept = 0;
+    if (*count == 0)
+        return out;
+    memcpy(out, spans, *count * sizeof *out);
+    for (size_t i = 0; i < *count; i++)
+        if (out[i].last == DAY_NONE)
+            out[i].last = INT32_MAX;
+    qsort(out, *count, sizeof *out, order_spans);
+    for (size_t i = 1; i < *count; i++) {
+        struct frame_span *last = &out[kept];
+        if (out[i].point == last->point && out[i].parameter == last->parameter &&
+            out[i].first <= last->last) {
+            if (out[i].last > last->last)
+                last->last = out[i].last;
+        } else {
+            out[++kept] = out[i];
+        }
+    }
+    *count = kept + 1;
+    return out;
+}
+
+enum status book_fill(struct book *b, struct arena *a, const struct plant *plant,
+                      const struct frame_span *spans, size_t count, struct frame *frame,
+                      struct fault *f)
+{
+    struct filling *g = arena_alloc(a, sizeof *g);
+    enum status rc = OK;
+    g->book = b;
+    g->arena = a;
+    g->frame = frame;
+    pack_init(&g->pack, a);
+    TRY(names_begin(b, &g->names, a, plant, false, f));
+    const struct frame_span *merged = merge_spans(a, spans, &count);
+    for (size_t i = 0; i < count; i++)
+        TRY(fill_span(g, plant, &merged[i], f));
+done:
+    names_end(&g->names);
+    return rc;
+}
+
+/* ---- what there is ---- */
+
+static enum status series_has(struct book *b, int64_t series, day_t first, day_t last, bool *has,
+                              struct fault *f)
+{
+    sqlite3_stmt *s = NULL;
+    if (book_statement(b, SERIES_HAS, &s, f) != OK)
+        return FAULT;
+    bind_int(s, 1, series);
+    bind_days(s, 2, first, last);
+    if (book_step(b, s, has, f) != OK)
+        return FAULT;
+    sqlite3_reset(s);
+    return OK;
+}
+
+static bool has_span(const struct frame_span *spans, size_t count, const struct series_name *s)
+{
+    for (size_t i = 0; i < count; i++)
+        if (names_column(s, spans[i].point, spans[i].parameter))
+            return true;
+    return false;
+}
+
+enum status book_spans(struct book *b, struct arena *a, const struct plant *plant, day_t first,
+                       day_t last, struct frame_span **spans, size_t *count, struct fault *f)
+{
+    struct names *n = arena_alloc(a, sizeof *n);
+    size_t room = 0;
+    enum status rc = OK;
+    *spans = NULL;
+    *count = 0;
+    TRY(names_begin(b, n, a, plant, false, f));
+    for (size_t i = 0; i < n->series_count; i++) {
+        const struct series_name *s = &n->series[i];
+        bool has = false;
+        if (s->plant_point < 0 || s->plant_parameter < 0 || has_span(*spans, *count, s))
+            continue;
+        TRY(series_has(b, s->id, first, last, &has, f));
+        if (has)
+            *(struct frame_span *)arena_push(a, spans, count, &room, sizeof **spans) =
+                (struct frame_span){s->plant_point, s->plant_parameter, first, last};
+    }
+    if (*count > 0)
+        qsort(*spans, *count, sizeof **spans, order_spans);
+done:
+    names_end(n);
+    return rc;
+}
+
+static enum status extreme(struct book *b, enum statement which, int64_t series, day_t *out,
+                           struct fault *f)
+{
+    sqlite3_stmt *s = NULL;
+    bool row;
+    *out = DAY_NONE;
+    if (book_statement(b, which, &s, f) != OK)
+        return FAULT;
+    bind_int(s, 1, series);
+    if (book_step(b, s, &row, f) != OK)
+        return FAULT;
+    if (row && sqlite3_column_type(s, 0) != SQLITE_NULL)
+        *out = (day_t)sqlite3_column_int64(s, 0);
+    sqlite3_reset(s);
+    return OK;
+}
+
+enum status book_extent(struct book *b, day_t *first, day_t *last, struct fault *f)
+{
+    struct arena *a = arena_new();
+    struct names *n = arena_alloc(a, sizeof *n);
+    enum status rc = OK;
+    *first = *last = DAY_NONE;
+    TRY(names_begin(b, n, a, NULL, false, f));
+    for (size_t i = 0; i < n->series_count; i++) {
+        day_t low, high;
+        TRY(extreme(b, SERIES_FIRST, n->series[i].id, &low, f));
+        TRY(extreme(b, SERIES_LAST, n->series[i].id, &high, f));
+        if (low != DAY_NONE && (*first == DAY_NONE || low < *first))
+            *first = low;
+        if (high != DAY_NONE && (*last == DAY_NONE || high > *last))
+            *last = high;
+    }
+done:
+    names_end(n);
+    arena_free(a);
+    return rc;
+}
+
+/* ---- every reading in force ---- */
+
+static enum status each_of_column(struct book *b, struct names *n, struct pack *p,
+                                  const char *const column[2], day_t first, day_t last,
+                                  book_reading_sink *sink, void *context, struct fault *f)
+{
+    sqlite3_stmt *s = NULL;
+    struct stored stored;
+    struct reading r;
+    bool row = false;
+    enum status rc = OK;
+    TRY(book_statement(b, COLUMN_IN_FORCE, &s, f));
+    bind_text(s, 1, column[0]);
+    bind_text(s, 2, column[1]);
+    bind_days(s, 3, first, last);
+    for (;;) {
+        TRY(book_step(b, s, &row, f));
+        if (!row)
+            break;
+        TRY(row_read(b, n, s, &stored, f));
+        TRY(row_reading(b, n, p, &stored, &r, f));
+        TRY(sink(context, &r, f));
+    }
+done:
+    if (s)
+        sqlite3_reset(s);
+    return rc;
+}
+
+enum status book_each(struct book *b, const struct plant *plant, day_t first, day_t last,
+                      book_reading_sink *sink, void *context, struct fault *f)
+{
+    struct arena *a = arena_new();
+    struct names *n = arena_alloc(a, sizeof *n);
+    struct frame_span *spans = NULL;
+    struct pack p;
+    size_t count = 0;
+    enum status rc = OK;
+    pack_init(&p, a);
+    TRY(names_begin(b, n, a, plant, true, f));
+    TRY(book_spans(b, a, plant, first, last, &spans, &count, f));
+    for (size_t i = 0; i < count; i++) {
+        const char *const column[2] = {plant->points[spans[i].point].id,
+                                       plant->parameters[spans[i].parameter].id};
+        TRY(each_of_column(b, n, &p, column, first, last, sink, context, f));
+    }
+done:
+    names_end(n);
+    arena_free(a);
+    return rc;
+}
+
+/* ---- rows set aside ---- */
+
+static enum status give_aside(struct book *b, struct names *n, struct pack *p, sqlite3_stmt *s,
+                              book_aside_sink *sink, void *context, struct fault *f)
+{
+    struct stored_aside row;
+    const char *file = "";
+    row_aside(s, &row);
+    names_turn(n);
+    if (names_file(b, n, row.batch, &file, f) != OK)
+        return FAULT;
+    pack_aside(p, &row);
+    if (pack_mark(p) != row.mark) {
+        if (sqlite3_errcode(b->db) == SQLITE_NOMEM)
+            return book_fault(b, f);
+        return book_damaged(b, f, "a row set aside, %s:%lld of batch %lld, is not what was loaded",
+                            file, (long long)row.line, (long long)row.batch);
+    }
+    struct book_aside out = {
+        .batch = row.batch,
+        .row = {.file = file, .line = (long)row.line, .column = (int)row.column, .raw = row.raw},
+        .reason = row.reason,
+        .explanation = row.explanation};
+    memcpy(out.row.cell, row.cell, sizeof out.row.cell);
+    return sink(context, &out, f);
+}
+
+enum status book_asides(struct book *b, day_t first, day_t last, book_aside_sink *sink,
+                        void *context, struct fault *f)
+{
+    struct arena *a = arena_new();
+    struct names *n = arena_alloc(a, sizeof *n);
+    sqlite3_stmt *s = NULL;
+    struct pack p;
+    bool all = first == DAY_NONE && last == DAY_NONE, row = false;
+    enum status rc = OK;
+    pack_init(&p, a);
+    TRY(names_begin(b, n, a, NULL, true, f));
+    TRY(book_statement(b, all ? ASIDES_ALL : ASIDES_OF_DAYS, &s, f));
+    if (!all)
+        bind_days(s, 1, first, last);
+    for (;;) {
+        TRY(book_step(b, s, &row, f));
+        if (!row)
+            break;
+        TRY(give_aside(b, n, &p, s, sink, context, f));
+    }
+done:
+    if (s)
+        sqlite3_reset(s);
+    names_end(n);
+    arena_free(a);
+    return rc;
+}
+
+/* ---- revisions ---- */
+
+/* Columns of REVISIONS. */
+enum {
+    AT_DAY,
+    AT_MINUTE,
+    AT_SERIES,
+    AT_UNIT,
+    AT_QUALIFIER,
+    AT_NEW,
+    AT_OLD,
+    AT_VERSION,
+    AT_BATCH,
+    AT_LINE,
+    AT_WHO,
+    AT_WHEN,
+    AT_REASON,
+    AT_FILE
+};
+
+static enum status give_revision(struct book *b, const struct names *n, sqlite3_stmt *s,
+                                 book_revision_sink *sink, void *context, struct fault *f)
+{
+    const struct series_name *series = names_series(n, sqlite3_column_int64(s, AT_SERIES));
+    const struct unit_name *unit = names_unit(n, sqlite3_column_int64(s, AT_UNIT));
+    if (!series || series->plant_point < 0 || series->plant_parameter < 0 || !unit)
+        return book_damaged(b, f, "a revision is of a reading its description does not know");
+    bool withdrawn = sqlite3_column_int(s, AT_QUALIFIER) == QUALIFIER_WITHDRAWN;
+    const struct book_revision out = {
+        .day = (day_t)sqlite3_column_int64(s, AT_DAY),
+        .minute = sqlite3_column_int(s, AT_MINUTE),
+        .point = series->plant_point,
+        .parameter = series->plant_parameter,
+        .sample = series->sample,
+        .old_text = column_text(s, AT_OLD),
+        .new_text = withdrawn ? "withdrawn" : column_text(s, AT_NEW),
+        .unit = unit->name,
+        .who = column_text(s, AT_WHO),
+        .when = column_text(s, AT_WHEN),
+        .reason = column_text(s, AT_REASON),
+        .file = column_text(s, AT_FILE),
+        .line = (long)sqlite3_column_int64(s, AT_LINE),
+        .version = sqlite3_column_int(s, AT_VERSION),
+    };
+    return sink(context, &out, f);
+}
+
+enum status book_revisions(struct book *b, const struct plant *plant, day_t first, day_t last,
+                           book_revision_sink *sink, void *context, struct fault *f)
+{
+    struct arena *a = arena_new();
+    struct names *n = arena_alloc(a, sizeof *n);
+    sqlite3_stmt *s = NULL;
+    bool row = false;
+    enum status rc = OK;
+    TRY(names_begin(b, n, a, plant, false, f));
+    TRY(book_statement(b, REVISIONS, &s, f));
+    bind_days(s, 1, first, last);
+    for (;;) {
+        TRY(book_step(b, s, &row, f));
+        if (!row)
+            break;
+        TRY(give_revision(b, n, s, sink, context, f));
+    }
+done:
+    if (s)
+        sqlite3_reset(s);
+    names_end(n);
+    arena_free(a);
+    return rc;
+}

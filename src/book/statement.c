@@ -1,0 +1,342 @@
+/* statement: the texts, and preparing, binding and stepping them. */
+#include "book/statement.h"
+
+#include <assert.h>
+#include <errno.h>
+#include <string.h>
+
+#include "book/store.h"
+
+#include "base/poison.h"
+
+#define ASIDE_COLUMNS                                                                              \
+    "a.id, a.batch, a.line, a.column_number, a.day, a.date, a.time, a.point, a.parameter, "        \
+    "a.value, a.unit, "                                                                            \
+    "a.sample, a.method, a.analyst, a.collected_by, a.analyzed, a.mdl, a.rl, a.note, a.raw, "      \
+    "a.reason, "                                                                                   \
+    "a.explanation, a.mark"
+
+#define ROW_COLUMNS "batch, place, builtin, file, line, mark, "
+
+const char *const book_sql[] = {
+    [LAST_BATCH] = "SELECT coalesce(max(id), 0) FROM batch",
+    [LAST_HEAD] = "SELECT head FROM chain ORDER BY batch DESC LIMIT 1",
+    [ADD_BATCH] = "INSERT INTO batch (id, kind, at, who) VALUES (?1, ?2, ?3, ?4)",
+    [ADD_LOAD] =
+        "INSERT INTO load (batch, file, bytes, digest, dialect, reason, rows, accepted, present, "
+        "revised, aside, first_reading, first_aside) "
+        "VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13)",
+    [ADD_DESCRIPTION] = "INSERT INTO description (batch, reason, rows) VALUES (?1, ?2, ?3)",
+    [ADD_CHAIN] = "INSERT INTO chain (batch, previous, head) VALUES (?1, ?2, ?3)",
+    [KNOWN_LOAD] =
+        "SELECT l.batch, l.file, b.at, l.rows, l.accepted, l.present, l.revised, l.aside "
+        "FROM load l JOIN batch b ON b.id = l.batch WHERE l.digest = ?1 "
+        "ORDER BY l.batch DESC LIMIT 1",
+    [BATCHES] =
+        "SELECT b.id, b.kind, b.at, b.who, l.file, coalesce(l.reason, d.reason), "
+        "coalesce(l.rows, d.rows), l.accepted, l.present, l.revised, l.aside, c.head "
+        "FROM batch b LEFT JOIN load l ON l.batch = b.id LEFT JOIN description d ON d.batch = b.id "
+        "LEFT JOIN chain c ON c.batch = b.id ORDER BY b.id",
+    [FILE_OF_BATCH] = "SELECT file FROM load WHERE batch = ?1",
+
+    [FIND_POINT] = "SELECT id FROM point_code WHERE name = ?1",
+    [ADD_POINT] = "INSERT INTO point_code (name) VALUES (?1)",
+    [FIND_PARAMETER] = "SELECT id FROM parameter_code WHERE name = ?1",
+    [ADD_PARAMETER] = "INSERT INTO parameter_code (name) VALUES (?1)",
+    [FIND_UNIT] = "SELECT id FROM unit_code WHERE name = ?1",
+    [ADD_UNIT] = "INSERT INTO unit_code (name) VALUES (?1)",
+    [FIND_SERIES] = "SELECT id FROM series WHERE point = ?1 AND parameter = ?2 AND sample = ?3",
+    [ADD_SERIES] = "INSERT INTO series (point, parameter, sample) VALUES (?1, ?2, ?3)",
+    [FIND_DETAIL] =
+        "SELECT id FROM detail WHERE method = ?1 AND analyst = ?2 AND collected_by = ?3 "
+        "AND analyzed = ?4 AND note = ?5",
+    [ADD_DETAIL] = "INSERT INTO detail (method, analyst, collected_by, analyzed, note) "
+                   "VALUES (?1, ?2, ?3, ?4, ?5)",
+    [SERIES_NAMES] =
+        "SELECT s.id, p.name, q.name, s.sample FROM series s "
+        "JOIN point_code p ON p.id = s.point JOIN parameter_code q ON q.id = s.parameter "
+        "ORDER BY s.id",
+    [UNIT_NAMES] = "SELECT id, name FROM unit_code ORDER BY id",
+    [UNIT_AT] = "SELECT name FROM unit_code WHERE id = ?1",
+    [DETAIL_AT] = "SELECT method, analyst, collected_by, analyzed, note FROM detail WHERE id = ?1",
+
+    [LAST_READING] = "SELECT coalesce(max(id), 0) FROM reading",
+    /* No question whether the key is there before it is put in: that would cost every row a search.
+     */
+    [ADD_READING] =
+        "INSERT INTO reading (id, series, day, minute, version, batch, line, qualifier, code, "
+        "value, coefficient, scale, unit, mdl, mdl_scale, rl, rl_scale, detail, mark) "
+        "VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13, ?14, ?15, ?16, ?17, "
+        "?18, ?19) ON CONFLICT (series, day, minute, version) DO NOTHING",
+    [NEWEST_READING] = "SELECT " READING_COLUMNS " FROM reading r "
+                       "WHERE r.series = ?1 AND r.day = ?2 AND r.minute = ?3 "
+                       "ORDER BY r.version DESC LIMIT 1",
+    [LAST_ASIDE] = "SELECT coalesce(max(id), 0) FROM aside",
+    [ADD_ASIDE] =
+        "INSERT INTO aside (id, batch, line, column_number, day, date, time, point, parameter, "
+        "value, unit, sample, method, analyst, collected_by, analyzed, mdl, rl, note, raw, reason, "
+        "explanation, mark) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13, ?14, "
+        "?15, ?16, ?17, ?18, ?19, ?20, ?21, ?22, ?23)",
+
+    [SERIES_SPAN] = "SELECT " READING_COLUMNS " FROM reading r "
+                    "WHERE r.series = ?1 AND r.day BETWEEN ?2 AND ?3 "
+                    "ORDER BY r.day, r.minute, r.version",
+    [SERIES_BEFORE] =
+        "SELECT " READING_COLUMNS " FROM reading r WHERE r.series = ?1 AND r.day < ?2 "
+        "ORDER BY r.day DESC, r.minute DESC, r.version DESC",
+    [SERIES_HAS] = "SELECT 1 FROM reading WHERE series = ?1 AND day BETWEEN ?2 AND ?3 LIMIT 1",
+    [SERIES_FIRST] = "SELECT min(day) FROM reading WHERE series = ?1",
+    [SERIES_LAST] = "SELECT max(day) FROM reading WHERE series = ?1",
+    [COLUMN_IN_FORCE] =
+        "SELECT " READING_COLUMNS " FROM point_code p JOIN parameter_code q JOIN series s "
+        "ON s.point = p.id AND s.parameter = q.id JOIN reading r ON r.series = s.id "
+        "WHERE p.name = ?1 AND q.name = ?2 AND r.day BETWEEN ?3 AND ?4 AND r.qualifier <> 7 "
+        "AND NOT EXISTS (SELECT 1 FROM reading n WHERE n.series = r.series AND n.day = r.day "
+        "AND n.minute = r.minute AND n.version > r.version) "
+        "ORDER BY r.day, r.minute, s.sample",
+    [REVISIONS] =
+        "SELECT r.day, r.minute, r.series, r.unit, r.qualifier, r.value, o.value, r.version, "
+        "r.batch, r.line, b.who, b.at, coalesce(l.reason, ''), coalesce(l.file, '') "
+        "FROM reading r JOIN reading o ON o.series = r.series AND o.day = r.day "
+        "AND o.minute = r.minute AND o.version = r.version - 1 "
+        "JOIN batch b ON b.id = r.batch LEFT JOIN load l ON l.batch = r.batch "
+        "WHERE r.version > 0 AND r.day BETWEEN ?1 AND ?2 ORDER BY r.day, r.id",
+    [ASIDES_OF_DAYS] = "SELECT " ASIDE_COLUMNS " FROM aside a "
+                       "WHERE a.day BETWEEN ?1 AND ?2 OR a.day IS NULL ORDER BY a.id",
+    [ASIDES_ALL] = "SELECT " ASIDE_COLUMNS " FROM aside a ORDER BY a.id",
+
+    [DESCRIPTION_IN_FORCE] = "SELECT coalesce(max(batch), 0) FROM description",
+    [ADD_ROW + PLANT_FIELDS] = "INSERT INTO plant_field (" ROW_COLUMNS "field, value) "
+                               "VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8)",
+    [ADD_ROW + PLANT_POINTS] =
+        "INSERT INTO plant_point (" ROW_COLUMNS "point, name, role, outfall) "
+        "VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10)",
+    [ADD_ROW + PLANT_PARAMETERS] = "INSERT INTO plant_parameter (" ROW_COLUMNS
+                                   "parameter, name, unit, decimals, day_rule, average, "
+                                   "code, low, high, mdl, rl, rules) VALUES (?1, ?2, ?3, ?4, ?5, "
+                                   "?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13, "
+                                   "?14, ?15, ?16, ?17, ?18)",
+    [ADD_ROW + PLANT_BASINS] = "INSERT INTO plant_basin (" ROW_COLUMNS
+                               "basin, kind, point, volume, volume_unit, area, area_unit, "
+                               "weir, weir_unit, \"from\", \"to\") VALUES (?1, ?2, ?3, ?4, ?5, ?6, "
+                               "?7, ?8, ?9, ?10, ?11, ?12, ?13, "
+                               "?14, ?15, ?16, ?17)",
+    [ADD_ROW + PLANT_LIMITS] = "INSERT INTO plant_limit (" ROW_COLUMNS
+                               "outfall, point, parameter, basis, statistic, bound, "
+                               "\"limit\", unit, season, \"from\", \"to\", \"when\", samples, "
+                               "sample, allowed, ceiling, \"group\", "
+                               "rules, note) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, "
+                               "?12, ?13, ?14, ?15, ?16, ?17, "
+                               "?18, ?19, ?20, ?21, ?22, ?23, ?24, ?25)",
+    [ADD_ROW + PLANT_METERS] =
+        "INSERT INTO plant_meter (" ROW_COLUMNS
+        "point, parameter, kind, rolls_at, multiplier, \"from\", "
+        "\"to\") VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13)",
+    [ADD_ROW + PLANT_PROCESS] = "INSERT INTO plant_process (" ROW_COLUMNS
+                                "name, at, parameter, formula, argument, source, unit) "
+                                "VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13)",
+    [GET_ROWS + PLANT_FIELDS] = "SELECT " ROW_COLUMNS "field, value FROM plant_field "
+                                "WHERE batch = ?1 ORDER BY place",
+    [GET_ROWS + PLANT_POINTS] = "SELECT " ROW_COLUMNS "point, name, role, outfall FROM plant_point "
+                                "WHERE batch = ?1 ORDER BY place",
+    [GET_ROWS + PLANT_PARAMETERS] =
+        "SELECT " ROW_COLUMNS
+        "parameter, name, unit, decimals, day_rule, average, code, low, high, mdl, "
+        "rl, rules FROM plant_parameter WHERE batch = ?1 ORDER BY place",
+    [GET_ROWS + PLANT_BASINS] =
+        "SELECT " ROW_COLUMNS
+        "basin, kind, point, volume, volume_unit, area, area_unit, weir, weir_unit, "
+        "\"from\", \"to\" FROM plant_basin WHERE batch = ?1 ORDER BY place",
+    [GET_ROWS + PLANT_LIMITS] =
+        "SELECT " ROW_COLUMNS
+        "outfall, point, parameter, basis, statistic, bound, \"limit\", unit, season, "
+        "\"from\", \"to\", \"when\", samples, sample, allowed, ceiling, \"group\", rules, note "
+        "FROM plant_limit WHERE batch = ?1 ORDER BY place",
+    [GET_ROWS + PLANT_METERS] =
+        "SELECT " ROW_COLUMNS "point, parameter, kind, rolls_at, multiplier, "
+        "\"from\", \"to\" FROM plant_meter WHERE batch = ?1 ORDER BY place",
+    [GET_ROWS + PLANT_PROCESS] =
+        "SELECT " ROW_COLUMNS "name, at, parameter, formula, argument, source, unit "
+        "FROM plant_process WHERE batch = ?1 ORDER BY place",
+
+    [CHECK_PAGES] = "PRAGMA integrity_check(20)",
+    [CHECK_KEYS] = "PRAGMA foreign_key_check",
+    [CHECK_SCHEMA] = "SELECT type, name, tbl_name, sql FROM sqlite_schema ORDER BY type, name",
+    [CHECK_TRIGGERS] = "SELECT name, sql FROM sqlite_schema WHERE type = 'trigger'",
+    [CHECK_QUALIFIERS] = "SELECT id, word FROM qualifier ORDER BY id",
+    [CHECK_BATCHES] =
+        "SELECT b.id, b.kind, b.at, b.who, l.batch, l.file, l.bytes, l.digest, l.dialect, "
+        "l.reason, l.rows, l.accepted, l.present, l.revised, l.aside, l.first_reading, "
+        "l.first_aside, d.batch, d.reason, d.rows, c.previous, c.head "
+        "FROM batch b LEFT JOIN load l ON l.batch = b.id "
+        "LEFT JOIN description d ON d.batch = b.id LEFT JOIN chain c ON c.batch = b.id "
+        "ORDER BY b.id",
+    [CHECK_READINGS] =
+        "SELECT " READING_COLUMNS " FROM reading r WHERE r.id BETWEEN ?1 AND ?2 ORDER BY r.id",
+    [CHECK_ASIDES] =
+        "SELECT " ASIDE_COLUMNS " FROM aside a WHERE a.id BETWEEN ?1 AND ?2 ORDER BY a.id",
+    [ADD_QUALIFIER] = "INSERT INTO qualifier (id, word) VALUES (?1, ?2) ON CONFLICT DO NOTHING",
+    [ADD_REASON] = "INSERT INTO aside_reason (reason, todo) VALUES (?1, ?2) ON CONFLICT DO NOTHING",
+    [GET_FORMAT] = "PRAGMA user_version",
+};
+_Static_assert(NELEM(book_sql) == STATEMENTS, "one text per statement");
+
+/* ---- faults ---- */
+
+static enum status locked(const struct book *b, struct fault *f)
+{
+    /* Once our own writing has begun only a reader can stand in the way. */
+    if (b->mode == BOOK_WRITE && !sqlite3_get_autocommit(b->db))
+        return fault_at(f, NULL, "try again when it is done",
+                        "'%s' is being read by another program", b->path);
+    return fault_at(f, NULL, "try again when it is done",
+                    "'%s' is being written by another program", b->path);
+}
+
+static enum status read_only(const struct book *b, struct fault *f)
+{
+    int code = sqlite3_extended_errcode(b->db);
+    if (code == SQLITE_READONLY_ROLLBACK || code == SQLITE_READONLY_RECOVERY)
+        return fault_at(f, NULL,
+                        "copy both to a folder that can be written, and open the copy there",
+                        "'%s' was left half written, and the file '%s-journal' that puts it right "
+                        "cannot be used here",
+                        b->path, b->path);
+    return fault_at(f, NULL, "let yourself write the file and its folder, or work on a copy",
+                    "'%s' cannot be written", b->path);
+}
+
+enum status book_fault(struct book *b, struct fault *f)
+{
+    int number = sqlite3_system_errno(b->db);
+    switch (sqlite3_errcode(b->db)) {
+    case SQLITE_BUSY:
+    case SQLITE_LOCKED:
+        return locked(b, f);
+    case SQLITE_READONLY:
+        return read_only(b, f);
+    case SQLITE_FULL:
+        return fault_at(f, NULL, "make room, then do it again",
+                        "no room is left for '%s'; it stays as it was", b->path);
+    case SQLITE_IOERR:
+        return fault_at(f, NULL, "see that the disk is well and has room, then do it again",
+                        "cannot read or write '%s': %s; it stays as it was", b->path,
+                        number ? strerror(number) : sqlite3_errmsg(b->db));
+    case SQLITE_CANTOPEN:
+    case SQLITE_PERM:
+    case SQLITE_AUTH:
+        return fault_at(f, NULL, "see that the file and its folder can be read and written",
+                        "cannot open '%s': %s", b->path,
+                        number ? strerror(number) : sqlite3_errmsg(b->db));
+    case SQLITE_NOMEM:
+        return fault_at(f, NULL, NULL, "memory ran out while working on '%s'", b->path);
+    case SQLITE_NOTADB:
+    case SQLITE_CORRUPT:
+        return book_damaged(b, f, "%s", sqlite3_errmsg(b->db));
+    case SQLITE_CONSTRAINT:
+        return fault_at(f, NULL, NULL, "'%s' does not take this: %s", b->path,
+                        sqlite3_errmsg(b->db));
+    default:
+        return book_damaged(b, f, "%s", sqlite3_errmsg(b->db));
+    }
+}
+
+enum status book_damaged(const struct book *b, struct fault *f, const char *what, ...)
+{
+    char said[512];
+    va_list ap;
+    va_start(ap, what);
+    vsnprintf(said, sizeof said, what, ap);
+    va_end(ap);
+    return fault_at(f, NULL, "run 'weirbook check', and go back to a sound copy",
+                    "'%s' is damaged: %s", b->path, said);
+}
+
+/* ---- running ---- */
+
+enum status book_statement(struct book *b, enum statement which, sqlite3_stmt **out,
+                           struct fault *f)
+{
+    assert(which < STATEMENTS && book_sql[which]);
+    sqlite3_stmt **s = &b->statement[which];
+    if (!*s && sqlite3_prepare_v3(b->db, book_sql[which], -1, SQLITE_PREPARE_PERSISTENT, s, NULL) !=
+                   SQLITE_OK)
+        return book_fault(b, f);
+    sqlite3_reset(*s);
+    *out = *s;
+    return OK;
+}
+
+enum status book_step(struct book *b, sqlite3_stmt *s, bool *row, struct fault *f)
+{
+    int code = sqlite3_step(s);
+    *row = code == SQLITE_ROW;
+    if (*row)
+        return OK;
+    if (code == SQLITE_DONE) {
+        sqlite3_reset(s);
+        return OK;
+    }
+    enum status rc = book_fault(b, f);
+    sqlite3_reset(s);
+    return rc;
+}
+
+enum status book_run(struct book *b, sqlite3_stmt *s, struct fault *f)
+{
+    bool row;
+    if (book_step(b, s, &row, f) != OK)
+        return FAULT;
+    assert(!row);
+    return OK;
+}
+
+enum status book_exec(struct book *b, const char *sql, struct fault *f)
+{
+    if (sqlite3_exec(b->db, sql, NULL, NULL, NULL) != SQLITE_OK)
+        return book_fault(b, f);
+    return OK;
+}
+
+/* ---- binding and reading ---- */
+
+static void bound(int code)
+{
+    assert(code == SQLITE_OK);
+    (void)code;
+}
+
+void bind_int(sqlite3_stmt *s, int at, int64_t n)
+{
+    bound(sqlite3_bind_int64(s, at, n));
+}
+
+void bind_text(sqlite3_stmt *s, int at, const char *text)
+{
+    bound(sqlite3_bind_text(s, at, text, -1, SQLITE_STATIC));
+}
+
+void bind_blob(sqlite3_stmt *s, int at, const void *bytes, size_t length)
+{
+    bound(sqlite3_bind_blob64(s, at, bytes, length, SQLITE_STATIC));
+}
+
+void bind_null(sqlite3_stmt *s, int at)
+{
+    bound(sqlite3_bind_null(s, at));
+}
+
+const char *column_text(sqlite3_stmt *s, int at)
+{
+    const char *text = (const char *)sqlite3_column_text(s, at);
+    return text ? text : "";
+}
+
+bool column_digest(sqlite3_stmt *s, int at, uint8_t out[DIGEST_BYTES])
+{
+    const void *bytes = sqlite3_column_blob(s, at);
+    if (!bytes || sqlite3_column_bytes(s, at) != DIGEST_BYTES)
+        return false;
+    memcpy(out, bytes, DIGEST_BYTES);
+    return true;
+}

@@ -1,0 +1,127 @@
+/* The catalogue of formulas: conversions and tanks. Kept by hand; how a row is written
+ * stands in process.h. */
+#include "process/catalogue.h"
+
+#include "base/poison.h"
+
+static const struct formula rows[] = {
+    {
+        .name = "celsius-from-fahrenheit",
+        .subject = "conversions and tanks",
+        .argument = {{.name = "temperature", .unit = "degF", .at_least = "-459.67"}},
+        .arguments = 1,
+        .result = "temperature",
+        .unit = "degC",
+        .equation = "(temperature - 32) * 5 / 9",
+        .source = "definition of the scales",
+    },
+    {
+        .name = "fahrenheit-from-celsius",
+        .subject = "conversions and tanks",
+        .argument = {{.name = "temperature", .unit = "degC", .at_least = "-273.15"}},
+        .arguments = 1,
+        .result = "temperature",
+        .unit = "degF",
+        .equation = "temperature * 9 / 5 + 32",
+        .source = "definition of the scales",
+    },
+    {
+        .name = "rectangle-area",
+        .subject = "conversions and tanks",
+        .argument = {{.name = "length", .unit = "ft", .at_least = "0"},
+                     {.name = "width", .unit = "ft", .at_least = "0"}},
+        .arguments = 2,
+        .result = "area",
+        .unit = "ft2",
+        .equation = "length * width",
+        .source = "geometry",
+    },
+    {
+        .name = "circle-area",
+        .subject = "conversions and tanks",
+        .argument = {{.name = "diameter", .unit = "ft", .at_least = "0"}},
+        .arguments = 1,
+        .result = "area",
+        .unit = "ft2",
+        .equation = "pi / 4 * diameter ^ 2",
+        .source = "geometry; the trade writes 0.785 D^2 (wastewater101 operator practice problems)",
+        .trap = "0.785 for pi/4 reads 0.05 percent low",
+    },
+    {
+        .name = "rectangular-tank-volume",
+        .subject = "conversions and tanks",
+        .argument = {{.name = "length", .unit = "ft", .at_least = "0"},
+                     {.name = "width", .unit = "ft", .at_least = "0"},
+                     {.name = "depth", .unit = "ft", .at_least = "0"}},
+        .arguments = 3,
+        .result = "volume",
+        .unit = "gal",
+        .equation = "length * width * depth * gal_per_ft3",
+        .source = "geometry; wastewater101 operator practice problems",
+        .trap = "depth of the liquid, not of the wall: no freeboard",
+    },
+    {
+        .name = "cylindrical-tank-volume",
+        .subject = "conversions and tanks",
+        .argument = {{.name = "diameter", .unit = "ft", .at_least = "0"},
+                     {.name = "depth", .unit = "ft", .at_least = "0"}},
+        .arguments = 2,
+        .result = "volume",
+        .unit = "gal",
+        .equation = "pi / 4 * diameter ^ 2 * depth * gal_per_ft3",
+        .source = "geometry; wastewater101 operator practice problems",
+        .trap = "takes the diameter, not the radius",
+    },
+    {
+        .name = "conical-bottom-volume",
+        .subject = "conversions and tanks",
+        .argument = {{.name = "diameter", .unit = "ft", .at_least = "0"},
+                     {.name = "depth", .unit = "ft", .at_least = "0"}},
+        .arguments = 2,
+        .result = "volume",
+        .unit = "gal",
+        .equation = "pi / 12 * diameter ^ 2 * depth * gal_per_ft3",
+        .source = "geometry (a cone is a third of its cylinder)",
+    },
+    {
+        .name = "liquid-weight",
+        .subject = "conversions and tanks",
+        .argument = {{.name = "volume", .unit = "gal", .at_least = "0"},
+                     {.name = "specific_gravity", .unit = "1", .fallback = "1", .above = "0"},
+                     {.name = "load_factor", .unit = "lb/gal", .fallback = "8.34", .above = "0"}},
+        .arguments = 3,
+        .result = "weight",
+        .unit = "lb",
+        .equation = "volume * load_factor * specific_gravity",
+        .source = "Florida DEP wastewater formulas and conversion table, Feb. 2014, read as "
+                  "excerpt (8.34 lb/gal); specific gravity factor: Ohio EPA applied wastewater "
+                  "math formula sheet, Oct. 2005, read as excerpt",
+    },
+    {
+        .name = "pressure-from-head",
+        .subject = "conversions and tanks",
+        .argument = {{.name = "head", .unit = "ft", .at_least = "0"},
+                     {.name = "specific_gravity", .unit = "1", .fallback = "1", .above = "0"}},
+        .arguments = 2,
+        .result = "pressure",
+        .unit = "psi",
+        .equation = "head * specific_gravity / 2.31",
+        .source = "Florida DEP wastewater formulas and conversion table, Feb. 2014, read as "
+                  "excerpt (2.31 ft of water per psi)",
+        .trap = "2.31 ft of water make one psi; other liquids go by their specific gravity",
+    },
+    {
+        .name = "head-from-pressure",
+        .subject = "conversions and tanks",
+        .argument = {{.name = "pressure", .unit = "psi", .at_least = "0"},
+                     {.name = "specific_gravity", .unit = "1", .fallback = "1", .above = "0"}},
+        .arguments = 2,
+        .result = "head",
+        .unit = "ft",
+        .equation = "pressure * 2.31 / specific_gravity",
+        .source = "Florida DEP wastewater formulas and conversion table, Feb. 2014, read as "
+                  "excerpt (2.31 ft of water per psi)",
+    },
+};
+
+const struct catalogue_part catalogue_tanks = {rows, NELEM(rows)};

@@ -1,0 +1,75 @@
+/* Where the arguments of a process figure come from: readings day by day, and streams of amount and
+ * strength made of them. Everything is worked once and kept by day. */
+#ifndef WEIRBOOK_PROCESS_SUPPLY_H
+#define WEIRBOOK_PROCESS_SUPPLY_H
+
+#include "process/process.h"
+
+/* One column of the frame in one unit. */
+struct cell {
+    const struct fraction *number; /* NULL: none, and `why` says so */
+    const char *why;
+    bool less, greater;
+};
+
+struct series {
+    int point, parameter;
+    const struct unit *unit;
+    struct cell *cell; /* by day from supplies.first */
+    struct series *next;
+};
+
+struct supplies {
+    struct arena *arena, *passing; /* `passing` is dropped now and then: see supplies_tidy */
+    const struct frame *frame;
+    const struct plant *plant;
+    day_t first, last; /* the days asked for and those that smoothing reaches back to */
+    int smooth;
+    struct series *series;
+};
+
+/* A part of a stream: an amount (a reading, a number, a basin's measure while it is in service, or
+ * another stream's amount) and, where solids or the like go with it, their strength. */
+struct part {
+    const struct series *reading;
+    const struct fraction *number;
+    const struct basin *basin; /* the number counts while this one is in service */
+    struct stream *stream;
+    const struct series *strength; /* NULL: none */
+};
+
+/* What a stream carries on a day. */
+struct carried {
+    bool known;
+    bool idle;                      /* made of basins, and none is in service */
+    const struct fraction *amount;  /* NULL: `no_amount` says why */
+    const struct fraction *product; /* sum of amount x strength; NULL: `no_product` says why */
+    const char *no_amount, *no_product;
+    bool less, greater; /* a less-than, a greater-than took part */
+    int days;           /* of a smoothed one: how many took part */
+};
+
+struct stream {
+    struct part *part;
+    size_t parts, room;
+    struct carried *daily, *smoothed; /* by day from supplies.first */
+};
+
+/* NULL when the frame holds no reading of the column. `unit`: NULL for the parameter's own. */
+const struct series *series_of(struct supplies *s, int point, int parameter,
+                               const struct unit *unit);
+const struct cell *series_cell(const struct supplies *s, const struct series *series, day_t day);
+
+struct stream *stream_new(struct supplies *s);
+void stream_add(struct supplies *s, struct stream *stream, struct part part);
+/* Streams are worked when first asked for. */
+const struct carried *stream_day(struct supplies *s, struct stream *stream, day_t day);
+/* The mean over the days of the window that ends on `day` and that have what is needed. */
+const struct carried *stream_smoothed(struct supplies *s, struct stream *stream, day_t day);
+
+/* Drops what was worked in passing once it has grown. Results must have been copied. */
+void supplies_tidy(struct supplies *s);
+/* A copy that outlives `passing`. */
+const struct fraction *supplies_keep(struct supplies *s, const struct fraction *x);
+
+#endif

@@ -1,0 +1,359 @@
+/* The process table: every line worked for every day, or gathered by week, month or year. */
+#include "process/process.h"
+
+#include <assert.h>
+#include <stdlib.h>
+
+#include "process/lines.h"
+
+#include "base/poison.h"
+
+/* Whether a figure's parts are measured at all is judged over a month at least, so that a day's
+ * table names what is missing on it. */
+enum { LOOK_BACK = 30 };
+
+day_t process_reach(const struct process_options *o)
+{
+    int back = o->smooth - 1 > LOOK_BACK ? o->smooth - 1 : LOOK_BACK;
+    return o->from - back;
+}
+
+struct table {
+    struct supplies s;
+    struct lines lines;
+    const struct process_options *options;
+    struct process_figure *figures;
+    size_t count, room;
+};
+
+/* ---- one figure of one day ---- */
+
+struct day_figure {
+    bool absent;                  /* its basin is out of service: no row */
+    const struct fraction *value; /* NULL: `note` says why; in the arena that is passing */
+    const char *note;             /* "" mostly */
+    bool less, greater;
+    int split;  /* basins in service that share a flow; 0: none do */
+    int fewest; /* days of the scarcest smoothed part; 0: not smoothed */
+};
+
+static bool basin_runs(const struct plant *p, const struct line *line, day_t day)
+{
+    for (size_t i = 0; i < p->basin_count; i++)
+        if (text_equal(p->basins[i].id, line->basin) && basin_in_service(&p->basins[i], day))
+            return true;
+    return false;
+}
+
+static int running(const struct plant *p, enum basin_kind kind, day_t day)
+{
+    int count = 0;
+    for (size_t i = 0; i < p->basin_count; i++)
+        count += p->basins[i].kind == kind && basin_in_service(&p->basins[i], day);
+    return count;
+}
+
+static const struct fraction *strength(struct arena *a, const struct carried *c)
+{
+    if (c->product == NULL || fraction_sign(c->amount) == 0)
+        return c->product;
+    return fraction_divide(a, c->product, c->amount);
+}
+
+/* NULL when the input has no number on the day; the figure then has its note. */
+static const struct fraction *input_number(struct table *t, const struct line *line,
+                                           const struct input *in, day_t day,
+                                           struct day_figure *out)
+{
+    struct arena *a = t->s.passing;
+    const struct carried *c = line->smoothed ? stream_smoothed(&t->s, in->stream, day)
+                                             : stream_day(&t->s, in->stream, day);
+    if (c->idle)
+        out->absent = true;
+    const struct fraction *x = in->side == AMOUNT ? c->amount : strength(a, c);
+    if (x == NULL) {
+        out->note = in->side == AMOUNT ? c->no_amount : c->no_product;
+        return NULL;
+    }
+    out->less = out->less || c->less;
+    out->greater = out->greater || c->greater;
+    if (c->days > 0 && (out->fewest == 0 || c->days < out->fewest))
+        out->fewest = c->days;
+    if (in->shared) {
+        out->split = running(t->s.plant, line->kind, day);
+        assert(out->split > 0);
+        x = fraction_divide(a, x, fraction_from_int(a, out->split));
+    }
+    if (in->factor)
+        x = fraction_add(a, fraction_multiply(a, x, in->factor), in->offset);
+    return x;
+}
+
+static void work_figure(struct table *t, const struct line *line, day_t day, struct day_figure *out)
+{
+    const struct fraction *number[FORMULA_ARGUMENTS_MOST];
+    struct formula_value value[FORMULA_ARGUMENTS_MOST] = {{0}};
+    const struct formula *formula = line->ready->formula;
+    struct arena *a = t->s.passing;
+    struct fault fault = {.set = false};
+    *out = (struct day_figure){.note = ""};
+    out->absent = line->basin && !basin_runs(t->s.plant, line, day);
+    for (size_t i = 0; i < formula->arguments && !out->absent; i++) {
+        if (line->input[i].stream == NULL)
+            continue;
+        number[i] = input_number(t, line, &line->input[i], day, out);
+        if (number[i] == NULL)
+            return;
+        value[i] = (struct formula_value){.number = &number[i], .count = 1};
+    }
+    if (out->absent)
+        return;
+    if (ready_work(a, line->ready, value, &out->value, &fault) != OK) {
+        out->value = NULL;
+        out->note = arena_text(t->s.arena, fault.text);
+        return;
+    }
+    if (line->factor)
+        out->value = fraction_add(a, fraction_multiply(a, out->value, line->factor), line->offset);
+}
+
+/* ---- notes ---- */
+
+static void add_note(struct text *t, const char *note)
+{
+    if (*note == '\0')
+        return;
+    if (t->length > 0)
+        text_add(t, "; ");
+    text_add(t, note);
+}
+
+static const char *kept(struct table *t, const char *s)
+{
+    return *s == '\0' ? "" : arena_text(t->s.arena, s);
+}
+
+/* What must be known of a figure that has a value. */
+static const char *value_note(struct table *t, const struct line *line, const struct day_figure *d)
+{
+    bool smoothed = line->smoothed && t->options->smooth > 1;
+    if (!smoothed && d->split <= 1 && !d->less && !d->greater)
+        return line->note;
+    struct text note;
+    text_init(&note, 512);
+    add_note(&note, line->note);
+    if (d->split > 1)
+        text_print(&note, "%sflow split evenly over %d in service", note.length ? "; " : "",
+                   d->split);
+    if (smoothed)
+        text_print(&note, "%smeans of %d days", note.length ? "; " : "", t->options->smooth);
+    if (smoothed && d->fewest > 0 && d->fewest < t->options->smooth)
+        text_print(&note, ", one part of only %d", d->fewest);
+    if (d->less)
+        add_note(&note, "with a less-than");
+    if (d->greater)
+        add_note(&note, "with a greater-than");
+    const char *s = kept(t, note.at);
+    text_free(&note);
+    return s;
+}
+
+/* ---- days ---- */
+
+static struct process_figure *figure_new(struct table *t, const struct line *line, day_t from,
+                                         day_t to)
+{
+    struct process_figure *f = arena_push(t->s.arena, &t->figures, &t->count, &t->room, sizeof *f);
+    f->from = from;
+    f->to = to;
+    f->name = line->name;
+    f->at = line->at;
+    f->parameter = line->parameter;
+    f->unit = line->unit;
+    f->note = "";
+    return f;
+}
+
+static void add_day(struct table *t, const struct line *line, day_t day)
+{
+    struct day_figure d;
+    work_figure(t, line, day, &d);
+    if (d.absent)
+        return;
+    struct process_figure *f = figure_new(t, line, day, day);
+    if (d.value == NULL) {
+        f->note = d.note;
+        return;
+    }
+    f->value = supplies_keep(&t->s, d.value);
+    f->count = 1;
+    f->note = value_note(t, line, &d);
+}
+
+/* ---- weeks, months, years ---- */
+
+static day_t year_last(day_t day)
+{
+    int year;
+    int month;
+    int date;
+    day_t last = day;
+    day_split(day, &year, &month, &date);
+    bool there = day_from(year, 12, 31, &last);
+    assert(there);
+    (void)there;
+    return last;
+}
+
+/* The last day of the step that holds `day`. Weeks start by the plant's rule. */
+static day_t step_last(const struct table *t, day_t day)
+{
+    int into;
+    switch (t->options->step) {
+    case STEP_WEEK:
+        into = ((int)day_weekday(day) - t->s.plant->rules.word[RULE_WEEK_STARTS] + 7) % 7;
+        return day + 6 - into;
+    case STEP_MONTH:
+        return month_last(day);
+    case STEP_YEAR:
+        return year_last(day);
+    default:
+        return day;
+    }
+}
+
+struct gathered {
+    const struct fraction *sum, *least, *most;
+    long count, present; /* days with a figure; days on which there could be one */
+    bool less, greater;
+    const char *first_missing;
+};
+
+static void gather(struct table *t, const struct line *line, day_t day, struct gathered *g)
+{
+    struct day_figure d;
+    work_figure(t, line, day, &d);
+    if (d.absent)
+        return;
+    g->present++;
+    if (d.value == NULL) {
+        if (g->first_missing == NULL)
+            g->first_missing = d.note;
+        return;
+    }
+    const struct fraction *x = supplies_keep(&t->s, d.value);
+    g->sum = g->count == 0 ? x : fraction_add(t->s.arena, g->sum, x);
+    if (g->count == 0 || fraction_compare(x, g->least) < 0)
+        g->least = x;
+    if (g->count == 0 || fraction_compare(x, g->most) > 0)
+        g->most = x;
+    g->count++;
+    g->less = g->less || d.less;
+    g->greater = g->greater || d.greater;
+}
+
+static const char *step_note(struct table *t, const struct line *line, const struct gathered *g)
+{
+    struct text note;
+    text_init(&note, 512);
+    add_note(&note, line->note);
+    if (g->count < g->present)
+        text_print(&note, "%s%ld of %ld days; %s", note.length ? "; " : "", g->count, g->present,
+                   g->first_missing);
+    if (g->less)
+        add_note(&note, "with a less-than");
+    if (g->greater)
+        add_note(&note, "with a greater-than");
+    const char *s = kept(t, note.at);
+    text_free(&note);
+    return s;
+}
+
+static void add_step(struct table *t, const struct line *line, day_t from, day_t to)
+{
+    struct gathered g = {0};
+    for (day_t day = from; day <= to; day++) {
+        gather(t, line, day, &g);
+        supplies_tidy(&t->s);
+    }
+    if (g.present == 0)
+        return;
+    struct process_figure *f = figure_new(t, line, from, to);
+    f->count = g.count;
+    f->note = step_note(t, line, &g);
+    if (g.count == 0)
+        return;
+    f->value = fraction_divide(t->s.arena, g.sum, fraction_from_int(t->s.arena, g.count));
+    f->least = g.least;
+    f->most = g.most;
+}
+
+/* ---- all of it ---- */
+
+static int by_order(const void *one, const void *other)
+{
+    const struct line *a = one;
+    const struct line *b = other;
+    return (a->order > b->order) - (a->order < b->order);
+}
+
+/* In the catalogue's order; lines of one formula stay as they were found. */
+static void sort_lines(struct lines *lines)
+{
+    size_t kept_lines = 0;
+    for (size_t i = 0; i < lines->count; i++)
+        if (lines->line[i].ready != NULL)
+            lines->line[kept_lines++] = lines->line[i];
+    lines->count = kept_lines;
+    for (size_t i = 0; i < lines->count; i++)
+        lines->line[i].order = lines->line[i].order * (lines->count + 1) + i;
+    if (lines->count > 1)
+        qsort(lines->line, lines->count, sizeof *lines->line, by_order);
+}
+
+static void work_all(struct table *t)
+{
+    const struct process_options *o = t->options;
+    for (day_t from = o->from, to; from <= o->to; from = to + 1) {
+        to = step_last(t, from);
+        if (to > o->to)
+            to = o->to;
+        for (size_t i = 0; i < t->lines.count; i++) {
+            if (o->step == STEP_DAY)
+                add_day(t, &t->lines.line[i], from);
+            else
+                add_step(t, &t->lines.line[i], from, to);
+            supplies_tidy(&t->s);
+        }
+    }
+}
+
+enum status process_table(struct arena *a, const struct frame *frame,
+                          const struct process_options *o, struct process_figure **out,
+                          size_t *count, struct fault *f)
+{
+    enum status rc = OK;
+    struct table t = {.options = o};
+    assert(o->from <= o->to);
+    *out = NULL;
+    *count = 0;
+    if (o->smooth < 1)
+        return fault_usage(f, "give at least 1 day", "cannot take a mean over %d days", o->smooth);
+    TRY(process_check(frame_plant(frame), f));
+    t.s = (struct supplies){.arena = a,
+                            .passing = arena_new(),
+                            .frame = frame,
+                            .plant = frame_plant(frame),
+                            .first = o->from - (o->smooth - 1),
+                            .last = o->to,
+                            .smooth = o->smooth};
+    lines_find(&t.s, &t.lines);
+    lines_own(&t.s, &t.lines);
+    sort_lines(&t.lines);
+    work_all(&t);
+    *out = t.figures;
+    *count = t.count;
+done:
+    arena_free(t.s.passing);
+    return rc;
+}

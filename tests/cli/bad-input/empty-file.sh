@@ -1,0 +1,7 @@
+small_book
+remember small.book
+: >empty.csv
+"$weirbook" load empty.csv
+status=$?
+unchanged
+exit $status

@@ -1,0 +1,7 @@
+small_plant
+echo keep >small.book
+remember small.book
+"$weirbook" new small.book plant
+status=$?
+unchanged
+exit $status

@@ -1,0 +1,45 @@
+# What the command scripts share. Each runs in an empty folder of its own.
+set -u
+
+# A small plant: one outfall, BOD5 and flow, since 2025-01-01.
+small_plant() {
+    mkdir -p plant
+    cat >plant/plant.csv <<END
+field,value
+name,Small Works
+permit,XX0000001
+receiving_water,Invented Creek
+units,us
+since,2025-01-01
+END
+    cat >plant/points.csv <<END
+point,name,role,outfall
+INF,Raw influent,influent,
+EFF,Final effluent,effluent,001
+END
+    cat >plant/limits.csv <<END
+outfall,point,parameter,basis,statistic,bound,limit,unit,samples
+001,EFF,BOD5,concentration,monthly-average,max,30,mg/L,1/week
+001,EFF,BOD5,concentration,weekly-average,max,45,mg/L,
+001,EFF,BOD5,removal,monthly-average,min,85,%,
+END
+}
+
+# A book of it with four weeks of March 2025, named small.book.
+small_book() {
+    small_plant
+    cat >march.csv <<END
+date,time,point,parameter,value,unit
+2025-03-04,,INF,BOD5,200,mg/L
+2025-03-04,,EFF,BOD5,20.0,mg/L
+2025-03-11,,EFF,BOD5,24,mg/L
+2025-03-18,,EFF,BOD5,<2,mg/L
+2025-03-25,,EFF,BOD5,30,mg/L
+END
+    "$weirbook" new small.book plant >/dev/null
+    "$weirbook" load --by tester march.csv >/dev/null
+}
+
+# Says whether a file is byte for byte what it was.
+remember() { sha256sum "$1" >.remembered; }
+unchanged() { sha256sum --quiet -c .remembered && echo "unchanged"; }

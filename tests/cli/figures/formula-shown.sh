@@ -1,0 +1,1 @@
+"$weirbook" formula solids-retention-time

@@ -1,0 +1,1 @@
+"$weirbook" load --help

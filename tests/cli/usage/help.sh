@@ -1,0 +1,4 @@
+"$weirbook" help
+"$weirbook" >short
+"$weirbook" help >long
+cmp short long
