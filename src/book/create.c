@@ -21,26 +21,27 @@ static enum status cannot_make(const char *path, int number, struct fault *f)
                     "cannot make '%s': %s", path, strerror(number));
 }
 
-/* An empty file of our own beside the book's place, which nobody else can have made. */
-static enum status make_beside(struct arena *a, const char *path, const char **out, struct fault *f)
+/* An empty file of our own beside the book's place, which nobody else can have made; NULL with a
+ * fault. */
+static const char *make_beside(struct arena *a, const char *path, struct fault *f)
 {
     struct stat st;
-    if (lstat(path, &st) == 0)
-        return cannot_make(path, EEXIST, f);
-    for (int n = 0; n < 100; n++) {
-        /* "./" before it, so that SQLite takes no such name for something else than a file. */
-        const char *name = arena_print(a, "%s%s.making-%ld-%d", path[0] == '/' ? "" : "./", path,
-                                       (long)getpid(), n);
-        int fd = open(name, O_CREAT | O_EXCL | O_RDWR | O_CLOEXEC, 0666);
-        if (fd >= 0) {
-            close(fd);
-            *out = name;
-            return OK;
+    int number = EEXIST;
+    if (lstat(path, &st) != 0) {
+        for (int n = 0; n < 100 && number == EEXIST; n++) {
+            /* "./" before it, so that SQLite takes no such name for something else than a file. */
+            const char *name = arena_print(a, "%s%s.making-%ld-%d", path[0] == '/' ? "" : "./",
+                                           path, (long)getpid(), n);
+            int fd = open(name, O_CREAT | O_EXCL | O_RDWR | O_CLOEXEC, 0666);
+            if (fd >= 0) {
+                close(fd);
+                return name;
+            }
+            number = errno;
         }
-        if (errno != EEXIST)
-            return cannot_make(path, errno, f);
     }
-    return cannot_make(path, EEXIST, f);
+    cannot_make(path, number, f);
+    return NULL;
 }
 
 static enum status fill(struct book *b, const struct plant_draft *draft,
@@ -110,7 +111,11 @@ enum status book_create(const char *path, const struct plant_draft *draft,
     enum status rc = OK;
     int number;
 
-    TRY(make_beside(a, path, &beside, f));
+    beside = make_beside(a, path, f);
+    if (!beside) {
+        rc = FAULT;
+        goto done;
+    }
     TRY(build(beside, path, draft, author, f));
     number = sync_at(beside, O_RDWR);
     if (number == 0)

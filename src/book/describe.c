@@ -160,14 +160,16 @@ static enum status gather(void *context, const struct stored_row *from, struct f
  * catalogue came first. Places count from 1 without gaps. */
 static enum status add_in_order(struct gathering *g, struct plant_draft *draft, struct fault *f)
 {
-    const struct plant_row **at = arena_alloc(g->arena, (g->rows + 1) * sizeof *at);
+    size_t *at =
+        arena_alloc(g->arena, (g->rows + 1) * sizeof *at); /* by place: the row's index + 1 */
     for (size_t i = 0; i < g->rows; i++) {
-        if (g->place[i] < 1 || (uint64_t)g->place[i] > g->rows || at[g->place[i] - 1])
+        int64_t place = g->place[i];
+        if (place < 1 || (uint64_t)place > g->rows || at[place - 1])
             return book_damaged(g->book, f, "rows of its description are missing");
-        at[g->place[i] - 1] = &g->row[i];
+        at[place - 1] = i + 1;
     }
     for (size_t i = 0; i < g->rows; i++)
-        plant_draft_add(draft, at[i]);
+        plant_draft_add(draft, &g->row[at[i] - 1]);
     return OK;
 }
 

@@ -181,7 +181,7 @@ done:
 
 /* Runs a FIND_ statement, then where it found nothing an ADD_ one with the same things bound. */
 static enum status find_or_add(struct book *b, enum statement find, enum statement add,
-                               void bind(sqlite3_stmt *s, const void *what), const void *what,
+                               void bind(sqlite3_stmt *, const void *), const void *what,
                                int64_t *out, struct fault *f)
 {
     sqlite3_stmt *s = NULL;

@@ -188,9 +188,9 @@ enum status book_open(struct book **out, const char *path, enum book_mode mode, 
         TRY(writing_settings(b, f));
     TRY(first_look(b, f));
     *out = b;
-    return OK;
 done:
-    book_close(b);
+    if (rc != OK)
+        book_close(b);
     return rc;
 }
 

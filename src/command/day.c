@@ -144,9 +144,13 @@ static struct page *make_page(struct making *m, day_t day)
                  arena_print(m->arena, "%s, %s %s", m->plant->name, names[day_weekday(day)], date));
     if (m->readings->rows == 0)
         page_line(page, FLAG_WATCH, "no readings on this day");
-    page_table(page, m->readings);
-    page_table(page, m->daily);
-    page_table(page, m->figures);
+    struct table *const shown[] = {m->readings, m->daily, m->figures};
+    for (size_t i = 0; i < NELEM(shown); i++) {
+        if (shown[i]->rows == 0)
+            continue;
+        page_space(page);
+        page_table(page, shown[i]);
+    }
     return page;
 }
 

@@ -25,7 +25,7 @@ const char *figure_print(struct arena *a, const struct fraction *value, int figu
         return "";
     int decimals = fraction_decimals_for(value, figures, ROUND_HALF_EVEN);
     char *s = fraction_print(a, value, decimals < 0 ? 0 : decimals, ROUND_HALF_EVEN);
-    if (figures == FIGURES_FILE)
+    if (figures >= FIGURES_FILE)
         drop_zeros(s);
     return s;
 }

@@ -61,7 +61,8 @@ static enum status store(const struct option_spec *o, void *options, const char 
         return OK;
     case OPTION_ONE_OF:
         if ((*(int *)at = word_index(o->argument, value)) < 0)
-            return fault_usage(f, o->argument, "--%s cannot be '%s'; it is one of", o->name, value);
+            return fault_usage(f, "take one of them", "--%s is one of %s, not '%s'", o->name,
+                               o->argument, value);
         return OK;
     case OPTION_DAY:
         if (!day_parse(value, at))

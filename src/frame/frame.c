@@ -105,10 +105,10 @@ static void sort(const struct reading **at, size_t count, const struct reading *
     sort(at + half, count - half, spare, cmp);
     if (cmp(at[half - 1], at[half]) <= 0)
         return;
-    memcpy(spare, at, half * sizeof *at);
+    memcpy(spare, at, half * sizeof(const struct reading *));
     while (i < half && j < count)
         at[k++] = cmp(spare[i], at[j]) <= 0 ? spare[i++] : at[j++];
-    memcpy(at + k, spare + i, (half - i) * sizeof *at);
+    memcpy(at + k, spare + i, (half - i) * sizeof(const struct reading *));
 }
 
 /* Of each reading the newest version, and of equal versions the one added last; a withdrawn reading
@@ -147,8 +147,10 @@ static void add_column(struct frame *f, const struct reading **at, size_t count)
 void frame_close(struct frame *f)
 {
     struct arena *passing = arena_new();
-    const struct reading **at = arena_alloc(f->arena, (f->readings + 1) * sizeof(*at));
-    const struct reading **spare = arena_alloc(passing, (f->readings + 1) * sizeof(*spare));
+    const struct reading **at =
+        arena_alloc(f->arena, (f->readings + 1) * sizeof(const struct reading *));
+    const struct reading **spare =
+        arena_alloc(passing, (f->readings + 1) * sizeof(const struct reading *));
     size_t count = f->readings;
 
     assert(!f->closed);

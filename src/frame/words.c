@@ -65,9 +65,9 @@ const char *const long_columns[LONG_COLUMNS] = {
     [LONG_NOTE] = "note",
 };
 
-#define X(id, word, todo) [REASON_##id] = word,
+#define X(id, word, todo) [REASON_##id] = (word),
 const char *const reason_words[REASON_COUNT] = {REASONS(X)};
 #undef X
-#define X(id, word, todo) [REASON_##id] = todo,
+#define X(id, word, todo) [REASON_##id] = (todo),
 const char *const reason_todo[REASON_COUNT] = {REASONS(X)};
 #undef X

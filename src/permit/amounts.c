@@ -58,17 +58,19 @@ const struct fraction *load_of(const struct work *w, const struct fraction *conc
 }
 
 /* R20, R30: substitute first; R13's number is the concentration's times flow and factor. */
-static void load_amount(const struct work *w, const struct amount *c, const struct amount *q,
-                        struct amount *out)
+static struct amount load_amount(const struct work *w, const struct amount *c,
+                                 const struct amount *q)
 {
-    *out = (struct amount){.number = load_of(w, c->number, q->number),
-                           .part_less = c->part_less || q->part_less,
-                           .all_less = c->all_less || q->all_less,
-                           .part_greater = c->part_greater || q->part_greater,
-                           .all_greater = c->all_greater || q->all_greater,
-                           .dnq = c->dnq};
-    if (out->part_less)
-        out->less = load_of(w, c->less ? c->less : c->number, q->less ? q->less : q->number);
+    struct amount load = {.number = load_of(w, c->number, q->number),
+                          .part_less = c->part_less || q->part_less,
+                          .all_less = c->all_less || q->all_less,
+                          .part_greater = c->part_greater || q->part_greater,
+                          .all_greater = c->all_greater || q->all_greater,
+                          .dnq = c->dnq};
+
+    if (load.part_less)
+        load.less = load_of(w, c->less ? c->less : c->number, q->less ? q->less : q->number);
+    return load;
 }
 
 /* ---- what a part has on a day ---- */
@@ -173,7 +175,7 @@ static enum state load_part(struct reader *r, const struct place_of *p, day_t da
         return state;
     if (flow_on(r, p, day, load_flow_unit(r->w->limit), &flow) == STATE_NONE || !flow.amount.number)
         return STATE_NONE;
-    load_amount(r->w, &out->amount, &flow.amount, &out->amount);
+    out->amount = load_amount(r->w, &out->amount, &flow.amount);
     return STATE_VALUE;
 }
 
@@ -434,14 +436,11 @@ enum status find_influent(const struct plant *plant, const struct limit *l, int 
             shared = (int)i;
         }
     }
+    *influent = named;
     if (named >= 0 && l->rules.own[RULE_INFLUENT])
-        *influent = named;
-    else if (all == 1)
-        *influent = only;
-    else if (sharing == 1)
-        *influent = shared;
-    else
-        *influent = named;
+        return OK;
+    if (all == 1 || sharing == 1)
+        *influent = all == 1 ? only : shared;
     if (*influent >= 0)
         return OK;
     return fault_at(f, &where, "set the rule influent=POINT, in plant.csv or in this row",

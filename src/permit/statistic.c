@@ -1,9 +1,8 @@
 /* statistic: the values of a row to one exact figure, and what must be known of its sign. Nothing
  * is rounded here. */
-#include "permit/work.h"
+#include "permit/statistic.h"
 
 #include <assert.h>
-#include <stdlib.h>
 
 #include "base/poison.h"
 
@@ -14,13 +13,7 @@
 
 /* ---- signs ---- */
 
-struct signs {
-    bool part_less, all_less, part_greater, all_greater;
-    const struct fraction *largest; /* of the numbers after "<" */
-    const char *as_written;
-};
-
-static struct signs signs_of(struct list l)
+struct signs signs_of(struct list l)
 {
     struct signs s = {.all_less = l.count > 0, .all_greater = l.count > 0};
 
@@ -39,7 +32,7 @@ static struct signs signs_of(struct list l)
     return s;
 }
 
-static void set_signs(struct figure *x, const struct signs *s)
+void set_signs(struct figure *x, const struct signs *s)
 {
     x->part_less = s->part_less;
     x->all_less = s->all_less;
@@ -49,8 +42,8 @@ static void set_signs(struct figure *x, const struct signs *s)
 
 /* R13: where all were less-thans the figure is "<" and the largest of the numbers, under `full` "<"
  * and the figure itself. Colorado general permit COG-603000, definition 11. */
-static void set_stand(const struct work *w, const struct signs *s, const struct fraction *largest,
-                      struct figure *x)
+void set_stand(const struct work *w, const struct signs *s, const struct fraction *largest,
+               struct figure *x)
 {
     if (!s->all_less)
         return;
@@ -134,8 +127,6 @@ static void removal_mean(const struct work *w, const struct series *s, struct fi
         x->stand.number = removed(w, signs.largest, of);
 }
 
-static void ranked_median(const struct work *w, struct list l, struct figure *x);
-
 /* Under nondetect=median the mean gives way to the median where a less-than or a DNQ is present:
  * California order R2-2012-0012, procedure of the State Implementation Policy. Loads and removals
  * have nothing to rank (R28). */
@@ -150,7 +141,7 @@ static bool gives_way(const struct work *w, struct list l)
     return false;
 }
 
-static void figure_mean(const struct work *w, const struct series *s, struct figure *x)
+void figure_mean(const struct work *w, const struct series *s, struct figure *x)
 {
     struct signs signs = signs_of(s->days);
 
@@ -173,6 +164,7 @@ static unsigned common_multiple(unsigned a, unsigned b)
 {
     unsigned x = a, y = b;
 
+    assert(a > 0 && b > 0);
     while (y != 0) {
         unsigned rest = x % y;
         x = y;
@@ -226,134 +218,6 @@ static void figure_geomean(const struct work *w, const struct series *s, struct 
     set_stand(w, &signs, signs.largest, x);
 }
 
-/* ---- ranks ---- */
-
-/* The procedure ranks less-thans lowest, then DNQ, then values; other rules go by the number alone.
- */
-static int rank_class(const struct amount *a, bool procedure)
-{
-    if (!procedure || (!a->all_less && !a->dnq))
-        return 2;
-    return a->all_less ? 0 : 1;
-}
-
-static int compare_ranked(const struct value *x, const struct value *y, bool procedure)
-{
-    int c = rank_class(&x->amount, procedure) - rank_class(&y->amount, procedure);
-
-    if (c == 0)
-        c = fraction_compare(x->amount.number, y->amount.number);
-    if (c == 0 && x->amount.all_less && y->amount.all_less)
-        c = fraction_compare(x->amount.less, y->amount.less);
-    if (c == 0)
-        c = (int)x->amount.all_less - (int)y->amount.all_less;
-    return c != 0 ? c : (x->day > y->day) - (x->day < y->day);
-}
-
-static int by_number(const void *x, const void *y)
-{
-    return compare_ranked(x, y, false);
-}
-
-static int by_procedure(const void *x, const void *y)
-{
-    return compare_ranked(x, y, true);
-}
-
-static bool by_the_procedure(const struct work *w)
-{
-    return w->rules->word[RULE_NONDETECT] == NONDETECT_MEDIAN;
-}
-
-static struct list ranked(const struct work *w, struct list l)
-{
-    struct list out = {arena_alloc(w->arena, (l.count + 1) * sizeof *out.at), l.count};
-
-    for (size_t i = 0; i < l.count; i++)
-        out.at[i] = l.at[i];
-    qsort(out.at, out.count, sizeof *out.at, by_the_procedure(w) ? by_procedure : by_number);
-    return out;
-}
-
-/* What was read off a ranking carries the sign of the values it was read from; R13 comes first
- * (R27). `taken` is one value or two neighbours, the figure lies `share` of the way between them.
- */
-static void figure_read(const struct work *w, struct list all, struct list taken,
-                        const struct fraction *share, struct figure *x)
-{
-    struct signs whole = signs_of(all), here = signs_of(taken);
-    const struct amount *low = &taken.at[0].amount, *high = &taken.at[taken.count - 1].amount;
-
-    x->read = true;
-    if (taken.count == 1) {
-        x->exact = (struct exact){low->number, low->product, low->root};
-    } else {
-        const struct fraction *step = fraction_subtract(w->arena, high->number, low->number);
-        x->exact.number =
-            fraction_add(w->arena, low->number, fraction_multiply(w->arena, step, share));
-    }
-    if (whole.all_less) {
-        set_signs(x, &whole);
-        set_stand(w, &whole, whole.largest, x);
-        return;
-    }
-    set_signs(x, &here);
-    if (here.all_less) {
-        x->stand.number = here.largest;
-        x->as_written = here.as_written;
-    }
-}
-
-/* R24: the mean of the middle two; under the procedure the lower when either is a less-than or a
- * DNQ. */
-static void ranked_median(const struct work *w, struct list l, struct figure *x)
-{
-    struct list r = ranked(w, l), taken = {NULL, 1};
-    size_t middle = r.count / 2;
-
-    if (r.count == 0)
-        return;
-    taken.at = r.at + middle;
-    if (r.count % 2 == 0) {
-        bool low = by_the_procedure(w) && (rank_class(&r.at[middle - 1].amount, true) < 2 ||
-                                           rank_class(&r.at[middle].amount, true) < 2);
-        taken.at = r.at + middle - 1;
-        taken.count = low ? 1 : 2;
-    }
-    figure_read(w, l, taken, fraction_from_ratio(w->arena, 1, 2), x);
-}
-
-static void figure_median(const struct work *w, const struct series *s, struct figure *x)
-{
-    ranked_median(w, s->days, x);
-}
-
-/* G7, common practice, no source: nearest rank ceil(pn); linear between ranks 1 + p(n - 1); Weibull
- * p(n + 1), held inside the ranks there are. Ranks are kept in hundredths. */
-static void figure_percentile(const struct work *w, const struct series *s, struct figure *x)
-{
-    struct list r = ranked(w, s->days), taken = {NULL, 1};
-    long n = (long)r.count, p = w->limit->percentile, rank;
-
-    if (n == 0)
-        return;
-    switch (w->rules->word[RULE_PERCENTILE]) {
-    case PERCENTILE_LINEAR:
-        rank = 100 + p * (n - 1);
-        break;
-    case PERCENTILE_WEIBULL:
-        rank = p * (n + 1);
-        break;
-    default:
-        rank = (p * n + 99) / 100 * 100;
-        break;
-    }
-    rank = rank < 100 ? 100 : rank > 100 * n ? 100 * n : rank;
-    taken.at = r.at + rank / 100 - 1;
-    taken.count = rank % 100 == 0 ? 1 : 2;
-    figure_read(w, s->days, taken, fraction_from_ratio(w->arena, rank % 100, 100), x);
-}
-
 /* ---- totals ---- */
 
 static const struct fraction *days_of(const struct work *w)
@@ -399,107 +263,6 @@ static void figure_total(const struct work *w, const struct series *s, struct fi
     x->exact.number = sum_of(w, s->days);
     set_signs(x, &signs);
     set_stand(w, &signs, less, x);
-}
-
-/* ---- worst values ---- */
-
-void figure_of_value(const struct work *w, const struct value *v, struct figure *out)
-{
-    struct list one = {(struct value[]){*v}, 1};
-    struct signs signs = signs_of(one);
-
-    *out = (struct figure){.on = v->day};
-    out->exact = (struct exact){v->amount.number, v->amount.product, v->amount.root};
-    set_signs(out, &signs);
-    set_stand(w, &signs, signs.largest, out);
-}
-
-/* R7: the lowest for a minimum, else the highest. Ties (R32): the less-than with the larger number,
- * then the earlier day, which came first. */
-static bool is_worse(const struct work *w, const struct figure *b, const struct figure *a)
-{
-    int c = fraction_compare(b->exact.number, a->exact.number);
-
-    if (is_minimum(w->limit))
-        c = -c;
-    if (c != 0 || !b->all_less)
-        return c > 0;
-    return !a->all_less || (b->stand.number && a->stand.number &&
-                            fraction_compare(b->stand.number, a->stand.number) > 0);
-}
-
-/* The worst so far, and the count of those beyond the limit. */
-static void take_worst(const struct work *w, const struct figure *x, struct figure *worst)
-{
-    long times = worst->times + exact_beyond(w, &x->exact);
-
-    if (!worst->exact.number || is_worse(w, x, worst))
-        *worst = *x;
-    worst->times = times;
-}
-
-static void figure_worst(const struct work *w, const struct series *s, struct figure *x)
-{
-    struct list l = s->by_reading ? s->readings : s->days;
-
-    for (size_t i = 0; i < l.count; i++) {
-        struct figure one;
-
-        figure_of_value(w, &l.at[i], &one);
-        take_worst(w, &one, x);
-    }
-    x->beyond = x->certain = x->times > 0;
-}
-
-/* Directive 91/271/EEC, annex I, table 3, from memory: the most samples for which as many may fail
- * as the place in this list. */
-static const int table_3[] = {3,   7,   16,  28,  40,  53,  67,  81,  95,  110, 125, 140, 155,
-                              171, 187, 203, 219, 235, 251, 268, 284, 300, 317, 334, 350, 365};
-
-static bool more_than_allowed(const struct work *w, long times, long samples)
-{
-    const struct limit *l = w->limit;
-    size_t fail = 0;
-
-    switch (l->allowed_kind) {
-    case ALLOWED_PERCENT: /* G3: compared exactly; 1 of 10 is not more than 10 % */
-        return fraction_compare(fraction_from_int(w->arena, times * 100),
-                                fraction_multiply(w->arena,
-                                                  fraction_from_decimal(w->arena, l->allowed),
-                                                  fraction_from_int(w->arena, samples))) > 0;
-    case ALLOWED_EU_TABLE_3:
-        while (fail + 1 < NELEM(table_3) && table_3[fail] < samples)
-            fail++;
-        return times > (long)fail;
-    case ALLOWED_COUNT:
-        return decimal_compare((struct decimal){times, 0}, l->allowed) > 0;
-    default: /* R46 */
-        return times > 0;
-    }
-}
-
-/* G3: the worst value stands in the row; none may pass the ceiling, which is compared at its own
- * decimals (R46). */
-static void figure_samples(const struct work *w, const struct series *s, struct figure *x)
-{
-    const struct limit *l = w->limit;
-    struct list judged = s->by_reading ? s->readings : s->days;
-    bool passed = false, too_many;
-
-    figure_worst(w, s, x);
-    for (size_t i = 0; i < judged.count && l->ceiling.set; i++) {
-        struct figure one;
-        int c;
-
-        figure_of_value(w, &judged.at[i], &one);
-        c = exact_against(w, &one.exact, l->ceiling.value);
-        passed = passed || (is_minimum(l) ? c < 0 : c > 0);
-    }
-    too_many = more_than_allowed(w, x->times, (long)judged.count);
-    x->beyond = l->bound != BOUND_REPORT && (too_many || passed);
-    /* Later samples can still bring a percentage or the table down again (R38). */
-    x->certain = x->beyond &&
-                 (passed || l->allowed_kind == ALLOWED_NONE || l->allowed_kind == ALLOWED_COUNT);
 }
 
 /* ---- spans ---- */

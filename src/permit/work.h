@@ -1,7 +1,7 @@
 /* work: how a row of a permit summary is worked, from left to right:
  *   periods.c    a limit and a month to the rows it has there
  *   amounts.c    a row to the values of its days
- *   statistic.c  those values to one exact figure
+ *   statistic.c  those values to one exact figure (ranks.c, worst.c)
  *   verdict.c    the figure to its text, and against the limit
  *   samples.c    how many samples were taken and required
  *   month.c      all limits of a month, conditions and groups
@@ -66,7 +66,8 @@ struct work {
 
 /* A day in force, where only those count (R3). */
 bool work_takes(const struct work *w, day_t day);
-/* Whether the days from..to that have any entry are all without discharge; there must be one (R39). */
+/* Whether the days from..to that have any entry are all without discharge; there must be one (R39).
+ */
 bool work_without_discharge(const struct work *w, day_t from, day_t to);
 bool work_no_discharge(const struct work *w, day_t day);
 
@@ -122,7 +123,7 @@ struct exact {
 struct figure {
     struct exact exact;
     bool part_less, all_less, part_greater, all_greater;
-    bool read;          /* a value that was read off a ranking: its sign stands under any and all (R27) */
+    bool read; /* a value that was read off a ranking: its sign stands under any and all (R27) */
     struct exact stand; /* what stands after the sign where all were less-thans (R13, R27) */
     const char *as_written;
     day_t on;

@@ -135,7 +135,8 @@ static enum status read_value(struct question *q, const struct formula_argument 
                               const char *text, struct formula_value *out)
 {
     size_t count = arg->list ? element_count(text) : 1;
-    const struct fraction **numbers = arena_alloc(q->arena, count * sizeof(*numbers));
+    const struct fraction **numbers =
+        arena_alloc(q->arena, count * sizeof(const struct fraction *));
     for (size_t i = 0; i < count; i++) {
         size_t length = arg->list ? strcspn(text, ",") : strlen(text);
         if (read_number(q, arg, arena_bytes(q->arena, text, length), &numbers[i]) != OK)

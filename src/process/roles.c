@@ -51,12 +51,8 @@ struct stream *roles_number(struct supplies *s, const struct fraction *number)
 
 struct stream *roles_reading(struct supplies *s, int point, int parameter, const struct unit *unit)
 {
-    const struct series *series = series_of(s, point, parameter, unit);
-    if (series == NULL)
-        return NULL;
-    struct stream *stream = stream_new(s);
-    stream_add(s, stream, (struct part){.reading = series});
-    return stream;
+    struct series *series = series_of(s, point, parameter, unit);
+    return series ? stream_of(s, series) : NULL;
 }
 
 static const struct series *strength_of(struct supplies *s, int point, const char *parameter)
@@ -71,7 +67,7 @@ static const struct series *strength_of(struct supplies *s, int point, const cha
 /* ---- flows ---- */
 
 /* The point's own meter. */
-static const struct series *own_flow(struct supplies *s, int point)
+static struct series *own_flow(struct supplies *s, int point)
 {
     int at;
     int parameter;
@@ -81,7 +77,7 @@ static const struct series *own_flow(struct supplies *s, int point)
 }
 
 /* The meter the rule `flow` names for a point that has none. */
-static const struct series *ruled_flow(struct supplies *s, int point)
+static struct series *ruled_flow(struct supplies *s, int point)
 {
     int at;
     int parameter;
@@ -120,33 +116,29 @@ static struct stream *flow_of_role(struct supplies *s, enum role role, const cha
 static struct stream *main_flow(struct supplies *s, enum role first, enum role second,
                                 const char **measured_at)
 {
-    const struct series *ruled;
+    struct series *ruled;
     struct stream *stream = flow_of_role(s, first, measured_at);
     if (stream != NULL)
         return stream;
     ruled = ruled_flow(s, roles_only(s->plant, first));
     if (ruled == NULL)
         return flow_of_role(s, second, measured_at);
-    stream = stream_new(s);
-    stream_add(s, stream, (struct part){.reading = ruled});
     *measured_at = s->plant->points[ruled->point].id;
-    return stream;
+    return stream_of(s, ruled);
 }
 
 struct stream *roles_flow_past(struct supplies *s, const struct roles *r, int point,
                                const char **measured_at)
 {
     enum role role = s->plant->points[point].role;
-    const struct series *flow = own_flow(s, point);
+    struct series *flow = own_flow(s, point);
     bool early = role == ROLE_INFLUENT || role == ROLE_PRIMARY_EFFLUENT;
     bool late = role == ROLE_SECONDARY_EFFLUENT || role == ROLE_EFFLUENT;
     if (flow == NULL && (early || late))
         flow = ruled_flow(s, point);
     if (flow != NULL) {
-        struct stream *stream = stream_new(s);
-        stream_add(s, stream, (struct part){.reading = flow});
         *measured_at = s->plant->points[flow->point].id;
-        return stream;
+        return stream_of(s, flow);
     }
     /* The plant's flow passes this point only where nothing runs beside it. */
     if (!(early || late) || roles_only(s->plant, role) != point)

@@ -22,7 +22,7 @@ void supplies_tidy(struct supplies *s)
 
 const struct fraction *supplies_keep(struct supplies *s, const struct fraction *x)
 {
-    return fraction_add(s->arena, x, fraction_from_int(s->passing, 0));
+    return fraction_add(s->arena, x, s->zero);
 }
 
 /* ---- readings ---- */
@@ -58,14 +58,13 @@ static void fill(struct supplies *s, struct series *series)
         if (v.state == DAY_VALUED)
             c->number = v.amount.number;
         else if (v.state == DAY_NO_DISCHARGE && is_flow)
-            c->number = fraction_from_int(s->arena, 0); /* nothing flowed: that is a flow of 0 */
+            c->number = s->zero; /* nothing flowed: that is a flow of 0 */
         if (c->number == NULL)
             c->why = missing(s, series, day, &v);
     }
 }
 
-const struct series *series_of(struct supplies *s, int point, int parameter,
-                               const struct unit *unit)
+struct series *series_of(struct supplies *s, int point, int parameter, const struct unit *unit)
 {
     if (point < 0 || parameter < 0 || !frame_has(s->frame, point, parameter))
         return NULL;
@@ -93,11 +92,7 @@ const struct cell *series_cell(const struct supplies *s, const struct series *se
 
 struct stream *stream_new(struct supplies *s)
 {
-    struct stream *stream = arena_alloc(s->arena, sizeof *stream);
-    stream->daily = arena_alloc(s->arena, day_count(s) * sizeof *stream->daily);
-    if (s->smooth > 1)
-        stream->smoothed = arena_alloc(s->arena, day_count(s) * sizeof *stream->smoothed);
-    return stream;
+    return arena_alloc(s->arena, sizeof(struct stream));
 }
 
 void stream_add(struct supplies *s, struct stream *stream, struct part part)
@@ -106,15 +101,24 @@ void stream_add(struct supplies *s, struct stream *stream, struct part part)
     *p = part;
 }
 
+struct stream *stream_of(struct supplies *s, struct series *series)
+{
+    if (series->stream == NULL) {
+        series->stream = stream_new(s);
+        stream_add(s, series->stream, (struct part){.reading = series});
+    }
+    return series->stream;
+}
+
 static const struct fraction *part_amount(struct supplies *s, const struct part *part, day_t day,
                                           struct carried *out)
 {
     if (part->stream) {
-        const struct carried *c = stream_day(s, part->stream, day);
-        out->no_amount = c->no_amount;
-        out->less = out->less || c->less;
-        out->greater = out->greater || c->greater;
-        return c->amount;
+        struct carried c = stream_day(s, part->stream, day);
+        out->no_amount = c.no_amount;
+        out->less = out->less || c.less;
+        out->greater = out->greater || c.greater;
+        return c.amount;
     }
     if (part->reading == NULL)
         return part->number;
@@ -144,72 +148,95 @@ static void part_product(struct supplies *s, const struct part *part, day_t day,
         fraction_add(s->arena, out->product, fraction_multiply(s->passing, amount, c->number));
 }
 
-static void work_day(struct supplies *s, const struct stream *stream, day_t day,
-                     struct carried *out)
+static struct carried work_day(struct supplies *s, const struct stream *stream, day_t day)
 {
-    const struct fraction *zero = fraction_from_int(s->arena, 0);
-    *out = (struct carried){.known = true, .idle = true, .amount = zero, .product = zero};
+    struct carried out = {.known = true, .idle = true, .amount = s->zero, .product = s->zero};
     for (size_t i = 0; i < stream->parts; i++) {
         const struct part *part = &stream->part[i];
         if (part->basin && !basin_in_service(part->basin, day))
             continue;
-        out->idle = false;
-        const struct fraction *amount = part_amount(s, part, day, out);
+        const struct fraction *amount = part_amount(s, part, day, &out);
         if (amount == NULL) {
-            out->amount = out->product = NULL;
-            out->no_product = out->no_amount;
-            return;
+            out.idle = false;
+            out.amount = out.product = NULL;
+            out.no_product = out.no_amount;
+            return out;
         }
-        out->amount = fraction_add(s->arena, out->amount, amount);
-        part_product(s, part, day, amount, out);
+        out.amount = out.idle ? amount : fraction_add(s->arena, out.amount, amount);
+        out.idle = false;
+        part_product(s, part, day, amount, &out);
     }
+    return out;
 }
 
-const struct carried *stream_day(struct supplies *s, struct stream *stream, day_t day)
+/* Whether working the stream anew costs no more than looking it up. */
+static bool is_simple(const struct stream *stream)
+{
+    return stream->parts == 1 && stream->part->strength == NULL && stream->part->stream == NULL;
+}
+
+static struct carried *slot(struct supplies *s, struct carried **by_day, day_t day)
 {
     assert(day >= s->first && day <= s->last);
-    struct carried *c = &stream->daily[day - s->first];
+    if (*by_day == NULL)
+        *by_day = arena_alloc(s->arena, day_count(s) * sizeof **by_day);
+    return &(*by_day)[day - s->first];
+}
+
+struct carried stream_day(struct supplies *s, struct stream *stream, day_t day)
+{
+    if (is_simple(stream))
+        return work_day(s, stream, day);
+    struct carried *c = slot(s, &stream->daily, day);
     if (!c->known)
-        work_day(s, stream, day, c);
-    return c;
+        *c = work_day(s, stream, day);
+    return *c;
+}
+
+static struct carried nothing_in_window(struct supplies *s, const struct carried *today)
+{
+    struct carried out = {.known = true, .idle = today->idle};
+    const char *why = today->no_amount ? today->no_amount : today->no_product;
+    if (why != NULL)
+        out.no_amount = out.no_product =
+            arena_print(s->arena, "%s, nor in the %d days to it", why, s->smooth);
+    return out;
 }
 
 /* Amount and product are meant over the same days, so that their quotient is the strength of all
  * that was carried in them. */
-static void work_window(struct supplies *s, struct stream *stream, day_t day, struct carried *out)
+static struct carried work_window(struct supplies *s, struct stream *stream, day_t day)
 {
-    const struct fraction *amount = fraction_from_int(s->passing, 0);
-    const struct fraction *product = amount;
-    const struct carried *today = stream_day(s, stream, day);
-    *out = (struct carried){.known = true, .idle = today->idle};
+    const struct fraction *amount = s->zero;
+    const struct fraction *product = s->zero;
+    struct carried today = stream_day(s, stream, day);
+    struct carried out = {.known = true, .idle = today.idle};
     for (day_t d = day - s->smooth + 1; d <= day; d++) {
-        const struct carried *c = d >= s->first ? stream_day(s, stream, d) : NULL;
-        if (c == NULL || c->idle || c->amount == NULL || c->product == NULL)
+        if (d < s->first)
             continue;
-        amount = fraction_add(s->passing, amount, c->amount);
-        product = fraction_add(s->passing, product, c->product);
-        out->less = out->less || c->less;
-        out->greater = out->greater || c->greater;
-        out->days++;
+        struct carried c = stream_day(s, stream, d);
+        if (c.idle || c.amount == NULL || c.product == NULL)
+            continue;
+        amount = fraction_add(s->passing, amount, c.amount);
+        product = fraction_add(s->passing, product, c.product);
+        out.less = out.less || c.less;
+        out.greater = out.greater || c.greater;
+        out.days++;
     }
-    if (out->days == 0) {
-        const char *why = today->no_amount ? today->no_amount : today->no_product;
-        out->no_amount = out->no_product =
-            why ? arena_print(s->arena, "%s, nor in the %d days to it", why, s->smooth) : NULL;
-        return;
-    }
-    const struct fraction *days = fraction_from_int(s->passing, out->days);
-    out->amount = fraction_divide(s->arena, amount, days);
-    out->product = fraction_divide(s->arena, product, days);
+    if (out.days == 0)
+        return nothing_in_window(s, &today);
+    const struct fraction *days = fraction_from_int(s->passing, out.days);
+    out.amount = fraction_divide(s->arena, amount, days);
+    out.product = fraction_divide(s->arena, product, days);
+    return out;
 }
 
-const struct carried *stream_smoothed(struct supplies *s, struct stream *stream, day_t day)
+struct carried stream_smoothed(struct supplies *s, struct stream *stream, day_t day)
 {
     if (s->smooth <= 1)
         return stream_day(s, stream, day);
-    assert(day >= s->first && day <= s->last);
-    struct carried *c = &stream->smoothed[day - s->first];
+    struct carried *c = slot(s, &stream->smoothed, day);
     if (!c->known)
-        work_window(s, stream, day, c);
-    return c;
+        *c = work_window(s, stream, day);
+    return *c;
 }

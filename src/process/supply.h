@@ -15,7 +15,8 @@ struct cell {
 struct series {
     int point, parameter;
     const struct unit *unit;
-    struct cell *cell; /* by day from supplies.first */
+    struct cell *cell;     /* by day from supplies.first */
+    struct stream *stream; /* of this reading alone, once asked for */
     struct series *next;
 };
 
@@ -26,6 +27,7 @@ struct supplies {
     day_t first, last; /* the days asked for and those that smoothing reaches back to */
     int smooth;
     struct series *series;
+    const struct fraction *zero;
 };
 
 /* A part of a stream: an amount (a reading, a number, a basin's measure while it is in service, or
@@ -52,20 +54,20 @@ struct carried {
 struct stream {
     struct part *part;
     size_t parts, room;
-    struct carried *daily, *smoothed; /* by day from supplies.first */
+    struct carried *daily, *smoothed; /* by day from supplies.first, where it pays to keep them */
 };
 
 /* NULL when the frame holds no reading of the column. `unit`: NULL for the parameter's own. */
-const struct series *series_of(struct supplies *s, int point, int parameter,
-                               const struct unit *unit);
+struct series *series_of(struct supplies *s, int point, int parameter, const struct unit *unit);
 const struct cell *series_cell(const struct supplies *s, const struct series *series, day_t day);
 
 struct stream *stream_new(struct supplies *s);
 void stream_add(struct supplies *s, struct stream *stream, struct part part);
-/* Streams are worked when first asked for. */
-const struct carried *stream_day(struct supplies *s, struct stream *stream, day_t day);
+/* The stream of one reading alone; one for all who ask. */
+struct stream *stream_of(struct supplies *s, struct series *series);
+struct carried stream_day(struct supplies *s, struct stream *stream, day_t day);
 /* The mean over the days of the window that ends on `day` and that have what is needed. */
-const struct carried *stream_smoothed(struct supplies *s, struct stream *stream, day_t day);
+struct carried stream_smoothed(struct supplies *s, struct stream *stream, day_t day);
 
 /* Drops what was worked in passing once it has grown. Results must have been copied. */
 void supplies_tidy(struct supplies *s);

@@ -23,7 +23,7 @@ struct table {
     struct lines lines;
     const struct process_options *options;
     struct process_figure *figures;
-    size_t count, room;
+    size_t count;
 };
 
 /* ---- one figure of one day ---- */
@@ -66,19 +66,19 @@ static const struct fraction *input_number(struct table *t, const struct line *l
                                            struct day_figure *out)
 {
     struct arena *a = t->s.passing;
-    const struct carried *c = line->smoothed ? stream_smoothed(&t->s, in->stream, day)
-                                             : stream_day(&t->s, in->stream, day);
-    if (c->idle)
+    struct carried c = line->smoothed ? stream_smoothed(&t->s, in->stream, day)
+                                      : stream_day(&t->s, in->stream, day);
+    if (c.idle)
         out->absent = true;
-    const struct fraction *x = in->side == AMOUNT ? c->amount : strength(a, c);
+    const struct fraction *x = in->side == AMOUNT ? c.amount : strength(a, &c);
     if (x == NULL) {
-        out->note = in->side == AMOUNT ? c->no_amount : c->no_product;
+        out->note = in->side == AMOUNT ? c.no_amount : c.no_product;
         return NULL;
     }
-    out->less = out->less || c->less;
-    out->greater = out->greater || c->greater;
-    if (c->days > 0 && (out->fewest == 0 || c->days < out->fewest))
-        out->fewest = c->days;
+    out->less = out->less || c.less;
+    out->greater = out->greater || c.greater;
+    if (c.days > 0 && (out->fewest == 0 || c.days < out->fewest))
+        out->fewest = c.days;
     if (in->shared) {
         out->split = running(t->s.plant, line->kind, day);
         assert(out->split > 0);
@@ -163,7 +163,7 @@ static const char *value_note(struct table *t, const struct line *line, const st
 static struct process_figure *figure_new(struct table *t, const struct line *line, day_t from,
                                          day_t to)
 {
-    struct process_figure *f = arena_push(t->s.arena, &t->figures, &t->count, &t->room, sizeof *f);
+    struct process_figure *f = &t->figures[t->count++];
     f->from = from;
     f->to = to;
     f->name = line->name;
@@ -311,9 +311,19 @@ static void sort_lines(struct lines *lines)
         qsort(lines->line, lines->count, sizeof *lines->line, by_order);
 }
 
+static size_t step_count(const struct table *t)
+{
+    size_t steps = 0;
+    for (day_t day = t->options->from; day <= t->options->to; day = step_last(t, day) + 1)
+        steps++;
+    return steps;
+}
+
+/* Room for every line in every step is taken at once: growing would leave copies behind. */
 static void work_all(struct table *t)
 {
     const struct process_options *o = t->options;
+    t->figures = arena_alloc(t->s.arena, step_count(t) * t->lines.count * sizeof *t->figures);
     for (day_t from = o->from, to; from <= o->to; from = to + 1) {
         to = step_last(t, from);
         if (to > o->to)
@@ -343,6 +353,7 @@ enum status process_table(struct arena *a, const struct frame *frame,
     t.s = (struct supplies){.arena = a,
                             .passing = arena_new(),
                             .frame = frame,
+                            .zero = fraction_from_int(a, 0),
                             .plant = frame_plant(frame),
                             .first = o->from - (o->smooth - 1),
                             .last = o->to,

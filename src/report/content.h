@@ -6,7 +6,8 @@
 #include "report/report.h"
 #include "report/words.h"
 
-/* ---- limits in words (limit_words.c) ---------------------------------------------------------- */
+/* ---- limits in words (limit_words.c) ----------------------------------------------------------
+ */
 
 /* "TSS load": the parameter as written, and the basis where it is a load or a removal. */
 const char *limit_what(struct arena *a, const struct limit *l);
@@ -53,7 +54,8 @@ const char *shortfall_line(struct arena *a, const struct permit_row *row);
 /* The highest weekly average of each limit that has several weeks. */
 void week_sentences(struct arena *a, const struct permit_month *m, struct sentences *out);
 
-/* ---- the permit page (permit_page.c) ---------------------------------------------------------- */
+/* ---- the permit page (permit_page.c) ----------------------------------------------------------
+ */
 
 void permit_title(struct page *p, const struct plant *plant, const struct permit_month *m);
 void permit_blocks(struct page *p, const struct plant *plant, const struct permit_month *m);
@@ -62,16 +64,18 @@ struct table *findings_table(struct arena *a, const struct permit_month *m);
 /* Every row, for the workbook: figures as numbers, dates as dates. */
 struct table *limits_table(struct arena *a, const struct permit_month *m);
 
-/* ---- daily values (daily.c) -------------------------------------------------------------------- */
+/* ---- daily values (daily.c) --------------------------------------------------------------------
+ */
 
 enum { DAYS_MOST = 31 };
 
 struct daily_column {
     int point, parameter;
-    const char *name;             /* "EFF BOD5" */
-    const char *title;            /* "EFF BOD5 mg/L" */
-    const char *value[DAYS_MOST]; /* as printed; "" where there is none; a code's letter for codes */
-    bool beyond[DAYS_MOST];       /* beyond a daily or instantaneous limit in force on the day */
+    const char *name;  /* "EFF BOD5" */
+    const char *title; /* "EFF BOD5 mg/L" */
+    const char
+        *value[DAYS_MOST];  /* as printed; "" where there is none; a code's letter for codes */
+    bool beyond[DAYS_MOST]; /* beyond a daily or instantaneous limit in force on the day */
     const char *mean, *least, *most, *days; /* below; "" where it has no meaning */
     bool geometric;
 };
@@ -90,7 +94,8 @@ void daily_make(struct arena *a, const struct month_input *in, struct daily *out
  * beyond a limit get a star; for a workbook a column in words. */
 struct table *daily_table(struct arena *a, const struct daily *d, bool paper);
 
-/* ---- the other parts (month_parts.c) ------------------------------------------------------------ */
+/* ---- the other parts (month_parts.c) ------------------------------------------------------------
+ */
 
 struct table *aside_table(struct arena *a, const struct month_input *in);
 /* On paper the day of a correction is enough. */

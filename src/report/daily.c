@@ -21,7 +21,8 @@ static bool is_ph(const struct parameter *p)
     return text_equal(p->unit->kind, "ph");
 }
 
-/* ---- values beyond a limit --------------------------------------------------------------------- */
+/* ---- values beyond a limit ---------------------------------------------------------------------
+ */
 
 /* R12: the exact value rounded to the limit's decimals, or as it is. */
 static bool is_beyond(struct arena *a, const struct limit *l, const struct fraction *value)
@@ -49,8 +50,8 @@ static bool is_beyond(struct arena *a, const struct limit *l, const struct fract
 static bool judges_days(const struct limit *l, int point, int parameter)
 {
     bool daily = l->statistic == STAT_DAILY || l->statistic == STAT_INSTANTANEOUS;
-    bool values = l->basis == BASIS_CONCENTRATION || l->basis == BASIS_FLOW ||
-                  l->basis == BASIS_COUNT;
+    bool values =
+        l->basis == BASIS_CONCENTRATION || l->basis == BASIS_FLOW || l->basis == BASIS_COUNT;
     return daily && values && l->limit.set && l->bound != BOUND_TARGET && l->points == 1 &&
            l->parameters == 1 && l->point[0] == point && l->parameter[0] == parameter;
 }
@@ -88,7 +89,8 @@ static bool any_beyond(struct arena *a, const struct month_input *in, int point,
     return false;
 }
 
-/* ---- below the days ------------------------------------------------------------------------------ */
+/* ---- below the days
+ * ------------------------------------------------------------------------------ */
 
 /* What is gathered of a column on the way down. */
 struct gathered {
@@ -198,7 +200,8 @@ static void summarise(struct arena *a, const struct month_input *in, struct dail
     c->mean = of_row != NULL ? of_row : mean_text(a, p, g);
 }
 
-/* ---- the columns ----------------------------------------------------------------------------------- */
+/* ---- the columns
+ * ----------------------------------------------------------------------------------- */
 
 /* The letter of the day's first no-data code, where no value stands. */
 static const char *code_letter(struct arena *a, const struct frame *frame, int point, int parameter,
@@ -228,8 +231,8 @@ static void fill_day(struct arena *a, const struct month_input *in, struct daily
     int i = day - d->first;
     struct day_value v;
     frame_day(in->frame, c->point, c->parameter, day, &p->rules, NULL, &v);
-    c->value[i] = permit_day_text(a, in->frame, c->point, c->parameter, day, &p->rules,
-                                  decimals_of(p));
+    c->value[i] =
+        permit_day_text(a, in->frame, c->point, c->parameter, day, &p->rules, decimals_of(p));
     if (v.state == DAY_BROKEN) {
         c->value[i] = "?";
         note_broken(a, d, c, day, v.why != NULL ? v.why : "");
@@ -244,7 +247,8 @@ static void fill_day(struct arena *a, const struct month_input *in, struct daily
         gather(a, &p->rules, day, &v.amount, g);
 }
 
-static bool has_readings(const struct frame *frame, int point, int parameter, day_t first, day_t last)
+static bool has_readings(const struct frame *frame, int point, int parameter, day_t first,
+                         day_t last)
 {
     if (!frame_has(frame, point, parameter))
         return false;
@@ -287,7 +291,8 @@ void daily_make(struct arena *a, const struct month_input *in, struct daily *out
                 add_column(a, in, out, (int)point, (int)parameter);
 }
 
-/* ---- as a table ------------------------------------------------------------------------------------ */
+/* ---- as a table
+ * ------------------------------------------------------------------------------------ */
 
 /* A value as the workbook wants it: a number where it is one. */
 static struct cell value_cell(const char *value)
@@ -331,8 +336,8 @@ static void day_row(struct table *t, const struct daily *d, day_t day, bool pape
             text_print(&beyond, "%s%s", beyond.length > 0 ? "; " : "", column->name);
     }
     if (!paper && beyond.length > 0)
-        c[d->columns + 1] = cell_flagged(
-            cell_text(SAY(a, BEYOND_DAY, [PLACE_NAMES] = beyond.at)), FLAG_BAD);
+        c[d->columns + 1] =
+            cell_flagged(cell_text(SAY(a, BEYOND_DAY, [PLACE_NAMES] = beyond.at)), FLAG_BAD);
     else if (!paper)
         c[d->columns + 1].flag = light;
     text_free(&beyond);

@@ -205,9 +205,9 @@ static void count_lines(const struct layout *l, const int *cell_width, int *cell
 {
     const struct table *t = l->table;
     for (size_t r = 0; r < t->rows; r++)
-        cell_lines[r * t->columns + at] = lines_at(l->text[r * t->columns + at],
-                                                   cell_width[r * t->columns + at],
-                                                   larger(1, l->column[at].width));
+        cell_lines[r * t->columns + at] =
+            lines_at(l->text[r * t->columns + at], cell_width[r * t->columns + at],
+                     larger(1, l->column[at].width));
 }
 
 /* Narrows texts a column at a time, there where it makes the fewest rows taller; of equals the

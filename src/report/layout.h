@@ -28,8 +28,8 @@ struct layout {
  * high rank are left out, and last of all words are broken. Numbers never are. */
 void layout_make(struct arena *a, const struct table *t, int most, struct layout *out);
 
-/* Cuts a table that is too wide into several that fit, each beginning with the first `fixed` columns.
- * Returns how many. */
+/* Cuts a table that is too wide into several that fit, each beginning with the first `fixed`
+ * columns. Returns how many. */
 size_t layout_split(struct arena *a, const struct table *t, size_t fixed, int most,
                     struct table ***out);
 

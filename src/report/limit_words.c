@@ -106,8 +106,8 @@ const char *limit_bound(struct arena *a, const struct limit *l, bool unit)
         bound = SAY(a, ALL_BUT_TABLE, [PLACE_BOUND] = bound);
     if (l->ceiling.set) {
         decimal_write(l->ceiling.value, number);
-        bound = SAY(a, NEVER_BEYOND, [PLACE_BOUND] = bound,
-                    [PLACE_LIMIT] = with_unit(a, number, suffix));
+        bound = SAY(
+            a, NEVER_BEYOND, [PLACE_BOUND] = bound, [PLACE_LIMIT] = with_unit(a, number, suffix));
     }
     return bound;
 }
@@ -229,8 +229,9 @@ const char *month_title(struct arena *a, day_t month)
     int number = 0;
     int date = 0;
     day_split(month, &year, &number, &date);
-    return SAY(a, MONTH_TITLE, [PLACE_MONTH] = month_name(number),
-               [PLACE_YEAR] = arena_print(a, "%d", year));
+    return SAY(
+        a,
+        MONTH_TITLE, [PLACE_MONTH] = month_name(number), [PLACE_YEAR] = arena_print(a, "%d", year));
 }
 
 const char *month_headline(struct arena *a, const struct permit_month *m)
@@ -303,8 +304,8 @@ bool said_already(const struct sentences *s, const char *sentence)
 
 const char *title_line(struct arena *a, const struct plant *plant, const struct permit_month *m)
 {
-    return SAY(a, PAGE_TITLE, [PLACE_PLANT] = plant->name,
-               [PLACE_MONTH] = month_title(a, m->month));
+    return SAY(a,
+               PAGE_TITLE, [PLACE_PLANT] = plant->name, [PLACE_MONTH] = month_title(a, m->month));
 }
 
 const char *permit_line(struct arena *a, const struct plant *plant, const struct permit_month *m)
@@ -343,7 +344,8 @@ void week_sentences(struct arena *a, const struct permit_month *m, struct senten
                                      [PLACE_FIGURE] = row_figure(a, row),
                                      [PLACE_FROM] = iso_day(a, row->from),
                                      [PLACE_TO] = iso_day(a, row->to)};
-        say(a, out, words_fill(a, is_lower_bound(row->limit) ? WORD_LOWEST_WEEK : WORD_HIGHEST_WEEK,
-                               value));
+        say(a, out,
+            words_fill(a, is_lower_bound(row->limit) ? WORD_LOWEST_WEEK : WORD_HIGHEST_WEEK,
+                       value));
     }
 }

@@ -24,11 +24,19 @@ static struct cell date_cell(const char *text)
     return c;
 }
 
-/* ---- rows set aside, corrections, codes ----------------------------------------------------------- */
+/* Readings after the day the month is judged on are ignored. */
+static day_t last_day(const struct month_input *in)
+{
+    day_t last = month_last(in->permit->month);
+    return in->permit->on < last ? in->permit->on : last;
+}
+
+/* ---- rows set aside, corrections, codes
+ * ----------------------------------------------------------- */
 
 struct table *aside_table(struct arena *a, const struct month_input *in)
 {
-    static const enum word titles[] = {WORD_COLUMN_DATE,  WORD_COLUMN_POINT, WORD_COLUMN_PARAMETER,
+    static const enum word titles[] = {WORD_COLUMN_DATE,  WORD_COLUMN_POINT,  WORD_COLUMN_PARAMETER,
                                        WORD_COLUMN_VALUE, WORD_COLUMN_REASON, WORD_COLUMN_TODO,
                                        WORD_COLUMN_WHERE};
     struct table *t = table_new(a, "", columns_of(a, titles, NELEM(titles)), NELEM(titles));
@@ -95,10 +103,10 @@ static void add_codes(struct table *t, const struct month_input *in, int point, 
 
 struct table *code_table(struct arena *a, const struct month_input *in)
 {
-    static const enum word titles[] = {WORD_COLUMN_DATE, WORD_COLUMN_POINT, WORD_COLUMN_PARAMETER,
+    static const enum word titles[] = {WORD_COLUMN_DATE, WORD_COLUMN_POINT,   WORD_COLUMN_PARAMETER,
                                        WORD_COLUMN_CODE, WORD_COLUMN_MEANING, WORD_COLUMN_NOTE};
     struct table *t = table_new(a, "", columns_of(a, titles, NELEM(titles)), NELEM(titles));
-    for (day_t day = in->permit->month; day <= month_last(in->permit->month); day++)
+    for (day_t day = in->permit->month; day <= last_day(in); day++)
         for (size_t point = 0; point < in->plant->point_count; point++)
             for (size_t parameter = 0; parameter < in->plant->parameter_count; parameter++)
                 if (frame_has(in->frame, (int)point, (int)parameter))
@@ -106,7 +114,8 @@ struct table *code_table(struct arena *a, const struct month_input *in)
     return t;
 }
 
-/* ---- process figures ------------------------------------------------------------------------------- */
+/* ---- process figures
+ * ------------------------------------------------------------------------------- */
 
 /* For steering the plant, not for the regulator: four significant figures, whole units kept. */
 static const char *process_number(struct arena *a, const struct fraction *value)
@@ -121,9 +130,9 @@ static const char *process_number(struct arena *a, const struct fraction *value)
 struct table *process_summary(struct arena *a, const struct month_input *in)
 {
     static const enum word titles[] = {
-        WORD_COLUMN_PERIOD, WORD_COLUMN_NAME, WORD_COLUMN_AT,  WORD_COLUMN_PARAMETER,
-        WORD_COLUMN_MEAN,   WORD_COLUMN_LEAST, WORD_COLUMN_MOST, WORD_COLUMN_UNIT,
-        WORD_COLUMN_DAYS,
+        WORD_COLUMN_PERIOD,    WORD_COLUMN_NAME, WORD_COLUMN_AT,
+        WORD_COLUMN_PARAMETER, WORD_COLUMN_MEAN, WORD_COLUMN_LEAST,
+        WORD_COLUMN_MOST,      WORD_COLUMN_UNIT, WORD_COLUMN_DAYS,
     };
     struct column *columns = columns_of(a, titles, NELEM(titles));
     for (size_t i = 4; i < 7; i++)
@@ -172,10 +181,10 @@ static size_t distinct_figures(const struct month_input *in, size_t *which, size
 
 static const char *figure_title(struct arena *a, const struct process_figure *f)
 {
-    const char *what = f->parameter[0] == '\0' ? f->at
-                                               : arena_print(a, "%s %s", f->at, f->parameter);
-    return SAY(a, PROCESS_TITLE, [PLACE_NAME] = f->name, [PLACE_WHAT] = what,
-               [PLACE_UNIT] = f->unit);
+    const char *what =
+        f->parameter[0] == '\0' ? f->at : arena_print(a, "%s %s", f->at, f->parameter);
+    return SAY(a,
+               PROCESS_TITLE, [PLACE_NAME] = f->name, [PLACE_WHAT] = what, [PLACE_UNIT] = f->unit);
 }
 
 /* The month's mean and extremes under the days of a figure. */
@@ -212,8 +221,8 @@ struct table *process_by_day(struct arena *a, const struct month_input *in)
     struct column *columns = arena_alloc(a, (figures + 1) * sizeof *columns);
     columns[0] = (struct column){.title = word(WORD_COLUMN_DAY)};
     for (size_t i = 0; i < figures; i++)
-        columns[i + 1] = (struct column){.title = figure_title(a, &in->process[first[i]]),
-                                         .align = ALIGN_RIGHT};
+        columns[i + 1] =
+            (struct column){.title = figure_title(a, &in->process[first[i]]), .align = ALIGN_RIGHT};
     struct table *t = table_new(a, "", columns, figures + 1);
     day_t last = month_last(in->permit->month);
     for (day_t day = in->permit->month; day <= last; day++)
@@ -229,7 +238,8 @@ struct table *process_by_day(struct arena *a, const struct month_input *in)
     return t;
 }
 
-/* ---- rules ------------------------------------------------------------------------------------------- */
+/* ---- rules
+ * ------------------------------------------------------------------------------------------- */
 
 void rules_sentences(struct arena *a, const struct month_input *in, struct sentences *out)
 {
@@ -280,7 +290,8 @@ void rules_exceptions(struct arena *a, const struct month_input *in, struct sent
     }
 }
 
-/* ---- flows, loads, methods ---------------------------------------------------------------------------- */
+/* ---- flows, loads, methods
+ * ---------------------------------------------------------------------------- */
 
 static void say_flow(struct arena *a, const struct month_input *in, const struct limit *l,
                      struct sentences *out)
@@ -328,15 +339,15 @@ void flow_sentences(struct arena *a, const struct month_input *in, struct senten
 static void say_methods(struct arena *a, const struct month_input *in, int point, int parameter,
                         struct sentences *out)
 {
-    for (day_t day = in->permit->month; day <= month_last(in->permit->month); day++) {
+    for (day_t day = in->permit->month; day <= last_day(in); day++) {
         size_t count = 0;
         const struct reading *const *r = frame_readings(in->frame, point, parameter, day, &count);
         for (size_t i = 0; i < count; i++) {
             if (r[i]->detail == NULL || r[i]->detail->method[0] == '\0')
                 continue;
-            const char *line = SAY(a, METHOD_LINE,
-                                   [PLACE_PARAMETER] = in->plant->parameters[parameter].id,
-                                   [PLACE_METHOD] = r[i]->detail->method);
+            const char *line =
+                SAY(a, METHOD_LINE, [PLACE_PARAMETER] = in->plant->parameters[parameter].id,
+                    [PLACE_METHOD] = r[i]->detail->method);
             if (!said_already(out, line))
                 say(a, out, line);
         }
@@ -351,7 +362,8 @@ void method_sentences(struct arena *a, const struct month_input *in, struct sent
                 say_methods(a, in, (int)point, (int)parameter, out);
 }
 
-/* ---- cautions and the foot ------------------------------------------------------------------------------ */
+/* ---- cautions and the foot
+ * ------------------------------------------------------------------------------ */
 
 void caution_sentences(struct arena *a, struct sentences *out)
 {

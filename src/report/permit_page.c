@@ -1,22 +1,31 @@
-/* permit_page: the permit summary of a month: the rows for programs, the page for people (worst news
- * first), and its tables for the workbook. */
+/* permit_page: the permit summary of a month: the rows for programs, the page for people (worst
+ * news first), and its tables for the workbook. */
 #include "report/content.h"
 
 #include "base/poison.h"
 
-/* ---- for programs ------------------------------------------------------------------------------ */
+/* ---- for programs ------------------------------------------------------------------------------
+ */
 
 struct table *report_permit_table(struct arena *a, const struct permit_month *m)
 {
     static const struct column columns[] = {
-        {.key = "outfall", .title = "outfall"},   {.key = "point", .title = "point"},
-        {.key = "parameter", .title = "parameter"}, {.key = "basis", .title = "basis"},
-        {.key = "statistic", .title = "statistic"}, {.key = "from", .title = "from"},
-        {.key = "to", .title = "to"},             {.key = "on", .title = "on"},
-        {.key = "figure", .title = "figure"},     {.key = "unit", .title = "unit"},
-        {.key = "bound", .title = "bound"},       {.key = "limit", .title = "limit"},
-        {.key = "verdict", .title = "verdict"},   {.key = "times", .title = "times"},
-        {.key = "samples", .title = "samples"},   {.key = "required", .title = "required"},
+        {.key = "outfall", .title = "outfall"},
+        {.key = "point", .title = "point"},
+        {.key = "parameter", .title = "parameter"},
+        {.key = "basis", .title = "basis"},
+        {.key = "statistic", .title = "statistic"},
+        {.key = "from", .title = "from"},
+        {.key = "to", .title = "to"},
+        {.key = "on", .title = "on"},
+        {.key = "figure", .title = "figure"},
+        {.key = "unit", .title = "unit"},
+        {.key = "bound", .title = "bound"},
+        {.key = "limit", .title = "limit"},
+        {.key = "verdict", .title = "verdict"},
+        {.key = "times", .title = "times"},
+        {.key = "samples", .title = "samples"},
+        {.key = "required", .title = "required"},
         {.key = "note", .title = "note"},
     };
     struct table *t = table_new(a, "", columns, NELEM(columns));
@@ -49,7 +58,8 @@ struct table *report_permit_table(struct arena *a, const struct permit_month *m)
     return t;
 }
 
-/* ---- for people -------------------------------------------------------------------------------- */
+/* ---- for people --------------------------------------------------------------------------------
+ */
 
 static bool is_exceeded(const struct permit_row *row, day_t on)
 {
@@ -84,8 +94,8 @@ static struct table *beyond_table(struct page *p, const struct permit_month *m, 
             continue;
         struct cell *c = table_row(t);
         c[0] = cell_text(row->limit->point_text);
-        c[1] = cell_text(arena_print(a, "%s %s", limit_what(a, row->limit),
-                                     limit_statistic(a, row->limit)));
+        c[1] = cell_text(
+            arena_print(a, "%s %s", limit_what(a, row->limit), limit_statistic(a, row->limit)));
         c[2] = cell_text(row_when(a, row));
         c[3] = cell_flagged(cell_text(row_figure(a, row)), flag);
         c[4] = cell_text(limit_bound(a, row->limit, true));
@@ -124,10 +134,9 @@ static void shortfall_block(struct page *p, const struct permit_month *m)
 /* Every row at one point, in the order of the limits. */
 static struct table *point_table(struct page *p, const struct permit_month *m, const char *point)
 {
-    static const enum word titles[] = {WORD_COLUMN_PARAMETER, WORD_COLUMN_STATISTIC,
-                                       WORD_COLUMN_PERIOD,    WORD_COLUMN_FIGURE,
-                                       WORD_COLUMN_LIMIT,     WORD_COLUMN_SAMPLES,
-                                       WORD_COLUMN_VERDICT};
+    static const enum word titles[] = {
+        WORD_COLUMN_PARAMETER, WORD_COLUMN_STATISTIC, WORD_COLUMN_PERIOD, WORD_COLUMN_FIGURE,
+        WORD_COLUMN_LIMIT,     WORD_COLUMN_SAMPLES,   WORD_COLUMN_VERDICT};
     struct arena *a = p->arena;
     struct column *columns = arena_alloc(a, NELEM(titles) * sizeof *columns);
     for (size_t i = 0; i < NELEM(titles); i++)
@@ -157,8 +166,8 @@ static const char *point_title(struct arena *a, const struct plant *plant, const
 {
     const char *title = l->point_text;
     if (l->points == 1 && plant->points[l->point[0]].name[0] != '\0')
-        title = SAY(a, POINT_NAME, [PLACE_POINT] = title,
-                    [PLACE_NAME] = plant->points[l->point[0]].name);
+        title = SAY(
+            a, POINT_NAME, [PLACE_POINT] = title, [PLACE_NAME] = plant->points[l->point[0]].name);
     if (l->outfall[0] == '\0')
         return title;
     return arena_print(a, "%s, %s", title, SAY(a, TITLE_OUTFALLS, [PLACE_OUTFALL] = l->outfall));
@@ -246,7 +255,8 @@ struct page *report_permit_page(struct arena *a, const struct plant *plant,
     return p;
 }
 
-/* ---- for the workbook --------------------------------------------------------------------------- */
+/* ---- for the workbook ---------------------------------------------------------------------------
+ */
 
 /* A figure that is a number goes as one; one with a sign is text. */
 static struct cell figure_cell(const char *figure)
@@ -267,9 +277,8 @@ static struct table *sheet_table(struct arena *a, const enum word *titles, size_
         bool number = titles[i] == WORD_COLUMN_FIGURE || titles[i] == WORD_COLUMN_NUMBER ||
                       titles[i] == WORD_COLUMN_TIMES || titles[i] == WORD_COLUMN_TAKEN ||
                       titles[i] == WORD_COLUMN_REQUIRED;
-        columns[i] = (struct column){.title = word(titles[i]),
-                                     .align = number ? ALIGN_RIGHT : ALIGN_LEFT,
-                                     .wraps = !number};
+        columns[i] = (struct column){
+            .title = word(titles[i]), .align = number ? ALIGN_RIGHT : ALIGN_LEFT, .wraps = !number};
     }
     return table_new(a, "", columns, count);
 }
@@ -277,10 +286,10 @@ static struct table *sheet_table(struct arena *a, const enum word *titles, size_
 struct table *limits_table(struct arena *a, const struct permit_month *m)
 {
     static const enum word titles[] = {
-        WORD_COLUMN_OUTFALL, WORD_COLUMN_POINT,  WORD_COLUMN_PARAMETER, WORD_COLUMN_STATISTIC,
-        WORD_COLUMN_FROM,    WORD_COLUMN_TO,     WORD_COLUMN_ON,        WORD_COLUMN_FIGURE,
-        WORD_COLUMN_UNIT,    WORD_COLUMN_LIMIT,  WORD_COLUMN_NUMBER,    WORD_COLUMN_VERDICT,
-        WORD_COLUMN_TIMES,   WORD_COLUMN_TAKEN,  WORD_COLUMN_REQUIRED,  WORD_COLUMN_SAMPLE,
+        WORD_COLUMN_OUTFALL, WORD_COLUMN_POINT, WORD_COLUMN_PARAMETER, WORD_COLUMN_STATISTIC,
+        WORD_COLUMN_FROM,    WORD_COLUMN_TO,    WORD_COLUMN_ON,        WORD_COLUMN_FIGURE,
+        WORD_COLUMN_UNIT,    WORD_COLUMN_LIMIT, WORD_COLUMN_NUMBER,    WORD_COLUMN_VERDICT,
+        WORD_COLUMN_TIMES,   WORD_COLUMN_TAKEN, WORD_COLUMN_REQUIRED,  WORD_COLUMN_SAMPLE,
         WORD_COLUMN_NOTE,
     };
     struct table *t = sheet_table(a, titles, NELEM(titles));
@@ -340,10 +349,10 @@ static void add_finding(struct table *t, const struct permit_month *m, size_t i,
 struct table *findings_table(struct arena *a, const struct permit_month *m)
 {
     static const enum word titles[] = {
-        WORD_COLUMN_FINDING, WORD_COLUMN_OUTFALL, WORD_COLUMN_POINT,    WORD_COLUMN_PARAMETER,
-        WORD_COLUMN_STATISTIC, WORD_COLUMN_FROM,  WORD_COLUMN_TO,       WORD_COLUMN_ON,
-        WORD_COLUMN_FIGURE,  WORD_COLUMN_UNIT,    WORD_COLUMN_LIMIT,    WORD_COLUMN_TIMES,
-        WORD_COLUMN_TAKEN,   WORD_COLUMN_REQUIRED, WORD_COLUMN_NOTE,
+        WORD_COLUMN_FINDING,   WORD_COLUMN_OUTFALL,  WORD_COLUMN_POINT, WORD_COLUMN_PARAMETER,
+        WORD_COLUMN_STATISTIC, WORD_COLUMN_FROM,     WORD_COLUMN_TO,    WORD_COLUMN_ON,
+        WORD_COLUMN_FIGURE,    WORD_COLUMN_UNIT,     WORD_COLUMN_LIMIT, WORD_COLUMN_TIMES,
+        WORD_COLUMN_TAKEN,     WORD_COLUMN_REQUIRED, WORD_COLUMN_NOTE,
     };
     struct table *t = sheet_table(a, titles, NELEM(titles));
     for (size_t i = 0; i < m->count; i++)

@@ -115,7 +115,8 @@ struct month_input {
     const struct plant *plant;
     const struct frame *frame;
     const struct permit_month *permit;
-    const struct process_figure *process; /* of the days of the month, for the workbook; may be none */
+    const struct process_figure
+        *process; /* of the days of the month, for the workbook; may be none */
     size_t process_count;
     /* The same by month (or week), for the page and below the days of the workbook; may be none. */
     const struct process_figure *process_month;

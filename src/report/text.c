@@ -17,8 +17,8 @@ struct writer {
 
 /* Blue and orange differ for eyes that do not tell red from green. */
 static const char *const colours[FLAGS] = {
-    [FLAG_NONE] = "",           [FLAG_BAD] = "\x1b[1;38;5;208m", [FLAG_SHORT] = "\x1b[38;5;208m",
-    [FLAG_WATCH] = "\x1b[1m",   [FLAG_GOOD] = "\x1b[38;5;33m",   [FLAG_LIGHT] = "\x1b[2m",
+    [FLAG_NONE] = "",         [FLAG_BAD] = "\x1b[1;38;5;208m", [FLAG_SHORT] = "\x1b[38;5;208m",
+    [FLAG_WATCH] = "\x1b[1m", [FLAG_GOOD] = "\x1b[38;5;33m",   [FLAG_LIGHT] = "\x1b[2m",
 };
 
 static void spaces(struct text *line, int n)

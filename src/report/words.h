@@ -1,6 +1,6 @@
 /* words: every printed sentence of the reports, kept in reports/words.csv with named places, made
- * into one table at build time. An unknown name is a compile error, an unknown place in a sentence a
- * build error. Private to this room. */
+ * into one table at build time. An unknown name is a compile error, an unknown place in a sentence
+ * a build error. Private to this room. */
 #ifndef WEIRBOOK_REPORT_WORDS_H
 #define WEIRBOOK_REPORT_WORDS_H
 

@@ -11,7 +11,8 @@
 
 #include "base/poison.h"
 
-/* ---- lines on sheets of text ------------------------------------------------------------------------- */
+/* ---- lines on sheets of text
+ * ------------------------------------------------------------------------- */
 
 /* Where the next line goes. */
 struct next_line {
@@ -37,15 +38,14 @@ static void lines_of(struct next_line *at, enum word heading, const struct sente
         line(at, s->at[i], (struct look){.kind = LOOK_TEXT, .wraps = true});
 }
 
-/* ---- sheets -------------------------------------------------------------------------------------------- */
+/* ---- sheets
+ * -------------------------------------------------------------------------------------------- */
 
 static const char *finding_line(struct arena *a, const struct permit_row *row)
 {
     const char *value[PLACES] = {
-        [PLACE_NAME] = limit_name(a, row->limit),
-        [PLACE_FIGURE] = row_figure(a, row),
-        [PLACE_LIMIT] = limit_bound(a, row->limit, true),
-        [PLACE_FROM] = row_when(a, row),
+        [PLACE_NAME] = limit_name(a, row->limit),          [PLACE_FIGURE] = row_figure(a, row),
+        [PLACE_LIMIT] = limit_bound(a, row->limit, true),  [PLACE_FROM] = row_when(a, row),
         [PLACE_COUNT] = arena_print(a, "%ld", row->times),
     };
     enum word said = !row->has_times   ? WORD_FINDING_BEYOND
@@ -200,7 +200,8 @@ static void all_sheets(struct sheets *s, const struct month_input *in)
     rules_sheet(s, in);
 }
 
-/* ---- the file -------------------------------------------------------------------------------------------- */
+/* ---- the file
+ * -------------------------------------------------------------------------------------------- */
 
 /* The library's properties are not const. Noon of the printed day is the time of making: without
  * one the library would take now. */

@@ -28,7 +28,8 @@ static void check(struct sheets *s, lxw_error error)
         s->error = (int)error;
 }
 
-/* ---- looks ------------------------------------------------------------------------------------------- */
+/* ---- looks
+ * ------------------------------------------------------------------------------------------- */
 
 /* Bold, a border and a pale fill show on paper without colour; the word stands beside them. */
 static void flag_look(lxw_format *f, enum flag flag)
@@ -88,7 +89,8 @@ static lxw_format *format_of(struct sheets *s, struct look look)
             l->right == look.right && l->wraps == look.wraps && l->indent == look.indent)
             return s->format[i].format;
     }
-    struct sheet_format *made = arena_push(s->arena, &s->format, &s->formats, &s->room, sizeof *made);
+    struct sheet_format *made =
+        arena_push(s->arena, &s->format, &s->formats, &s->room, sizeof *made);
     made->look = look;
     made->format = workbook_add_format(s->book);
     format_set_align(made->format, LXW_ALIGN_VERTICAL_TOP);
@@ -105,7 +107,8 @@ static lxw_format *format_of(struct sheets *s, struct look look)
     return made->format;
 }
 
-/* ---- cells ------------------------------------------------------------------------------------------- */
+/* ---- cells
+ * ------------------------------------------------------------------------------------------- */
 
 /* At most so many characters from the start of a text. */
 static const char *first_characters(struct arena *a, const char *text, size_t most)
@@ -180,7 +183,8 @@ static void write_cell(struct sheets *s, struct lxw_worksheet *sheet, uint32_t r
         sheet_text(s, sheet, row, column, c->text, look);
 }
 
-/* ---- sheets -------------------------------------------------------------------------------------------- */
+/* ---- sheets
+ * -------------------------------------------------------------------------------------------- */
 
 /* Text for a header or footer, where & starts a code. */
 static const char *print_text(struct arena *a, const char *text, size_t most)
@@ -214,9 +218,8 @@ struct lxw_worksheet *sheet_new(struct sheets *s, const char *name, bool landsca
     /* Every & may double: three such texts stay below the limit with room for the codes. */
     const char *head = arena_print(a, "&L%s&C%s&R%s", print_text(a, s->left, 50),
                                    print_text(a, s->middle, 40), print_text(a, name, 15));
-    const char *foot =
-        arena_print(a, "&L%s&C%s&R%s", print_text(a, s->foot_left, 40), word(WORD_PRINT_PAGE),
-                    print_text(a, s->foot_right, 40));
+    const char *foot = arena_print(a, "&L%s&C%s&R%s", print_text(a, s->foot_left, 40),
+                                   word(WORD_PRINT_PAGE), print_text(a, s->foot_right, 40));
     if (strlen(head) < PRINT_CHARACTERS_MOST)
         check(s, worksheet_set_header(sheet, head));
     if (strlen(foot) < PRINT_CHARACTERS_MOST)
@@ -244,8 +247,8 @@ void sheet_height(struct sheets *s, struct lxw_worksheet *sheet, uint32_t row, i
 {
     enum { LINES_MOST = 27 }; /* a row is 409 points at most */
     if (lines > 1)
-        check(s, worksheet_set_row(sheet, row, LINE_POINTS * (lines < LINES_MOST ? lines : LINES_MOST),
-                                   NULL));
+        check(s, worksheet_set_row(sheet, row,
+                                   LINE_POINTS * (lines < LINES_MOST ? lines : LINES_MOST), NULL));
 }
 
 void sheet_line(struct sheets *s, struct lxw_worksheet *sheet, uint32_t row, uint16_t column,

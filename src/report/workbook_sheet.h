@@ -1,5 +1,5 @@
-/* workbook_sheet: tables and lines onto the sheets of a workbook. Only workbook*.c see libxlsxwriter;
- * its types stand here by name alone. Private to this room. */
+/* workbook_sheet: tables and lines onto the sheets of a workbook. Only workbook*.c see
+ * libxlsxwriter; its types stand here by name alone. Private to this room. */
 #ifndef WEIRBOOK_REPORT_WORKBOOK_SHEET_H
 #define WEIRBOOK_REPORT_WORKBOOK_SHEET_H
 
@@ -17,8 +17,8 @@ struct sheets {
     int error;
     struct sheet_format *format;
     size_t formats, room;
-    bool metric;                     /* paper: A4, else US Letter */
-    const char *left, *middle;       /* printed at the head of each sheet */
+    bool metric;                        /* paper: A4, else US Letter */
+    const char *left, *middle;          /* printed at the head of each sheet */
     const char *foot_left, *foot_right; /* and at its foot, beside the page number */
 };
 
@@ -33,7 +33,8 @@ struct look {
 struct lxw_worksheet *sheet_new(struct sheets *s, const char *name, bool landscape);
 /* Writes the table from row 0 with its titles frozen and repeated in print; `fixed` columns stay at
  * the left. */
-void sheet_table(struct sheets *s, struct lxw_worksheet *sheet, const struct table *t, size_t fixed);
+void sheet_table(struct sheets *s, struct lxw_worksheet *sheet, const struct table *t,
+                 size_t fixed);
 /* One line of text in a column of a row. */
 void sheet_text(struct sheets *s, struct lxw_worksheet *sheet, uint32_t row, uint16_t column,
                 const char *text, struct look look);

@@ -1,8 +1,8 @@
 /* made: plants and frames for tests, from text. Readings are lines of
  *     POINT PARAMETER UNIT DAY=VALUE DAY=VALUE ...
  * DAY is a day of the month under test, a span of them (1..31) or a whole date; @HH:MM, #SAMPLE and
- * !VERSION may follow it. VALUE is 12.5, <2, >2420, DNQ0.4, DNQ, ND, TNTC, E12, code9 or C; (MDL,RL) may
- * follow it. */
+ * !VERSION may follow it. VALUE is 12.5, <2, >2420, DNQ0.4, DNQ, ND, TNTC, E12, code9 or C;
+ * (MDL,RL) may follow it. */
 #ifndef WEIRBOOK_TESTS_MADE_H
 #define WEIRBOOK_TESTS_MADE_H
 

@@ -1,5 +1,5 @@
-/* The day frame: what stays of the readings, what a day's readings become, registers, and days without
- * discharge. Where a rule has a published source it stands beside the check. */
+/* The day frame: what stays of the readings, what a day's readings become, registers, and days
+ * without discharge. Where a rule has a published source it stands beside the check. */
 #include <setjmp.h>
 #include <stdarg.h>
 #include <stddef.h>
@@ -17,8 +17,8 @@
 static const char *day_text(struct made *m, const struct frame *f, const char *point,
                             const char *parameter, int date, const char *unit)
 {
-    static const char *const states[] = {"empty",        "value",        "no discharge",
-                                         "missed",       "not required", "broken"};
+    static const char *const states[] = {"empty",  "value",        "no discharge",
+                                         "missed", "not required", "broken"};
     struct rules set = m->plant->parameters[plant_parameter(m->plant, parameter)].rules;
     struct day_value v;
     struct text t;
@@ -61,8 +61,8 @@ static void check_days(const struct day_case *c, size_t count)
         f = made_frame(m, m->month, month_last(m->month));
         got = day_text(m, f, c[i].point, c[i].parameter, 4, c[i].unit);
         if (!text_equal(got, c[i].expected))
-            fail_msg("%s\n%s\n%s: expected '%s', got '%s'", c[i].source, c[i].fields,
-                     c[i].readings, c[i].expected, got);
+            fail_msg("%s\n%s\n%s: expected '%s', got '%s'", c[i].source, c[i].fields, c[i].readings,
+                     c[i].expected, got);
         made_free(m);
     }
 }
@@ -276,8 +276,8 @@ static void days_without_a_value_say_what_is_missing(void **state)
 
         made_readings(m, cases[i].readings);
         f = made_frame(m, m->month, month_last(m->month));
-        frame_day(f, plant_point(m->plant, "EFF"), plant_parameter(m->plant, "BOD5"),
-                  m->month + 3, &m->plant->rules, NULL, &v);
+        frame_day(f, plant_point(m->plant, "EFF"), plant_parameter(m->plant, "BOD5"), m->month + 3,
+                  &m->plant->rules, NULL, &v);
         assert_int_equal(v.state, cases[i].state);
         assert_true(text_equal(v.why, cases[i].why));
         made_free(m);
@@ -318,7 +318,8 @@ static void a_code_c_or_a_flow_of_0_marks_the_day_and_a_flow_above_0_clears_it(v
     assert_true(frame_no_discharge(f, eff, m->month + 2));
     assert_false(frame_no_discharge(f, eff, m->month + 3)); /* it flowed: C is a missed sample */
     assert_true(frame_no_discharge(f, eff, m->month + 4));
-    assert_false(frame_no_discharge(f, eff, m->month + 5)); /* below what the meter shows is not 0 */
+    assert_false(
+        frame_no_discharge(f, eff, m->month + 5)); /* below what the meter shows is not 0 */
     assert_false(frame_no_discharge(f, plant_point(m->plant, "EF2"), m->month + 1));
     assert_string_equal(day_text(m, f, "EFF", "BOD5", 2, NULL), "no discharge");
     assert_string_equal(day_text(m, f, "EFF", "FLOW", 3, NULL), "no discharge 0");
@@ -348,12 +349,12 @@ static void the_flow_of_a_point_is_its_own_meter_then_the_rules(void **state)
     assert_true(frame_flow_of(f, ef2, &m->plant->rules, &point, &parameter));
     assert_int_equal(point, ef2);
     assert_int_equal(parameter, plant_parameter(m->plant, "GATE"));
-    assert_true(frame_flow_within(f, ef2, &m->plant->rules, m->month, m->month + 9, &point,
-                                  &parameter));
+    assert_true(
+        frame_flow_within(f, ef2, &m->plant->rules, m->month, m->month + 9, &point, &parameter));
     assert_int_equal(point, inf);
     m->plant->rules.word[RULE_FLOW] = -1;
-    assert_false(frame_flow_within(f, ef2, &m->plant->rules, m->month, m->month + 9, &point,
-                                   &parameter));
+    assert_false(
+        frame_flow_within(f, ef2, &m->plant->rules, m->month, m->month + 9, &point, &parameter));
     made_free(m);
 }
 
@@ -436,7 +437,7 @@ static void ten_years_of_a_hundred_series_stay_small(void **state)
     struct made *m = made_plant("2025-03", "", "", "");
     struct arena *a = arena_new();
     struct frame *f;
-    day_t first, last;
+    day_t first = 0, last = 0;
     size_t parameters = m->plant->parameter_count, added = 0, count;
     struct reading r = {.minute = -1, .sample = "", .text = "1.5", .file = "f", .value = {15, 1}};
 
@@ -461,7 +462,8 @@ static void ten_years_of_a_hundred_series_stay_small(void **state)
 static void every_code_and_word_is_there(void **state)
 {
     (void)state;
-    const char *codes = "C9ABQEDXGHMF71245IJKNSVW"; /* EPA, no-data indicators of the monitoring report form */
+    const char *codes =
+        "C9ABQEDXGHMF71245IJKNSVW"; /* EPA, no-data indicators of the monitoring report form */
 
     for (const char *c = codes; *c != '\0'; c++)
         assert_non_null(no_data_code(*c));

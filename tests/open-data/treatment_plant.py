@@ -19,7 +19,7 @@ def process():
     lines = ["name,at,parameter,formula,argument,source,unit"]
     for start, end, parameter in REMOVALS:
         for argument, point in (("influent", start), ("effluent", end)):
-            lines.append(f"stage-removal,{start}>{end},{parameter},percent-removal,{argument},{point} {parameter},%")
+            lines.append(f"stage-removal,{start}>{end},{parameter},percent-removal,{argument},{point} {parameter},")
     return "\n".join(lines) + "\n"
 
 

@@ -1,5 +1,5 @@
-/* Signs, digits and rounding: what is printed, and what is compared. R7, R10 to R16, R24, R27 to R32 and
- * R48 of weirbook-rules(7). */
+/* Signs, digits and rounding: what is printed, and what is compared. R7, R10 to R16, R24, R27 to
+ * R32 and R48 of weirbook-rules(7). */
 #include <setjmp.h>
 #include <stdarg.h>
 #include <stddef.h>
@@ -79,8 +79,7 @@ static void the_median_procedure_ranks_nondetects_then_dnq_then_values(void **st
          CU("monthly-average", "1.00"), "EFF CU ug/L 4=0.40 6=0.50 11=1.50",
          "03-01..03-31 0.80 met 3"},
         {"R28: a daily maximum compares the number", "2025-03", "nondetect,median",
-         CU("daily", "1.0"), "EFF CU ug/L 4=<2.0 6=0.4",
-         "03-01..03-31 @03-04 <2.0 exceeded x1 2"},
+         CU("daily", "1.0"), "EFF CU ug/L 4=<2.0 6=0.4", "03-01..03-31 @03-04 <2.0 exceeded x1 2"},
     };
 
     check_months(cases, NELEM(cases));
@@ -129,8 +128,7 @@ static void geometric_means_go_through_their_power(void **state)
         {"R16: a non-detect that zero makes 0 too", "2025-03", "nondetect,zero\nsign,never",
          ECOLI("monthly-geomean"), "EFF ECOLI MPN/100mL 3=<4 5=16", "03-01..03-31 4 met 2"},
         {"Iowa DNR: less-thans at their number", "2025-03", "nondetect,full",
-         ECOLI("monthly-geomean"), "EFF ECOLI MPN/100mL 3=<4 5=16 10=64",
-         "03-01..03-31 <16 met 3"},
+         ECOLI("monthly-geomean"), "EFF ECOLI MPN/100mL 3=<4 5=16 10=64", "03-01..03-31 <16 met 3"},
         {"R13, Colorado: all less-thans, less than the largest", "2025-03", "nondetect,zero",
          ECOLI("monthly-geomean"), "EFF ECOLI MPN/100mL 3=<2 5=<10", "03-01..03-31 <10 met 2"},
         {"New York DEC: a greater-than is carried; >2420, 10, 10, 10", "2025-03", "",
@@ -172,12 +170,13 @@ static void worst_values_and_their_ties(void **state)
         {"and exceeded under full; common practice, no source", "2025-03", "nondetect,full",
          "001,EFF,TRC,concentration,daily,max,0.02,mg/L", "EFF TRC mg/L 4=<0.03 5=0.022",
          "03-01..03-31 @03-04 <0.03 exceeded x1 2"},
-        {"R15, New York DEC: > wins over <", "2025-03", "nondetect,full", CU("monthly-average", "9"),
-         "EFF CU ug/L 4=<2 11=>8", "03-01..03-31 >5 met 2"},
+        {"R15, New York DEC: > wins over <", "2025-03", "nondetect,full",
+         CU("monthly-average", "9"), "EFF CU ug/L 4=<2 11=>8", "03-01..03-31 >5 met 2"},
         {"R15, New York DEC: but not for a minimum", "2025-03", "nondetect,full",
          "001,EFF,CU,concentration,monthly-average,min,2,ug/L", "EFF CU ug/L 4=<2 11=>8",
          "03-01..03-31 <5 met 2"},
-        {"R7: the lowest for a minimum", "2025-03", "", "001,EFF,DO,concentration,daily,min,5.0,mg/L",
+        {"R7: the lowest for a minimum", "2025-03", "",
+         "001,EFF,DO,concentration,daily,min,5.0,mg/L",
          "EFF DO mg/L 4@08:00=5.0 4@15:00=4.8 11=5.4 18=4.9",
          "03-01..03-31 @03-04 4.8 exceeded x2 3"},
         {"above is strict", "2025-03", "", "001,EFF,DO,concentration,daily,above,5.0,mg/L",

@@ -1,5 +1,5 @@
-/* Samples taken and required, allowed failures, conditions, groups, open periods, and which readings a
- * month needs. R2, R8, R9, R33 to R38, R46, R47, G1, G3 of weirbook-rules(7). */
+/* Samples taken and required, allowed failures, conditions, groups, open periods, and which
+ * readings a month needs. R2, R8, R9, R33 to R38, R46, R47, G1, G3 of weirbook-rules(7). */
 #include <setjmp.h>
 #include <stdarg.h>
 #include <stddef.h>
@@ -26,10 +26,9 @@ static void samples_required_by_frequency_and_row(void **state)
          SAMPLED("daily", "continuous"), "EFF BOD5 mg/L 1..29=1",
          "02-01..02-29 @02-01 1 met x0 29/29"},
         {"R9: n/week times the weeks counted in the month", "2023-10", "",
-         SAMPLED("monthly-average", "3/week"), "EFF BOD5 mg/L 2..31=1",
-         "10-01..10-31 1 met 30/12"},
-        {"R9: n in a weekly row, a stub under split too", "2025-03",
-         "week_counts_in,split", SAMPLED("weekly-average", "2/week"), "EFF BOD5 mg/L 1=1 30..31=1",
+         SAMPLED("monthly-average", "3/week"), "EFF BOD5 mg/L 2..31=1", "10-01..10-31 1 met 30/12"},
+        {"R9: n in a weekly row, a stub under split too", "2025-03", "week_counts_in,split",
+         SAMPLED("weekly-average", "2/week"), "EFF BOD5 mg/L 1=1 30..31=1",
          "03-01..03-01 1 met 1/2\n03-02..03-08 - no-data 0/2\n03-09..03-15 - no-data 0/2\n"
          "03-16..03-22 - no-data 0/2\n03-23..03-29 - no-data 0/2\n03-30..03-31 1 met 2/2"},
         {"R35: a frequency longer than the row leaves it empty", "2023-03",
@@ -43,7 +42,8 @@ static void samples_required_by_frequency_and_row(void **state)
                                                 "30,mg/L,,,,,1/year\n"
                                                 "001,EFF,BOD5,concentration,monthly-average,max,30,"
                                                 "mg/L,,,,,1/quarter",
-         "EFF BOD5 mg/L 3=1", "01-01..12-31 1 met 1/4\n01-01..12-31 1 met 1/1\n12-01..12-31 1 met 1"},
+         "EFF BOD5 mg/L 3=1",
+         "01-01..12-31 1 met 1/4\n01-01..12-31 1 met 1/1\n12-01..12-31 1 met 1"},
         {"R35: weeks of a quarter, those counted in its months", "2023-03", "",
          SAMPLED("quarterly-average", "1/week"), "EFF BOD5 mg/L 3=1", "01-01..03-31 1 met 1/12"},
         {"R35: of a row cut by dates the weeks that end in it", "2023-03", "",
@@ -55,9 +55,8 @@ static void samples_required_by_frequency_and_row(void **state)
         {"R8: by reading, while the mean goes by days", "2025-03", "count_by,reading",
          SAMPLED("monthly-average", "4/month"), "EFF BOD5 mg/L 3@08:00=2 3@09:00=4 4=9",
          "03-01..03-31 6 met 3/4"},
-        {"R35: no-discharge days are taken out of n/day", "2025-03", "",
-         SAMPLED("daily", "1/day"), "EFF FLOW MGD 1..10=0\nEFF BOD5 mg/L 11..31=3",
-         "03-01..03-31 @03-11 3 met x0 21/21"},
+        {"R35: no-discharge days are taken out of n/day", "2025-03", "", SAMPLED("daily", "1/day"),
+         "EFF FLOW MGD 1..10=0\nEFF BOD5 mg/L 11..31=3", "03-01..03-31 @03-11 3 met x0 21/21"},
         {"R35: a week wholly without discharge requires nothing", "2023-03",
          "week_counts_in,days-1-7", SAMPLED("monthly-average", "2/week"),
          "EFF FLOW MGD 1..7=C\nEFF BOD5 mg/L 8=3", "03-01..03-31 3 met 1/6"},
@@ -126,8 +125,8 @@ static void the_european_table_allows_what_it_says(void **state)
 
     for (size_t i = 0; i < NELEM(table); i++) {
         for (int more = 0; more < 2; more++) {
-            struct made *m = made_plant("2025-12", "", ALLOWED("annual-samples", "eu-table-3", ""),
-                                        "");
+            struct made *m =
+                made_plant("2025-12", "", ALLOWED("annual-samples", "eu-table-3", ""), "");
             struct permit_month pm;
             struct fault f = {0};
             day_t day = month_step(m->month, -11);
@@ -150,8 +149,7 @@ static void the_european_table_allows_what_it_says(void **state)
 
 /* ---- conditions and groups ---- */
 
-#define TIER(limit, when)                                                                          \
-    "001,EFF,NH3N,concentration,monthly-average,max," limit ",mg/L,,,," when
+#define TIER(limit, when) "001,EFF,NH3N,concentration,monthly-average,max," limit ",mg/L,,,," when
 
 static void a_condition_chooses_the_row(void **state)
 {
@@ -260,9 +258,12 @@ static void a_period_that_is_not_over_is_open_unless_certain(void **state)
 static void a_period_is_over_on_its_last_day(void **state)
 {
     (void)state;
-    static const struct month_case over = {
-        "G1", "2024-05", "", "001,EFF,BOD5,concentration,monthly-average,max,30,mg/L",
-        "EFF BOD5 mg/L 2=20", "05-01..05-31 20 met 1"};
+    static const struct month_case over = {"G1",
+                                           "2024-05",
+                                           "",
+                                           "001,EFF,BOD5,concentration,monthly-average,max,30,mg/L",
+                                           "EFF BOD5 mg/L 2=20",
+                                           "05-01..05-31 20 met 1"};
 
     check_month(&over, "2024-05-31");
 }
@@ -270,10 +271,12 @@ static void a_period_is_over_on_its_last_day(void **state)
 static void shortfalls_are_counted_once_the_period_is_over(void **state)
 {
     (void)state;
-    struct made *m = made_plant("2024-05", "",
-                                SAMPLED("weekly-average", "2/week") "\n"
-                                "001,EFF,BOD5,concentration,monthly-average,max,30,mg/L,,,,,9/month",
-                                "");
+    struct made *m = made_plant(
+        "2024-05", "",
+        SAMPLED("weekly-average",
+                "2/week") "\n"
+                          "001,EFF,BOD5,concentration,monthly-average,max,30,mg/L,,,,,9/month",
+        "");
     struct permit_month pm;
     struct fault f = {0};
 
@@ -351,9 +354,12 @@ static void needs_are_enough_and_order_does_not_matter(void **state)
     (void)state;
     struct made *m = made_plant(
         "2025-03", "flow,INF",
-        SAMPLED("weekly-average", "2/week") "\n" SAMPLED("rolling-30-day", "") "\n"
-        "001,EFF,BOD5,load,rolling-12-month,max,50,lb/d\n001,EFF,BOD5,removal,monthly-average,"
-        "min,85,%\n" TIER("4.0", "EF2 FLOW rolling-12-month <= 2.5 MGD"), "");
+        SAMPLED("weekly-average", "2/week") "\n" SAMPLED(
+            "rolling-30-day", "") "\n"
+                                  "001,EFF,BOD5,load,rolling-12-month,max,50,lb/"
+                                  "d\n001,EFF,BOD5,removal,monthly-average,"
+                                  "min,85,%\n" TIER("4.0", "EF2 FLOW rolling-12-month <= 2.5 MGD"),
+        "");
     struct permit_month few, all;
     struct fault f = {0};
     const char *expected;
@@ -370,8 +376,8 @@ static void needs_are_enough_and_order_does_not_matter(void **state)
         m->readings[i] = m->readings[j];
         m->readings[j] = r;
     }
-    assert_int_equal(permit_month(m->arena, made_frame(m, m->month - 800, m->month + 100),
-                                  m->month, on, &all, &f),
+    assert_int_equal(permit_month(m->arena, made_frame(m, m->month - 800, m->month + 100), m->month,
+                                  on, &all, &f),
                      OK);
     assert_string_equal(rows_text(m->arena, &all), expected);
     made_free(m);

@@ -1,4 +1,5 @@
-/* Loads, removals, totals and days without discharge. R18 to R23, R34, R39 to R44 of weirbook-rules(7). */
+/* Loads, removals, totals and days without discharge. R18 to R23, R34, R39 to R44 of
+ * weirbook-rules(7). */
 #include <setjmp.h>
 #include <stdarg.h>
 #include <stddef.h>
@@ -32,9 +33,8 @@ static void loads_need_flow_and_concentration_of_the_day(void **state)
         {"R42: a limit in kg from MGD and ug/L, exactly; 1 MGD is 3785.411784 m3/d", "2025-03", "",
          LOAD("daily", "kg/d"), "EFF BOD5 ug/L 4=8000\nEFF FLOW MGD 4=1",
          "03-01..03-31 @03-04 30.28 met x0 1"},
-        {"R42: short tons of 2000 lb", "2025-03", "",
-         "001,EFF,BOD5,load,daily,max,0.0500,ton/d", "EFF BOD5 mg/L 4=10\nEFF FLOW MGD 4=1",
-         "03-01..03-31 @03-04 0.0417 met x0 1"},
+        {"R42: short tons of 2000 lb", "2025-03", "", "001,EFF,BOD5,load,daily,max,0.0500,ton/d",
+         "EFF BOD5 mg/L 4=10\nEFF FLOW MGD 4=1", "03-01..03-31 @03-04 0.0417 met x0 1"},
         {"R20, R30: less-thans in loads, R13's number times flow and factor", "2025-03", "",
          LOAD("monthly-average", "lb/d"), "EFF BOD5 mg/L 4=<2 11=<2\nEFF FLOW MGD 4=1 11=2",
          "03-01..03-31 <33.36 met 2"},
@@ -83,8 +83,9 @@ static void totals_take_the_unit_without_the_day(void **state)
         {"R42: and into m3", "2025-06", "digits,2", "001,EFF,FLOW,flow,monthly-total,report,,m3",
          readings, "06-01..06-30 15141.65 report 3"},
         {"R42: other totals are sums of daily values", "2025-06", "",
-         "001,EFF,RAIN,concentration,monthly-total,report,,in", "EFF RAIN in 4=0.5 11@08:00=0.25 "
-                                                                "11@20:00=0.25",
+         "001,EFF,RAIN,concentration,monthly-total,report,,in",
+         "EFF RAIN in 4=0.5 11@08:00=0.25 "
+         "11@20:00=0.25",
          "06-01..06-30 1.00 report 2"},
         {"40 CFR 401.17, G22: minutes of excursion", "2025-06", "",
          "001,EFF,EXC,count,monthly-total,max,446,min\n001,EFF,EXC,count,daily,max,60,min",
@@ -125,8 +126,8 @@ static void removals_by_each_of_the_four_methods(void **state)
          "03-01..03-31 80.0 met 2"},
         {"a negative removal is printed", "2025-03", "", REMOVAL,
          "INF BOD5 mg/L 4=20\nEFF BOD5 mg/L 4=25", "03-01..03-31 -25.0 exceeded 1"},
-        {"nothing is removed from 0", "2025-03", "", REMOVAL, "INF BOD5 mg/L 4=0\nEFF BOD5 mg/L 4=2",
-         "03-01..03-31 - no-data 1"},
+        {"nothing is removed from 0", "2025-03", "", REMOVAL,
+         "INF BOD5 mg/L 4=0\nEFF BOD5 mg/L 4=2", "03-01..03-31 - no-data 1"},
         {"R41: no sign unless the row sets it", "2025-03", "", REMOVAL,
          "INF BOD5 mg/L 4=200\nEFF BOD5 mg/L 4=<10 11=20", "03-01..03-31 95.0 met 2"},
         {"R41: then a less-than in the effluent gives >", "2025-03", "",
@@ -168,8 +169,8 @@ static void days_without_discharge_are_skipped_or_0(void **state)
          "001,EFF,BOD5,concentration,monthly-average,max,30,mg/L",
          "EFF BOD5 mg/L 3=10 4=20\nEFF TSS mg/L 4=C", "03-01..03-31 10 met 1"},
         {"R23: concentrations are absent under zero too", "2025-03", "no_discharge,zero",
-         "001,EFF,BOD5,concentration,monthly-average,max,30,mg/L",
-         "EFF BOD5 mg/L 3=10 4=C", "03-01..03-31 10 met 1"},
+         "001,EFF,BOD5,concentration,monthly-average,max,30,mg/L", "EFF BOD5 mg/L 3=10 4=C",
+         "03-01..03-31 10 met 1"},
         {"a week wholly without discharge", "2023-03", "week_counts_in,days-1-7",
          "001,EFF,BOD5,concentration,weekly-average,max,45,mg/L",
          "EFF FLOW MGD 1..7=0 8=1\nEFF BOD5 mg/L 8=20",
@@ -210,8 +211,9 @@ static void a_removal_without_an_influent_is_refused_by_its_line(void **state)
 
     m->plant->points[plant_point(m->plant, "INF")].role = ROLE_OTHER;
     assert_int_equal(work_month(m, "2035-01-01", &pm, &f), FAULT);
-    assert_string_equal(f.text, "limits.csv:3: the removal of 'BOD5' has no influent to start from; "
-                                "set the rule influent=POINT, in plant.csv or in this row");
+    assert_string_equal(f.text,
+                        "limits.csv:3: the removal of 'BOD5' has no influent to start from; "
+                        "set the rule influent=POINT, in plant.csv or in this row");
     made_free(m);
 }
 
@@ -219,8 +221,7 @@ static void a_removal_without_an_influent_is_refused_by_its_line(void **state)
 static void the_influent_of_a_removal(void **state)
 {
     (void)state;
-    static const char readings[] =
-        "INF BOD5 mg/L 4=100\nPE BOD5 mg/L 4=200\nEFF BOD5 mg/L 4=20";
+    static const char readings[] = "INF BOD5 mg/L 4=100\nPE BOD5 mg/L 4=200\nEFF BOD5 mg/L 4=20";
     static const struct {
         const char *fields, *limits, *outfall;
         bool second;

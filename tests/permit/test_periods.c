@@ -1,5 +1,5 @@
-/* Weeks under each convention, and periods: seasons, dates in force, quarters to twelve months, rolling
- * windows. R3 to R7, R17, R22, R36, R45 of weirbook-rules(7). */
+/* Weeks under each convention, and periods: seasons, dates in force, quarters to twelve months,
+ * rolling windows. R3 to R7, R17, R22, R36, R45 of weirbook-rules(7). */
 #include <setjmp.h>
 #include <stdarg.h>
 #include <stddef.h>
@@ -113,8 +113,9 @@ static void a_week_uses_its_days_in_whatever_month(void **state)
          "02-26..03-04 8 met 2\n03-05..03-11 12 met 1\n03-12..03-18 - no-data 0\n"
          "03-19..03-25 - no-data 0\n03-01..03-31 17 met 3"},
         {"R36: a week stands whole where the row is in force on its last day", "2023-03", "",
-         LIMIT("weekly-average") ",,2023-03-11,\n"
-         "001,EFF,BOD5,concentration,weekly-average,max,10,mg/L,,,2023-03-10",
+         LIMIT(
+             "weekly-average") ",,2023-03-11,\n"
+                               "001,EFF,BOD5,concentration,weekly-average,max,10,mg/L,,,2023-03-10",
          "EFF BOD5 mg/L 6=20 13=9",
          "03-05..03-11 20 met 1\n03-12..03-18 9 met 1\n03-19..03-25 - no-data 0\n"
          "02-26..03-04 - no-data 0"},
@@ -148,9 +149,9 @@ static void seasons_and_dates_cut_a_row_to_its_own_days(void **state)
          "02-01..02-29 @02-29 5.1 exceeded x1 1"},
         {"R3: interim and final inside one month", "2025-06", "",
          LIMIT("monthly-average") ",,,2025-06-10\n"
-         "001,EFF,BOD5,concentration,monthly-average,max,20,mg/L,,2025-06-11,",
-         "EFF BOD5 mg/L 5=28 10=30 11=18 20=20",
-         "06-01..06-10 29 met 2\n06-11..06-30 19 met 2"},
+                                  "001,EFF,BOD5,concentration,monthly-average,max,20,mg/"
+                                  "L,,2025-06-11,",
+         "EFF BOD5 mg/L 5=28 10=30 11=18 20=20", "06-01..06-10 29 met 2\n06-11..06-30 19 met 2"},
         {"a season that holds the month's two ends: its own days alone", "2025-05", "",
          "001,EFF,NH3N,concentration,daily,max,2.0,mg/L,05-20..05-10",
          "EFF NH3N mg/L 5=1.0 15=9.0 25=1.5", "05-01..05-31 @05-25 1.5 met x0 2"},
@@ -213,12 +214,10 @@ static void rolling_windows_end_in_the_month_and_reach_before_it(void **state)
          "03-01..03-31 @03-16 7.0 exceeded x1 4"},
         {"the same over calendar days", "2025-03", "window,days",
          "001,EFF,FCOLI,concentration,rolling-7-day-median,max,2.2,cfu/100mL",
-         "EFF FCOLI cfu/100mL 2024-12-01=1 2=8 16=1",
-         "03-01..03-31 @03-02 8.0 exceeded x7 2"},
+         "EFF FCOLI cfu/100mL 2024-12-01=1 2=8 16=1", "03-01..03-31 @03-02 8.0 exceeded x7 2"},
         {"G21: a running geometric mean", "2025-03", "",
          "001,EFF,ECOLI,concentration,rolling-30-day-geomean,max,126,MPN/100mL",
-         "EFF ECOLI MPN/100mL 2025-02-27=4 10=9 28=4",
-         "03-01..03-31 @03-10 6 met x0 2"},
+         "EFF ECOLI MPN/100mL 2025-02-27=4 10=9 28=4", "03-01..03-31 @03-10 6 met x0 2"},
         {"R33: 0 where there is nothing", "2025-03", "", LIMIT("rolling-7-day"), "",
          "03-01..03-31 - no-data x0 0"},
     };

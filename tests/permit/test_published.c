@@ -1,5 +1,5 @@
-/* Worked examples that others have published, each with its source, and the federal secondary treatment
- * numbers at, just under and just over each limit. */
+/* Worked examples that others have published, each with its source, and the federal secondary
+ * treatment numbers at, just under and just over each limit. */
 #include <setjmp.h>
 #include <stdarg.h>
 #include <stddef.h>
@@ -113,8 +113,8 @@ static void secondary_treatment_at_just_under_and_just_over(void **state)
         {"133.102(c), at", "2025-03", "", PH("min", "6.0") "\n" PH("max", "9.0"),
          "EFF PH pH 4@08:00=6.0 4@15:00=9.0",
          "03-01..03-31 @03-04 6.0 met x0 1\n03-01..03-31 @03-04 9.0 met x0 1"},
-        {"133.102(c), just inside", "2025-03", "compare,raw", PH("min", "6.0") "\n" PH("max", "9.0"),
-         "EFF PH pH 4@08:00=6.01 4@15:00=8.99",
+        {"133.102(c), just inside", "2025-03", "compare,raw",
+         PH("min", "6.0") "\n" PH("max", "9.0"), "EFF PH pH 4@08:00=6.01 4@15:00=8.99",
          "03-01..03-31 @03-04 6.0 met x0 1\n03-01..03-31 @03-04 9.0 met x0 1"},
         {"133.102(c), just outside", "2025-03", "compare,raw",
          PH("min", "6.0") "\n" PH("max", "9.0"), "EFF PH pH 4@08:00=5.99 4@15:00=9.01",

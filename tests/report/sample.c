@@ -1,4 +1,5 @@
-/* sample: see sample.h. The numbers are invented; the tests say where what they expect comes from. */
+/* sample: see sample.h. The numbers are invented; the tests say where what they expect comes from.
+ */
 #include <setjmp.h>
 #include <stdarg.h>
 #include <stddef.h>
@@ -66,12 +67,13 @@ struct plant *sample_finish(struct plant_draft *d)
 static const char fields[] = "name|Quill Ford Wastewater Plant\npermit|XX0012345\n"
                              "receiving_water|Quill Creek\nunits|us\n";
 static const char points[] = "INF|Raw influent|influent|\nEFF|Final effluent|effluent|001\n";
-static const char parameters[] = "FLOW|Flow|MGD|3|mean|arithmetic|50050|0|1000||\n"
-                                 "BOD5|Oxygen demand|mg/L|1|mean|arithmetic|00310|0|20000||\n"
-                                 "TSS|Suspended solids|mg/L|1|mean|arithmetic|00530|0|100000||\n"
-                                 "CL2|Residual chlorine|mg/L|3|max|arithmetic|50060|0|100||\n"
-                                 "PH|pH|pH|1|mean|arithmetic|00400|0|14||\n"
-                                 "ECOLI|E. coli|MPN/100mL|0|geometric|geometric|51040|0|9999999||\n";
+static const char parameters[] =
+    "FLOW|Flow|MGD|3|mean|arithmetic|50050|0|1000||\n"
+    "BOD5|Oxygen demand|mg/L|1|mean|arithmetic|00310|0|20000||\n"
+    "TSS|Suspended solids|mg/L|1|mean|arithmetic|00530|0|100000||\n"
+    "CL2|Residual chlorine|mg/L|3|max|arithmetic|50060|0|100||\n"
+    "PH|pH|pH|1|mean|arithmetic|00400|0|14||\n"
+    "ECOLI|E. coli|MPN/100mL|0|geometric|geometric|51040|0|9999999||\n";
 static const char limits[] =
     "001|EFF|BOD5|concentration|monthly-average|max|30|mg/L|||||||||||"
     "=HYPERLINK(\"x\") is a note\n"
@@ -130,7 +132,10 @@ static void fill(struct arena *a, struct frame *frame, day_t first, day_t last)
         bool storm = n >= 15 && n <= 21;
         sample_reading(a, frame, "EFF", "FLOW", day,
                        arena_print(a, "%d.%03d", storm ? 4 : 2, 100 + 7 * ((n + 31) % 13)));
-        sample_reading(a, frame, "EFF", "CL2", day, n == 17 ? "0.031" : n == 9 ? "code E" : "<0.010");
+        sample_reading(a, frame, "EFF", "CL2", day,
+                       n == 17  ? "0.031"
+                       : n == 9 ? "code E"
+                                : "<0.010");
         sample_reading(a, frame, "EFF", "PH", day, arena_print(a, "%d.%d", 6, 8 + n % 2));
         if (day_weekday(day) != MONDAY && day_weekday(day) != WEDNESDAY &&
             day_weekday(day) != FRIDAY)

@@ -5,4 +5,4 @@ date,point,parameter,value,unit
 2024-12-31,EFF,BOD5,22,mg/L
 2025-02-30,EFF,BOD5,23,mg/L
 END
-"$weirbook" load dates.csv
+"$weirbook" load dates.csv | sed "s|today, 20[0-9-]*|today, {today}|"

@@ -6,8 +6,8 @@ chmod 000 locked.csv
 if [ "$(id -u)" = 0 ]; then
     rm locked.csv
     ln -s locked.csv locked.csv
-    "$weirbook" load locked.csv 2>&1 | sed 's/: [A-Z][a-z ]*; /: {why}; /'
+    "$weirbook" load locked.csv 2>&1 | sed 's/([^)]*)/({why})/'
 else
-    "$weirbook" load locked.csv 2>&1 | sed 's/: [A-Z][a-z ]*; /: {why}; /'
+    "$weirbook" load locked.csv 2>&1 | sed 's/([^)]*)/({why})/'
 fi
 unchanged
