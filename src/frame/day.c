@@ -206,6 +206,48 @@ static day_rule_function *const day_rules[DAY_RULES] = {
 
 /* ---- a day ---- */
 
+/* Whether the number as written is the number that counts, in `unit`. */
+static bool counts_as_written(const struct reading *r, const struct rules *rules,
+                              const struct unit *unit)
+{
+    return r->qualifier == QUALIFIER_PLAIN && unit_at(r->unit) == unit &&
+           (!r->has_rl || rules->word[RULE_DNQ] == DNQ_VALUE);
+}
+
+/* The mean of many readings in whole numbers, without a fraction for each. False: take the long
+ * way. */
+static bool quick_mean(const struct frame *f, const struct column *c,
+                       const struct reading *const *r, size_t count, const struct rules *rules,
+                       const struct unit *unit, struct day_value *out)
+{
+    const struct parameter *p = &f->plant->parameters[c->parameter];
+    int64_t sum = 0, divisor = (int64_t)count, scaled;
+    int scale = 0;
+
+    if (p->day_rule != DAY_MEAN || count < 2)
+        return false;
+    for (size_t i = 0; i < count; i++) {
+        if (!counts_as_written(r[i], rules, unit ? unit : p->unit))
+            return false;
+        scale = r[i]->value.scale > scale ? r[i]->value.scale : scale;
+    }
+    for (size_t i = 0; i < count; i++) {
+        scaled = r[i]->value.coefficient;
+        for (int k = r[i]->value.scale; k < scale; k++)
+            if (__builtin_mul_overflow(scaled, 10, &scaled))
+                return false;
+        if (__builtin_add_overflow(sum, scaled, &sum))
+            return false;
+    }
+    for (int k = 0; k < scale; k++)
+        if (__builtin_mul_overflow(divisor, 10, &divisor))
+            return false;
+    out->state = DAY_VALUED;
+    out->readings = count;
+    out->amount.number = fraction_from_ratio(f->arena, sum, divisor);
+    return true;
+}
+
 static const char *no_reading(const struct frame *f, int point, int parameter)
 {
     const char **why = &f->empty[frame_cell(f, point, parameter)];
@@ -276,6 +318,8 @@ bool day_work(const struct frame *f, const struct column *c, day_t day, const st
         return false;
     if (c->meter && (c->meter[day - c->first].volume || c->meter[day - c->first].why))
         return register_day(f, c, &c->meter[day - c->first], unit, out);
+    if (quick_mean(f, c, r, count, rules, unit, out))
+        return true;
     if (count > NELEM(few))
         e = arena_alloc(f->arena, count * sizeof *e);
     for (size_t i = 0; i < count; i++) {

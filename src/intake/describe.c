@@ -94,8 +94,7 @@ static bool read_header(struct description *d, const struct row *row)
             continue;
         complete = false;
         if (!hinted[i])
-            problem(d, row->line, 0, "add it", "the column '%s' is missing",
-                    d->layout->column[i]);
+            problem(d, row->line, 0, "add it", "the column '%s' is missing", d->layout->column[i]);
     }
     return complete;
 }
@@ -180,10 +179,8 @@ void intake_catalogue(struct plant_draft *draft)
 
 static void read_file(const char *folder, enum plant_file file, struct plant_draft *draft)
 {
-    struct description d = {.arena = arena_new(),
-                            .draft = draft,
-                            .file = file,
-                            .layout = plant_layout(file)};
+    struct description d = {
+        .arena = arena_new(), .draft = draft, .file = file, .layout = plant_layout(file)};
     struct fault f = {.set = false};
     struct lines lines = {.path = NULL};
     struct stat info;
@@ -193,8 +190,8 @@ static void read_file(const char *folder, enum plant_file file, struct plant_dra
     if (absent && d.layout->required)
         problem(&d, 0, 0, "add it; 'weirbook plant --example DIR' writes one to start from",
                 "the description has no such file");
-    if (!absent && (lines_open(&lines, d.arena, d.name, &f) != OK ||
-                    read_rows(&d, &lines, &f) != OK))
+    if (!absent &&
+        (lines_open(&lines, d.arena, d.name, &f) != OK || read_rows(&d, &lines, &f) != OK))
         plant_draft_problem(draft, f.text);
     lines_close(&lines);
     arena_free(d.arena);

@@ -23,8 +23,9 @@ enum field {
 enum { WORDS_MOST = 4, HEADER_LINE_MOST = 100000 };
 
 /* In the order of the enum; a field without words takes what its reader accepts. */
-static const char *const field_names[FIELDS] = {"layout",   "delimiter", "decimal",     "date_order",
-                                                "encoding", "thousands", "header_line", "footer"};
+static const char *const field_names[FIELDS] = {"layout",      "delimiter", "decimal",
+                                                "date_order",  "encoding",  "thousands",
+                                                "header_line", "footer"};
 static const struct {
     size_t count;
     const char *word[WORDS_MOST];
@@ -81,8 +82,8 @@ static enum status header_line(const struct sheet *s, size_t row, long *out, str
                     "cannot read '%s' as the number of a line", text);
 }
 
-static enum status read_field(struct arena *a, const struct sheet *s, size_t row,
-                              bool seen[FIELDS], struct dialect *d, struct fault *f)
+static enum status read_field(struct arena *a, const struct sheet *s, size_t row, bool seen[FIELDS],
+                              struct dialect *d, struct fault *f)
 {
     int field = 0;
     int word = 0;

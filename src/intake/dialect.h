@@ -16,7 +16,7 @@ struct dialect {
     enum date_order date_order;
     bool encoding_stated;
     enum encoding encoding;
-    long header_line; /* 0: the first line that is not blank */
+    long header_line;   /* 0: the first line that is not blank */
     const char *footer; /* NULL: none */
     bool thousands_stated;
     char thousands; /* '.', ',', ' '; '\0' with `none` */

@@ -115,11 +115,11 @@ static enum status either_order(const struct sighting *s, const char *path, stru
         day_write(day, month_first);
     if (date_read(&parts, ORDER_DMY, false, &day) == DATE_FINE)
         day_write(day, day_first);
-    return fault_at(f, &where,
-                    "put the lines 'field,value' and 'date_order,mdy' (or dmy) in a file and give it"
-                    " with --dialect",
-                    "'%s' is %s or %s, and no date of the file settles it", s->text, month_first,
-                    day_first);
+    return fault_at(
+        f, &where,
+        "put the lines 'field,value' and 'date_order,mdy' (or dmy) in a file and give it"
+        " with --dialect",
+        "'%s' is %s or %s, and no date of the file settles it", s->text, month_first, day_first);
 }
 
 enum status evidence_order(const struct evidence *e, const char *path, enum date_order *out,
@@ -152,11 +152,10 @@ static enum status either_mark(const struct sighting *s, const char *path, char 
             *c = '.';
     }
     whole[length] = '\0';
-    const char *todo = mark == ','
-                           ? "put the lines 'field,value' and 'decimal,comma' (or"
-                             " 'thousands,comma') in a file and give it with --dialect"
-                           : "put the lines 'field,value' and 'decimal,point' (or"
-                             " 'thousands,point') in a file and give it with --dialect";
+    const char *todo = mark == ',' ? "put the lines 'field,value' and 'decimal,comma' (or"
+                                     " 'thousands,comma') in a file and give it with --dialect"
+                                   : "put the lines 'field,value' and 'decimal,point' (or"
+                                     " 'thousands,point') in a file and give it with --dialect";
     return fault_at(f, &(struct place){path, s->line, s->column}, todo,
                     "'%s' is %s or %s, and no number of the file settles it", s->text, decimal,
                     whole);
@@ -173,8 +172,8 @@ enum status evidence_decimal(const struct evidence *e, const char *path, char de
         return fault_at(f, &(struct place){path, e->comma.line, e->comma.column},
                         "put the lines 'field,value' and 'decimal,comma' (or point) in a file and"
                         " give it with --dialect; numbers with the other mark are then set aside",
-                        "'%s' has a decimal comma, '%s' in line %ld a decimal point",
-                        e->comma.text, e->point.text, e->point.line);
+                        "'%s' has a decimal comma, '%s' in line %ld a decimal point", e->comma.text,
+                        e->point.text, e->point.line);
     if (comma || point)
         return OK;
     if (e->maybe_comma.line > 0)

@@ -136,9 +136,8 @@ enum status intake_example(const char *folder, struct fault *f)
         if (starter_name(i) != NULL && folder_free(folder, starter_name(i), f) != OK)
             return FAULT;
     for (size_t i = 0; i < intake_files_count; i++)
-        if (starter_name(i) != NULL &&
-            folder_write(folder, starter_name(i), intake_files[i].bytes, intake_files[i].length,
-                         f) != OK)
+        if (starter_name(i) != NULL && folder_write(folder, starter_name(i), intake_files[i].bytes,
+                                                    intake_files[i].length, f) != OK)
             return FAULT;
     return OK;
 }

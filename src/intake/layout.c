@@ -111,6 +111,15 @@ static bool split_heading(struct arena *a, const char *heading, const char **poi
     return **point != '\0' && **parameter != '\0' && **parameter != '[' && rest == 0;
 }
 
+/* The entry of the map that the heading may be a slip of; NULL: none. */
+static const char *nearest_entry(const struct header *h, const struct map *map, const char *heading)
+{
+    const char **known = arena_alloc(h->arena, (map->count + 1) * sizeof *known);
+    for (size_t k = 0; k < map->count; k++)
+        known[k] = map->entry[k].heading;
+    return text_nearest(heading, known, map->count);
+}
+
 static enum status read_heading(struct header *h, size_t i, const struct map *map, struct fault *f)
 {
     struct column *c = &h->layout->column[i];
@@ -118,16 +127,12 @@ static enum status read_heading(struct header *h, size_t i, const struct map *ma
     const char *point;
     const char *parameter;
     const char *unit;
-    if (!split_heading(h->arena, c->heading, &point, &parameter, &unit)) {
-        const char *nearest = NULL;
-        const char **known = arena_alloc(h->arena, (map->count + 1) * sizeof *known);
-        for (size_t k = 0; k < map->count; k++)
-            known[k] = map->entry[k].heading;
-        nearest = text_nearest(c->heading, known, map->count);
+    const char *nearest = nearest_entry(h, map, c->heading);
+    bool split = split_heading(h->arena, c->heading, &point, &parameter, &unit);
+    if (!split || (nearest != NULL && plant_point(h->plant, point) < 0))
         return fault_at(f, &where, "correct it, or name the column in a column map (--map)",
                         "the heading '%s' is not POINT PARAMETER [unit]%s", c->heading,
                         nearest_told(h->arena, nearest));
-    }
     if (point_named(h->plant, point, &where, &c->point, f) != OK ||
         parameter_named(h->plant, parameter, &where, &c->parameter, f) != OK)
         return FAULT;
@@ -196,10 +201,10 @@ static enum status check_map_used(const struct header *h, const struct map *map,
             return fault_at(f, &e->where, "leave it out of the map",
                             "'%s' is the first column of %s, which holds the date", e->heading,
                             h->path);
-        return fault_at(f, &e->where, "write the heading as the file has it",
-                        "%s has no column '%s'%s", h->path, e->heading,
-                        nearest_told(h->arena,
-                                     text_nearest(e->heading, known, h->layout->columns)));
+        return fault_at(
+            f, &e->where, "write the heading as the file has it", "%s has no column '%s'%s",
+            h->path, e->heading,
+            nearest_told(h->arena, text_nearest(e->heading, known, h->layout->columns)));
     }
     return OK;
 }
@@ -254,8 +259,8 @@ enum status layout_read(struct arena *a, const char *path, const struct row *hea
         out->at[i] = -1;
     if (take_headings(&h, f) != OK)
         return FAULT;
-    bool is_long = dialect->layout == LAYOUT_LONG ||
-                   (dialect->layout == LAYOUT_UNSTATED && looks_long(out));
+    bool is_long =
+        dialect->layout == LAYOUT_LONG || (dialect->layout == LAYOUT_UNSTATED && looks_long(out));
     if (!is_long)
         return read_wide(&h, map, f);
     if (map != NULL)

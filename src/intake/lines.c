@@ -276,8 +276,8 @@ static void give(struct lines *l, char *from, size_t length, struct line *out)
     if (l->look.ascii && !l->look.controls)
         return;
     if (l->encoding == ENCODING_WINDOWS_1252 && has_high(from, length)) {
-        out->bad = !decode(&l->decoded, from, length) || lines_bad(l, l->decoded.at,
-                                                                   l->decoded.length);
+        out->bad =
+            !decode(&l->decoded, from, length) || lines_bad(l, l->decoded.at, l->decoded.length);
         if (out->bad)
             return;
         text_add_char(&l->decoded, '\n');

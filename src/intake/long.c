@@ -14,8 +14,8 @@ static struct number_style style_of(const struct reader *r, enum long_column par
     return r->layout.column[r->layout.at[part]].style;
 }
 
-static enum reason unknown(struct reader *r, enum reason reason, const char *what,
-                           const char *word, const char *nearest)
+static enum reason unknown(struct reader *r, enum reason reason, const char *what, const char *word,
+                           const char *nearest)
 {
     char before[32];
     char after[128] = "";
@@ -66,8 +66,8 @@ static enum reason read_limit(struct reader *r, enum long_column part, bool *has
         return REASON_COUNT;
     enum reason reason = value_limit(cell(r, part), style_of(r, part), has, out);
     if (reason == REASON_NOT_A_NUMBER)
-        return reader_tell(r, reason, part == LONG_MDL ? "cannot read the mdl "
-                                                       : "cannot read the rl ",
+        return reader_tell(r, reason,
+                           part == LONG_MDL ? "cannot read the mdl " : "cannot read the rl ",
                            cell(r, part), " as a number");
     if (reason == REASON_TOO_MANY_DIGITS)
         return reader_tell(r, reason, part == LONG_MDL ? "the mdl " : "the rl ", cell(r, part),
@@ -105,9 +105,9 @@ enum status reader_long_row(struct reader *r, const struct row *row, struct faul
         r->text.cell[i] = r->layout.at[i] < 0 ? "" : row->cell[r->layout.at[i]];
     r->text.line = r->reading.line = row->line;
     r->reading.sample = cell(r, LONG_SAMPLE);
-    r->detail = (struct detail){cell(r, LONG_METHOD), cell(r, LONG_ANALYST),
-                                cell(r, LONG_COLLECTED_BY), cell(r, LONG_ANALYZED),
-                                cell(r, LONG_NOTE)};
+    r->detail =
+        (struct detail){cell(r, LONG_METHOD), cell(r, LONG_ANALYST), cell(r, LONG_COLLECTED_BY),
+                        cell(r, LONG_ANALYZED), cell(r, LONG_NOTE)};
     if (reader_part_date(r, cell(r, LONG_DATE), f) != OK)
         return FAULT;
     return reader_give(r, read_reading(r), f);

@@ -6,7 +6,7 @@
 #include "base/poison.h"
 
 enum { NUMBER_BYTES = 256, GROUP = 3 };
-static const char minus[] = "\xe2\x88\x92";              /* U+2212 */
+static const char minus[] = "\xe2\x88\x92";                 /* U+2212 */
 static const char narrow_no_break_space[] = "\xe2\x80\xaf"; /* U+202F */
 
 static bool is_digit(char c)

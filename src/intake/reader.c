@@ -65,8 +65,8 @@ enum status reader_part_date(struct reader *r, const char *date, struct fault *f
     return evidence_order(&r->evidence, r->path, &r->order, f);
 }
 
-static enum reason outside(struct reader *r, enum reason reason, const char *date,
-                           const char *what, day_t bound)
+static enum reason outside(struct reader *r, enum reason reason, const char *date, const char *what,
+                           day_t bound)
 {
     char iso[11];
     char after[64];
@@ -130,14 +130,15 @@ enum reason reader_unit_fits(struct reader *r, const struct unit *unit)
     if (m != NULL && m->kind == METER_TOTALIZER) {
         if (text_equal(unit->kind, "volume"))
             return REASON_COUNT;
-        snprintf(after, sizeof after, " is a unit of %s, the totalizer of %.32s %.32s counts a volume",
-                 unit->kind, r->plant->points[point].id, p->id);
+        snprintf(after, sizeof after,
+                 " is a unit of %s, the totalizer of %.32s %.32s counts a volume", unit->kind,
+                 r->plant->points[point].id, p->id);
         return reader_tell(r, REASON_WRONG_UNIT, "", unit->name, after);
     }
     if (unit == p->unit || unit_same_kind(unit, p->unit))
         return REASON_COUNT;
-    snprintf(after, sizeof after, " is a unit of %s, %.32s is measured in %s (%s)", unit->kind, p->id,
-             p->unit->name, p->unit->kind);
+    snprintf(after, sizeof after, " is a unit of %s, %.32s is measured in %s (%s)", unit->kind,
+             p->id, p->unit->name, p->unit->kind);
     return reader_tell(r, REASON_WRONG_UNIT, "", unit->name, after);
 }
 
@@ -167,7 +168,8 @@ static enum reason tell_value(struct reader *r, enum reason reason, const char *
     case REASON_NEGATIVE_VALUE:
         return reader_tell(r, reason, "", text, " is below zero");
     case REASON_NO_LIMIT_FOR_ND:
-        snprintf(after, sizeof after, " has no limit to stand for it, and %.32s has none of its own",
+        snprintf(after, sizeof after,
+                 " has no limit to stand for it, and %.32s has none of its own",
                  r->plant->parameters[r->reading.parameter].id);
         return reader_tell(r, reason, "", text, after);
     case REASON_CODE_WITHOUT_NUMBER:

@@ -147,7 +147,9 @@ static const char *tell_dialect(const struct reader *r, struct arena *a)
     struct text t;
     text_init(&t, TOLD_BYTES);
     text_print(&t, "%s, %s, decimal %s", r->layout.wide ? "wide" : "long",
-               r->delimiter == ',' ? "commas" : r->delimiter == ';' ? "semicolons" : "tabs",
+               r->delimiter == ','   ? "commas"
+               : r->delimiter == ';' ? "semicolons"
+                                     : "tabs",
                r->decimal == ',' ? "comma" : "point");
     add_dates(r, &t);
     text_print(&t, ", %s", r->lines.encoding == ENCODING_UTF8 ? "UTF-8" : "Windows-1252");

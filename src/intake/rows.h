@@ -29,12 +29,12 @@ struct rows {
     size_t used;
     const char **cell;
     bool ended, stray, too_long;
-    struct text joined;                         /* the row's lines, when there are several */
-    struct text held;                           /* lines to be read again before the file's own */
-    size_t held_at, held_first;                 /* next; behind the row's first line */
-    long held_number;                           /* of the line at held_at */
-    struct text raw;                            /* the row as it stands in the file */
-    struct line first;                          /* the row's first line, while it is the only one */
+    struct text joined;         /* the row's lines, when there are several */
+    struct text held;           /* lines to be read again before the file's own */
+    size_t held_at, held_first; /* next; behind the row's first line */
+    long held_number;           /* of the line at held_at */
+    struct text raw;            /* the row as it stands in the file */
+    struct line first;          /* the row's first line, while it is the only one */
 };
 
 void rows_open(struct rows *r, struct arena *a, struct lines *lines, char delimiter);

@@ -151,10 +151,10 @@ enum status sheet_word(const struct sheet *s, size_t row, size_t column, const c
     for (size_t i = 0; i < count; i++)
         text_print(&todo, "%s%s", i == 0 ? "" : ", ", words[i]);
     const char *nearest = text_nearest(word, words, count);
-    enum status rc = nearest != NULL ? fault_at(f, &where, todo.at, "no %s '%s'; the nearest is '%s'",
-                                                s->known[column], word, nearest)
-                                     : fault_at(f, &where, todo.at, "no %s '%s'",
-                                                s->known[column], word);
+    enum status rc = nearest != NULL
+                         ? fault_at(f, &where, todo.at, "no %s '%s'; the nearest is '%s'",
+                                    s->known[column], word, nearest)
+                         : fault_at(f, &where, todo.at, "no %s '%s'", s->known[column], word);
     text_free(&todo);
     return rc;
 }

@@ -1,6 +1,6 @@
 /* value: the tokens of a value: numbers, <n, >n, ND, DNQ, TNTC, E n, no-data codes. */
-#include "intake/intake.h"
 #include "intake/value.h"
+#include "intake/intake.h"
 
 #include <string.h>
 
@@ -41,9 +41,8 @@ static const char *after_sign(const char *s, enum qualifier *qualifier)
         const char *sign;
         enum qualifier qualifier;
     } signs[] = {
-        {"<=", QUALIFIER_LESS},           {"<", QUALIFIER_LESS},
-        {"\xe2\x89\xa4", QUALIFIER_LESS}, {">=", QUALIFIER_GREATER},
-        {">", QUALIFIER_GREATER},         {"\xe2\x89\xa5", QUALIFIER_GREATER},
+        {"<=", QUALIFIER_LESS},    {"<", QUALIFIER_LESS},    {"\xe2\x89\xa4", QUALIFIER_LESS},
+        {">=", QUALIFIER_GREATER}, {">", QUALIFIER_GREATER}, {"\xe2\x89\xa5", QUALIFIER_GREATER},
     };
     for (size_t i = 0; i < NELEM(signs); i++) {
         size_t length = strlen(signs[i].sign);
@@ -166,8 +165,7 @@ enum reason value_read(struct reading *r, const struct parameter *p, const char 
     return number(r, p, rest != NULL ? rest : r->text, style, qualifier);
 }
 
-enum reason value_limit(const char *text, struct number_style style, bool *has,
-                        struct decimal *out)
+enum reason value_limit(const char *text, struct number_style style, bool *has, struct decimal *out)
 {
     *has = false;
     if (*text == '\0')

@@ -5,6 +5,7 @@
  *   verdict.c    the figure to its text, and against the limit
  *   samples.c    how many samples were taken and required
  *   month.c      all limits of a month, conditions and groups
+ *   needs.c      which readings all that is worked from
  * Private to this room. R and G numbers are those of weirbook-rules(7). */
 #ifndef WEIRBOOK_PERMIT_WORK_H
 #define WEIRBOOK_PERMIT_WORK_H

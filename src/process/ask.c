@@ -71,7 +71,7 @@ static enum status read_unit(struct question *q, const struct formula_argument *
     *out = unit_find(suffix);
     if (*out == NULL) {
         const char *near = unit_nearest(suffix);
-        const char *todo = near ? arena_print(q->arena, "did you mean '%s'", near)
+        const char *todo = near ? arena_print(q->arena, "the nearest is '%s'", near)
                                 : arena_print(q->arena, "give it in %s", arg->unit);
         return fault_usage(q->fault, todo, "unknown unit '%s' for '%s'", suffix, arg->name);
     }
@@ -153,7 +153,7 @@ static enum status unknown_argument(struct question *q, const char *name)
     for (size_t i = 0; i < q->formula->arguments; i++)
         known[i] = q->formula->argument[i].name;
     const char *near = text_nearest(name, known, q->formula->arguments);
-    const char *todo = near ? arena_print(q->arena, "did you mean '%s'", near)
+    const char *todo = near ? arena_print(q->arena, "the nearest is '%s'", near)
                             : arena_print(q->arena, "see 'formula %s'", q->formula->name);
     return fault_usage(q->fault, todo, "'%s' has no argument '%s'", q->formula->name, name);
 }
@@ -284,7 +284,7 @@ enum status formula_ask(struct arena *a, const char *name, const char *const *wo
     *out = (struct formula_result){.formula = q.formula};
     if (q.formula == NULL) {
         const char *near = formula_nearest(name);
-        return fault_usage(f, near ? arena_print(a, "did you mean '%s'", near) : "see 'formula'",
+        return fault_usage(f, near ? arena_print(a, "the nearest is '%s'", near) : "see 'formula'",
                            "unknown formula '%s'", name);
     }
     for (size_t i = 0; i < count; i++)

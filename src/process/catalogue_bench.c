@@ -194,9 +194,9 @@ static const struct formula rows[] = {
         .arguments = 4,
         .result = "count",
         .unit = "/100mL",
-        .equation =
-            "rule: 100 * sum(colonies) / sum(volumes) over the filters with low to high colonies; "
-            "where all have more, the smallest volume alone; otherwise over all filters",
+        .equation = "rule: 100 * sum(colonies) / sum(volumes) over the filters with low to high "
+                    "colonies; where all have more, the smallest volume alone; otherwise over all "
+                    "filters; one with more than 200 colonies is not read",
         .source = "Standard Methods 9222 D counting rules; USGS National Field Manual 7.1.4; "
                   "WHO/UNEP text on totalling low counts",
         .trap = "filters out of range give an estimate; no colony at all is a less-than",
@@ -226,7 +226,6 @@ static const struct formula rows[] = {
         .unit = "/100mL",
         .equation = "100 * sum(positives) / sqrt((sumproduct(tubes, volumes) - "
                     "sumproduct(positives, volumes)) * sumproduct(tubes, volumes))",
-        .requires = "sum(positives) > 0",
         .source = "Thomas 1942: positives x 100 / sqrt(mL in negative tubes x mL in all tubes); "
                   "Standard Methods 9221 C",
     },

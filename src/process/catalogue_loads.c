@@ -75,6 +75,7 @@ static const struct formula rows[] = {
         .arguments = 2,
         .result = "removal",
         .unit = "%",
+        .like = true,
         .equation = "(influent - effluent) / influent * 100",
         .source = "Spellman, Mathematics and Statistics for the Environment (CRC Press) sec. "
                   "24.9.2.4; 40 CFR 133.101 defines percent removal on 30-day averages",

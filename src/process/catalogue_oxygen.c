@@ -58,7 +58,7 @@ static const struct formula rows[] = {
         .unit = "lb/d",
         .equation =
             "bod_load * bod_factor + ammonia_load * ammonia_factor - nitrate_load * nitrate_credit",
-        .source = "nitrogen terms read (4.57 and credit 2.86, Metcalf & Eddy 5th ed. pp. 762 and "
+        .source = "nitrogen terms opened (4.57 and credit 2.86, Metcalf & Eddy 5th ed. pp. 762 and "
                   "810, as quoted; 4.6 in a University of Wisconsin report after EPA 1975); the "
                   "Ten States 1.1 lb/lb BOD5 is from memory",
         .trap = "state design codes apply the factors to the peak loads",

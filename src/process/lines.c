@@ -288,12 +288,12 @@ struct line *lines_add(struct supplies *s, struct lines *lines, const char *form
     return line;
 }
 
-void line_feed(struct supplies *s, struct line *line, const char *argument, struct stream *stream,
-               enum side side, const struct unit *from)
+void line_feed_as(struct supplies *s, struct line *line, const char *argument,
+                  struct stream *stream, enum side side, const struct unit *from,
+                  const struct unit *to)
 {
     int i = formula_argument_index(line->ready->formula, argument);
     assert(i >= 0 && stream != NULL);
-    const struct unit *to = unit_find(line->ready->formula->argument[i].unit);
     struct input *input = &line->input[i];
     *input = (struct input){.stream = stream, .side = side};
     if (from == to)
@@ -302,6 +302,15 @@ void line_feed(struct supplies *s, struct line *line, const char *argument, stru
     input->offset = unit_convert(s->arena, fraction_from_int(s->arena, 0), from, to);
     input->factor =
         fraction_subtract(s->arena, unit_convert(s->arena, one, from, to), input->offset);
+}
+
+void line_feed(struct supplies *s, struct line *line, const char *argument, struct stream *stream,
+               enum side side, const struct unit *from)
+{
+    int i = formula_argument_index(line->ready->formula, argument);
+    assert(i >= 0);
+    line_feed_as(s, line, argument, stream, side, from,
+                 unit_find(line->ready->formula->argument[i].unit));
 }
 
 static struct stream *strength_at(struct finder *f, int point, int parameter)

@@ -39,8 +39,11 @@ void lines_find(struct supplies *s, struct lines *out);
 void lines_own(struct supplies *s, struct lines *out);
 
 struct line *lines_add(struct supplies *s, struct lines *lines, const char *formula);
-/* Numbers of `from` are turned into the argument's unit. */
+/* Numbers of `from` are turned into the argument's unit, or into `to`. */
 void line_feed(struct supplies *s, struct line *line, const char *argument, struct stream *stream,
                enum side side, const struct unit *from);
+void line_feed_as(struct supplies *s, struct line *line, const char *argument,
+                  struct stream *stream, enum side side, const struct unit *from,
+                  const struct unit *to);
 
 #endif

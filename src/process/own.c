@@ -62,6 +62,20 @@ static const struct unit *source_unit(const struct plant *p, const struct proces
     }
 }
 
+/* The unit an argument is worked in: the catalogue's, or for a share of like in like that of the
+ * figure's first row, whatever its kind. */
+static const struct unit *worked_unit(const struct plant *p, const struct process_row *row,
+                                      const struct formula *formula, int argument)
+{
+    const struct unit *own = unit_find(formula->argument[argument].unit);
+    if (!formula->like)
+        return own;
+    for (size_t i = 0; i < p->process_count; i++)
+        if (one_figure(&p->process[i], row))
+            return source_unit(p, &p->process[i], own);
+    return own;
+}
+
 static enum status check_row(const struct checking *c, const struct process_row *row)
 {
     struct place place = row_place(row);
@@ -77,7 +91,7 @@ static enum status check_row(const struct checking *c, const struct process_row 
         return near_word(c, row, nearest_argument(formula, row->argument),
                          arena_print(c->arena, "'%s' has no argument", row->formula),
                          row->argument);
-    const struct unit *argument = unit_find(formula->argument[i].unit);
+    const struct unit *argument = worked_unit(c->plant, row, formula, i);
     const struct unit *given = source_unit(c->plant, row, argument);
     if (given != NULL && !unit_same_kind(given, argument))
         return fault_at(c->fault, &place,
@@ -181,11 +195,12 @@ static bool feed_own(struct supplies *s, struct line *line, const struct process
     const struct formula *formula = line->ready->formula;
     int i = formula_argument_index(formula, row->argument);
     assert(i >= 0);
-    const struct unit *unit = source_unit(s->plant, row, unit_find(formula->argument[i].unit));
+    const struct unit *to = worked_unit(s->plant, row, formula, i);
+    const struct unit *unit = source_unit(s->plant, row, to);
     struct stream *stream = source_stream(s, row, unit);
     if (stream == NULL)
         return false;
-    line_feed(s, line, row->argument, stream, AMOUNT, unit);
+    line_feed_as(s, line, row->argument, stream, AMOUNT, unit, to);
     return true;
 }
 

@@ -26,9 +26,10 @@ struct formula {
     const char *result, *unit;
     const char *equation; /* what is worked: + - * / ^ ( ) and named functions; or "rule: ..." */
     const char *requires; /* what must hold between arguments: "dried >= filter; ..."; or NULL */
-    const char *source;   /* published source, or "common practice, no source" */
-    const char *trap;     /* one line, or NULL */
-    const char *usual;    /* usual range with its source, or NULL */
+    bool like; /* a share of like in like: in process.csv its arguments may be of any one kind */
+    const char *source; /* published source, or "common practice, no source" */
+    const char *trap;   /* one line, or NULL */
+    const char *usual;  /* usual range with its source, or NULL */
 };
 
 size_t formula_count(void);

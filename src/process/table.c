@@ -223,6 +223,7 @@ static day_t step_last(const struct table *t, day_t day)
 }
 
 struct gathered {
+    struct arena *arena; /* of this step alone */
     const struct fraction *sum, *least, *most;
     long count, present; /* days with a figure; days on which there could be one */
     bool less, greater;
@@ -241,8 +242,8 @@ static void gather(struct table *t, const struct line *line, day_t day, struct g
             g->first_missing = d.note;
         return;
     }
-    const struct fraction *x = supplies_keep(&t->s, d.value);
-    g->sum = g->count == 0 ? x : fraction_add(t->s.arena, g->sum, x);
+    const struct fraction *x = fraction_add(g->arena, d.value, t->s.zero);
+    g->sum = g->count == 0 ? x : fraction_add(g->arena, g->sum, x);
     if (g->count == 0 || fraction_compare(x, g->least) < 0)
         g->least = x;
     if (g->count == 0 || fraction_compare(x, g->most) > 0)
@@ -269,23 +270,29 @@ static const char *step_note(struct table *t, const struct line *line, const str
     return s;
 }
 
+static void add_gathered(struct table *t, const struct line *line, day_t from, day_t to,
+                         const struct gathered *g)
+{
+    struct process_figure *f = figure_new(t, line, from, to);
+    f->count = g->count;
+    f->note = step_note(t, line, g);
+    if (g->count == 0)
+        return;
+    f->value = fraction_divide(t->s.arena, g->sum, fraction_from_int(g->arena, g->count));
+    f->least = supplies_keep(&t->s, g->least);
+    f->most = supplies_keep(&t->s, g->most);
+}
+
 static void add_step(struct table *t, const struct line *line, day_t from, day_t to)
 {
-    struct gathered g = {0};
+    struct gathered g = {.arena = arena_new()};
     for (day_t day = from; day <= to; day++) {
         gather(t, line, day, &g);
         supplies_tidy(&t->s);
     }
-    if (g.present == 0)
-        return;
-    struct process_figure *f = figure_new(t, line, from, to);
-    f->count = g.count;
-    f->note = step_note(t, line, &g);
-    if (g.count == 0)
-        return;
-    f->value = fraction_divide(t->s.arena, g.sum, fraction_from_int(t->s.arena, g.count));
-    f->least = g.least;
-    f->most = g.most;
+    if (g.present > 0)
+        add_gathered(t, line, from, to, &g);
+    arena_free(g.arena);
 }
 
 /* ---- all of it ---- */

@@ -49,7 +49,7 @@ const char *title_line(struct arena *a, const struct plant *plant, const struct 
 const char *permit_line(struct arena *a, const struct plant *plant, const struct permit_month *m);
 /* That the month is not over on the day it is judged. */
 const char *judged_line(struct arena *a, const struct permit_month *m);
-/* "EFF BOD5, monthly average: 11 taken of 12 required, 2025-03-01 to 2025-03-31" */
+/* "EFF BOD5, monthly average (at most 30 mg/L): 11 taken of 12 required, FROM to TO" */
 const char *shortfall_line(struct arena *a, const struct permit_row *row);
 /* The highest weekly average of each limit that has several weeks. */
 void week_sentences(struct arena *a, const struct permit_month *m, struct sentences *out);

@@ -62,7 +62,8 @@ static void add_line(struct arena *a, struct lines *out, const char *s, size_t l
     *line = arena_bytes(a, s, length);
 }
 
-/* Where the line that begins at s ends: before the last space that leaves it narrow enough. */
+/* Where the line that begins at s ends: before the last space that leaves it narrow enough; a word
+ * that is too long ends after a stroke, if it has one (the names of files do). */
 static size_t line_end(const char *s, int width)
 {
     size_t fits = fitting(s, strlen(s), width);
@@ -72,6 +73,11 @@ static size_t line_end(const char *s, int width)
     while (end > 0 && s[end - 1] != ' ')
         end--;
     while (end > 0 && s[end - 1] == ' ')
+        end--;
+    if (end > 0)
+        return end;
+    end = fits;
+    while (end > 0 && s[end - 1] != '/')
         end--;
     return end > 0 ? end : fits;
 }

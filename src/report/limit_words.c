@@ -328,6 +328,7 @@ const char *judged_line(struct arena *a, const struct permit_month *m)
 const char *shortfall_line(struct arena *a, const struct permit_row *row)
 {
     return SAY(a, SHORTFALL_LINE, [PLACE_NAME] = limit_name(a, row->limit),
+               [PLACE_BOUND] = limit_bound(a, row->limit, true),
                [PLACE_TAKEN] = arena_print(a, "%ld", row->samples),
                [PLACE_REQUIRED] = arena_print(a, "%ld", row->required),
                [PLACE_FROM] = iso_day(a, row->from), [PLACE_TO] = iso_day(a, row->to));

@@ -168,8 +168,7 @@ static enum status take_aside(void *context, const struct row_text *row, enum re
     return OK;
 }
 
-const char *scene_read_path(struct scene *s, const char *path, const char *map,
-                            const char *dialect)
+const char *scene_read_path(struct scene *s, const char *path, const char *map, const char *dialect)
 {
     const struct intake_options options = {.map = map, .dialect = dialect, .today = s->today};
     const struct intake_sink sink = {.context = s, .reading = take_reading, .aside = take_aside};
@@ -177,8 +176,7 @@ const char *scene_read_path(struct scene *s, const char *path, const char *map,
     size_t folder = strlen(s->folder) + 1;
     text_clear(&s->said);
     s->readings = s->asides = 0;
-    enum status rc =
-        intake_readings(s->arena, path, s->plant, &options, &sink, &s->summary, &f);
+    enum status rc = intake_readings(s->arena, path, s->plant, &options, &sink, &s->summary, &f);
     if (rc == OK) {
         assert_int_equal(s->summary.rows, s->readings + s->asides);
         return s->said.at;
@@ -190,8 +188,7 @@ const char *scene_read_path(struct scene *s, const char *path, const char *map,
     return s->said.at;
 }
 
-const char *scene_read_with(struct scene *s, const char *text, const char *map,
-                            const char *dialect)
+const char *scene_read_with(struct scene *s, const char *text, const char *map, const char *dialect)
 {
     return scene_read_path(s, scene_file(s, "readings.csv", text),
                            map != NULL ? scene_file(s, "map.csv", map) : NULL,

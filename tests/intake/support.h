@@ -7,10 +7,10 @@
 
 struct scene {
     struct arena *arena;
-    char folder[64];       /* gone with the scene */
-    struct plant *plant;   /* see support.c */
-    day_t today;           /* 2025-06-30 */
-    struct text said;      /* the rows, or the fault with the folder's name taken off */
+    char folder[64];     /* gone with the scene */
+    struct plant *plant; /* see support.c */
+    day_t today;         /* 2025-06-30 */
+    struct text said;    /* the rows, or the fault with the folder's name taken off */
     struct intake_summary summary;
     long readings, asides;
 };

@@ -103,12 +103,12 @@ static void dates_are_read_as_listed(void **state)
         check(*state, dates[i].text, dates[i].dialect, dates[i].said, dates[i].told);
 }
 
-#define ROW_SEMI(value) "2025-03-04;EFF;TSS;" value ";mg/L\n"
-#define SEMI_COMMA      "long, semicolons, decimal comma, dates year-month-day, UTF-8"
-#define SEMI_POINT      "long, semicolons, decimal point, dates year-month-day, UTF-8"
-#define COMMA_POINT     "long, commas, decimal point, dates year-month-day, UTF-8"
+#define ROW_SEMI(value)   "2025-03-04;EFF;TSS;" value ";mg/L\n"
+#define SEMI_COMMA        "long, semicolons, decimal comma, dates year-month-day, UTF-8"
+#define SEMI_POINT        "long, semicolons, decimal point, dates year-month-day, UTF-8"
+#define COMMA_POINT       "long, commas, decimal point, dates year-month-day, UTF-8"
 #define SAID(line, value) line " 2025-03-04 EFF TSS " value " mg/L\n"
-#define ROW(value) "2025-03-04,EFF,TSS," value ",mg/L\n"
+#define ROW(value)        "2025-03-04,EFF,TSS," value ",mg/L\n"
 
 static const struct {
     const char *text, *dialect, *said, *told;
@@ -122,9 +122,9 @@ static const struct {
      SAID("2", "plain 28209.00") SAID("3", "plain 1674") SAID("4", "plain 2064100"), SEMI_COMMA},
     /* A decimal comma is certain here, what the point is is not. */
     {SEMI ROW_SEMI("1,5") ROW_SEMI("1.674"), NULL,
-     SAID("2", "plain 1.5")
-     "3 not-a-number: cannot read '1.674' as a number; if its mark parts thousands, state "
-     "thousands in a dialect file\n",
+     SAID("2", "plain 1.5") "3 not-a-number: cannot read '1.674' as a number; if its mark parts "
+                            "thousands, state "
+                            "thousands in a dialect file\n",
      SEMI_COMMA},
     {SEMI ROW_SEMI("1,5") ROW_SEMI("1.674"), FIELD "thousands,point\n",
      SAID("2", "plain 1.5") SAID("3", "plain 1674"), SEMI_COMMA},
@@ -134,8 +134,8 @@ static const struct {
      "with the other mark are then set aside",
      NULL},
     {SEMI ROW_SEMI("1,5") ROW_SEMI("2.5"), FIELD "decimal,comma\n",
-     SAID("2", "plain 1.5")
-     "3 not-a-number: cannot read '2.5' as a number: the decimal mark of the file is a comma\n",
+     SAID("2", "plain 1.5") "3 not-a-number: cannot read '2.5' as a number: the decimal mark of "
+                            "the file is a comma\n",
      SEMI_COMMA},
     /* 1,234 alone may be either. */
     {SEMI ROW_SEMI("<1,234") ROW_SEMI("7"), NULL,
@@ -158,8 +158,8 @@ static const struct {
      "thousands in a dialect file\n" SAID("3", "plain 2.5"),
      COMMA_POINT},
     {LONG ROW("\"2,5\"") ROW("2.5"), NULL,
-     "2 not-a-number: cannot read '2,5' as a number: the decimal mark of the file is a point\n"
-     SAID("3", "plain 2.5"),
+     "2 not-a-number: cannot read '2,5' as a number: the decimal mark of the file is a "
+     "point\n" SAID("3", "plain 2.5"),
      COMMA_POINT},
     {LONG ROW("\"2,5\"") ROW("7"), NULL, SAID("2", "plain 2.5") SAID("3", "plain 7"),
      "long, commas, decimal comma, dates year-month-day, UTF-8"},
@@ -172,9 +172,10 @@ static const struct {
      NULL},
     {SEMI ROW_SEMI("0.234") ROW_SEMI("1.234"), NULL,
      SAID("2", "plain 0.234") SAID("3", "plain 1.234"), SEMI_POINT},
-    {SEMI ROW_SEMI("1 234,5") ROW_SEMI("12\xc2\xa0" "345"),
-     FIELD "thousands,space\ndecimal,comma\n",
-     SAID("2", "plain 1234.5") SAID("3", "plain 12345"), SEMI_COMMA},
+    {SEMI ROW_SEMI("1 234,5") ROW_SEMI("12\xc2\xa0"
+                                       "345"),
+     FIELD "thousands,space\ndecimal,comma\n", SAID("2", "plain 1234.5") SAID("3", "plain 12345"),
+     SEMI_COMMA},
     {LONG ROW("\"12,34,567\""), FIELD "thousands,comma\n",
      "2 not-a-number: cannot read '12,34,567' as a number\n", COMMA_POINT},
 };
@@ -194,8 +195,9 @@ static void an_mdl_has_the_decimal_mark_of_its_file(void **state)
 static void a_skipped_column_settles_nothing(void **state)
 {
     const char *text = "Datum;TSS;Rest\n2025-03-04;1,5;2.5\n";
-    assert_said(scene_read_with(*state, text, "column,point,parameter,unit,sample,skip\n"
-                                              "TSS,EFF,TSS,mg/L,,\nRest,,,,,yes\n",
+    assert_said(scene_read_with(*state, text,
+                                "column,point,parameter,unit,sample,skip\n"
+                                "TSS,EFF,TSS,mg/L,,\nRest,,,,,yes\n",
                                 NULL),
                 "2:2 2025-03-04 EFF TSS plain 1.5 mg/L\n", text);
 }

@@ -40,10 +40,10 @@ static const struct {
     {"aaa,bbb,ccc\r\nzzz,yyy,xxx\r\n", "[aaa][bbb][ccc] 2:[zzz][yyy][xxx]"}, /* 1 */
     {"aaa,bbb,ccc\r\nzzz,yyy,xxx", "[aaa][bbb][ccc] 2:[zzz][yyy][xxx]"},     /* 2 */
     {"field_name,field_name2,field_name3\r\naaa,bbb,ccc\r\nzzz,yyy,xxx\r\n",
-     "[field_name][field_name2][field_name3] 2:[aaa][bbb][ccc] 3:[zzz][yyy][xxx]"}, /* 3 */
-    {"\"aaa\",\"bbb\",\"ccc\"\r\nzzz,yyy,xxx", "[aaa][bbb][ccc] 2:[zzz][yyy][xxx]"}, /* 5 */
+     "[field_name][field_name2][field_name3] 2:[aaa][bbb][ccc] 3:[zzz][yyy][xxx]"},        /* 3 */
+    {"\"aaa\",\"bbb\",\"ccc\"\r\nzzz,yyy,xxx", "[aaa][bbb][ccc] 2:[zzz][yyy][xxx]"},       /* 5 */
     {"\"aaa\",\"b\r\nbb\",\"ccc\"\r\nzzz,yyy,xxx", "[aaa][b\nbb][ccc] 3:[zzz][yyy][xxx]"}, /* 6 */
-    {"\"aaa\",\"b\"\"bb\",\"ccc\"", "[aaa][b\"bb][ccc]"}, /* 7 */
+    {"\"aaa\",\"b\"\"bb\",\"ccc\"", "[aaa][b\"bb][ccc]"},                                  /* 7 */
     /* Ours: no published source. */
     {"a;b\n1;2\n", "[a][b] 2:[1][2]"},
     {"a\tb\n1\t2\n", "[a][b] 2:[1][2]"},
@@ -74,8 +74,8 @@ static void tables_read_as_listed(void **state)
         assert_said(table_of(*state, tables[i].bytes), tables[i].reads, tables[i].bytes);
 }
 
-#define HEAD "date,point,parameter,value,unit,note\n"
-#define GOOD(n) "2025-03-0" n ",EFF,TSS," n ",mg/L,\n"
+#define HEAD          "date,point,parameter,value,unit,note\n"
+#define GOOD(n)       "2025-03-0" n ",EFF,TSS," n ",mg/L,\n"
 #define TOLD(line, n) line " 2025-03-0" n " EFF TSS plain " n " mg/L\n"
 #define BAD_QUOTES                                                                                 \
     "bad-quotes: a quote is not closed, or stands inside a cell that is not quoted | "
@@ -91,14 +91,14 @@ static const struct {
      TOLD("2", "1") "3 " BAD_QUOTES "2025-03-02,EFF,TSS,2,mg/L,\"6 inch\n" TOLD("4", "3")
          TOLD("5", "4")},
     /* Nor does one that a later quote seems to close. */
-    {HEAD "2025-03-01,EFF,TSS,1,mg/L,\"6 inch\n" GOOD("2")
-         "2025-03-03,EFF,TSS,3,mg/L,\"well, well\"\n" GOOD("4"),
+    {HEAD "2025-03-01,EFF,TSS,1,mg/L,\"6 inch\n" GOOD(
+         "2") "2025-03-03,EFF,TSS,3,mg/L,\"well, well\"\n" GOOD("4"),
      "2 " BAD_QUOTES "2025-03-01,EFF,TSS,1,mg/L,\"6 inch\n" TOLD("3", "2") TOLD("4", "3")
          TOLD("5", "4")},
     /* Two of them, the second among lines that are read again. */
     {HEAD "2025-03-01,EFF,TSS,1,mg/L,\"a\n" GOOD("2") "2025-03-03,EFF,TSS,3,mg/L,x\"\"\n" GOOD("4"),
-     "2 " BAD_QUOTES "2025-03-01,EFF,TSS,1,mg/L,\"a\n" TOLD("3", "2") "4 " BAD_QUOTES
-         "2025-03-03,EFF,TSS,3,mg/L,x\"\"\n" TOLD("5", "4")},
+     "2 " BAD_QUOTES "2025-03-01,EFF,TSS,1,mg/L,\"a\n" TOLD(
+         "3", "2") "4 " BAD_QUOTES "2025-03-03,EFF,TSS,3,mg/L,x\"\"\n" TOLD("5", "4")},
     /* A cell may hold a line end. */
     {HEAD "2025-03-01,EFF,TSS,1,mg/L,\"two\nlines\"\n" GOOD("2"), TOLD("2", "1") TOLD("4", "2")},
     {HEAD GOOD("1") "2025-03-02,EFF,TSS,2,mg/L,a\x07z\n" GOOD("3"),
@@ -109,8 +109,8 @@ static const struct {
     {"\xef\xbb\xbf" HEAD GOOD("1") "2025-03-02,EFF,TSS,2,mg/L,\xb5g\n" GOOD("3"),
      TOLD("2", "1") "3 " BAD_TEXT "2025-03-02,EFF,TSS,2,mg/L,\\xB5g\n" TOLD("4", "3")},
     {HEAD GOOD("1") "2025-03-02,EFF,TSS,2\n" GOOD("3"),
-     TOLD("2", "1") "3 wrong-columns: the row has 4 cells, the header 6 | 2025-03-02,EFF,TSS,2\n"
-                    TOLD("4", "3")},
+     TOLD("2", "1") "3 wrong-columns: the row has 4 cells, the header 6 | "
+                    "2025-03-02,EFF,TSS,2\n" TOLD("4", "3")},
     {HEAD GOOD("1") "2025-03-02,EFF,TSS,2,mg/L,,x\n2025-03-03,EFF,TSS,3,mg/L,,,\n",
      TOLD("2", "1") "3 wrong-columns: the row has 7 cells, the header 6 | "
                     "2025-03-02,EFF,TSS,2,mg/L,,x\n" TOLD("4", "3")},
@@ -143,8 +143,8 @@ static void a_cell_of_64_kB_is_read_and_a_longer_one_set_aside(void **state)
     assert_int_equal(s->readings, 1);
     /* A quote left open stops at a megabyte, and the lines behind it are read again. */
     scene_read(s, repeated(s, HEAD "2025-03-01,EFF,TSS,1,mg/L,\"", 'x', 100,
-                           arena_print(s->arena, "\n%s", repeated(s, GOOD("2"), '\n', 2000000,
-                                                                  GOOD("3")))));
+                           arena_print(s->arena, "\n%s",
+                                       repeated(s, GOOD("2"), '\n', 2000000, GOOD("3")))));
     assert_int_equal(s->asides, 1);
     assert_int_equal(s->readings, 2);
 }

@@ -43,13 +43,17 @@ static const struct {
     {"", POINT_MARK, "", "", "blank-value"},
     {"  ", POINT_MARK, "", "", "blank-value"},
     {"-3.1", POINT_MARK, "", "", "negative-value"},
-    {"\xe2\x88\x92" "3.1", POINT_MARK, "", "", "negative-value"},
+    {"\xe2\x88\x92"
+     "3.1",
+     POINT_MARK, "", "", "negative-value"},
     /* less and greater */
     {"<2", POINT_MARK, "", "", "less 2"},
     {"< 2.0", POINT_MARK, "", "", "less 2.0"},
     {"<=2", POINT_MARK, "", "", "less 2"},
     {"<= 2", POINT_MARK, "", "", "less 2"},
-    {"\xe2\x89\xa4" "2", POINT_MARK, "", "", "less 2"},
+    {"\xe2\x89\xa4"
+     "2",
+     POINT_MARK, "", "", "less 2"},
     {">2420", POINT_MARK, "", "", "greater 2420"},
     {">=2419.6", POINT_MARK, "", "", "greater 2419.6"},
     {"\xe2\x89\xa5 2", POINT_MARK, "", "", "greater 2"},
@@ -185,7 +189,11 @@ static void only_a_temperature_may_be_below_zero(void **state)
     struct reading r = {.unit = (uint16_t)unit_index(p.unit)};
     assert_int_equal(intake_value(&r, &p, "-1.5", false), REASON_COUNT);
     assert_int_equal(r.value.coefficient, -15);
-    assert_int_equal(intake_value(&r, &p, "\xe2\x88\x92" "1,5", true), REASON_COUNT);
+    assert_int_equal(intake_value(&r, &p,
+                                  "\xe2\x88\x92"
+                                  "1,5",
+                                  true),
+                     REASON_COUNT);
     assert_int_equal(r.value.coefficient, -15);
 }
 

@@ -141,6 +141,46 @@ static void what_cannot_be_worked_is_refused_with_advice(void **state)
          {"concentrations=5,6", "flows=1"},
          FAULT_FAILED,
          {"2 values", "has 1"}},
+        {"most-probable-number",
+         {"volumes=10,1,0.1", "tubes=5,5,5", "positives=5,5,5"},
+         FAULT_FAILED,
+         {"every tube", "greater than"}},
+        {"most-probable-number-thomas",
+         {"volumes=10,1,0.1", "tubes=5,5,5", "positives=0,0,0"},
+         FAULT_FAILED,
+         {"no tube", "less than"}},
+        {"most-probable-number",
+         {"volumes=10,1", "tubes=5,5", "positives=6,1"},
+         FAULT_FAILED,
+         {"row 1", "more positive tubes"}},
+        {"most-probable-number",
+         {"volumes=10,1", "tubes=5,5", "positives=2.5,1"},
+         FAULT_FAILED,
+         {"part of a tube"}},
+        {"membrane-filter-combined",
+         {"colonies=0,0", "volumes=10,100"},
+         FAULT_FAILED,
+         {"colony", "less than"}},
+        {"membrane-filter-combined",
+         {"colonies=201,300", "volumes=10,100"},
+         FAULT_FAILED,
+         {"200", "TNTC"}},
+        {"bod-from-dilutions",
+         {"initial_dos=8.0,8.0", "final_dos=6.1,0.9", "sample_volumes=50,300"},
+         FAULT_FAILED,
+         {"no bottle"}},
+        {"bod-from-dilutions",
+         {"initial_dos=8.0", "final_dos=5.0", "sample_volumes=50", "seed_correction=3.5"},
+         FAULT_FAILED,
+         {"seed"}},
+        {"oxygen-uptake-rate-by-slope",
+         {"times=2,2", "readings=7.8,7.1"},
+         FAULT_FAILED,
+         {"times", "the same"}},
+        {"percent-removal-paired",
+         {"influents=200,0", "effluents=20,1"},
+         FAULT_FAILED,
+         {"above 0"}},
         {"volatile-fraction", {"mlvss=2100", "mlss=2000"}, FAULT_FAILED, {"mlvss <= mlss"}},
         {"total-suspended-solids",
          {"filter=0.14", "dried=0.13", "volume=100"},
@@ -155,6 +195,30 @@ static void what_cannot_be_worked_is_refused_with_advice(void **state)
         for (size_t s = 0; s < 3 && cases[i].says[s]; s++)
             if (strstr(k.fault.text, cases[i].says[s]) == NULL)
                 fail_msg("\"%s\" does not say \"%s\"", k.fault.text, cases[i].says[s]);
+        arena_free(k.arena);
+    }
+}
+
+static void filters_are_chosen_by_the_counting_rules(void **state)
+{
+    (void)state;
+    /* Standard Methods 9222 D: 20 to 60 colonies in range; more than 200 are not read. By hand:
+     * 100 x colonies / mL. */
+    static const struct {
+        const char *words[WORDS_MOST], *value;
+    } cases[] = {
+        {{"colonies=20,60", "volumes=10,50"}, "400/3"}, /* both ends in range: 8000 / 60 */
+        {{"colonies=19,61", "volumes=10,50"}, "400/3"}, /* none in range: all of them */
+        {{"colonies=15,250", "volumes=10,100"}, "150"}, /* the second is not read */
+        {{"colonies=90,150", "volumes=5,10"}, "1800"},  /* all above: the smallest volume */
+        {{"colonies=70,30", "volumes=50,25", "high=80"}, "400/3"}, /* 10000 / 75 */
+    };
+    for (size_t i = 0; i < NELEM(cases); i++) {
+        struct asked k = ask("membrane-filter-combined", cases[i].words, false);
+        if (k.rc != OK)
+            fail_msg("%s", k.fault.text);
+        if (fraction_compare(k.result.value, fraction_parse(k.arena, cases[i].value)) != 0)
+            fail_msg("%s is not %s", cases[i].words[0], cases[i].value);
         arena_free(k.arena);
     }
 }
@@ -178,6 +242,7 @@ int main(void)
         cmocka_unit_test(metric_gives_the_twin_unit),
         cmocka_unit_test(figures_are_the_fewest_of_what_was_measured),
         cmocka_unit_test(what_cannot_be_worked_is_refused_with_advice),
+        cmocka_unit_test(filters_are_chosen_by_the_counting_rules),
         cmocka_unit_test(a_unit_may_stand_apart_from_its_number),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

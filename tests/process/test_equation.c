@@ -103,9 +103,15 @@ static void what_has_no_value_is_a_fault(void **state)
     static const struct {
         const char *text, *says;
     } cases[] = {
-        {"a / (b + 2)", "'b + 2' of 'sample'"}, {"a / (a - a)", "zero"},    {"(b + 2) ^ -1", "zero"},
-        {"sqrt(b)", "no finite"},     {"log10(b)", "no finite"},  {"log10(b + 2)", "no finite"},
-        {"b ^ 0.5", "no finite"},     {"exp(1000)", "no finite"}, {"10 ^ 400.5", "no finite"},
+        {"a / (b + 2)", "'b + 2' of 'sample'"},
+        {"a / (a - a)", "zero"},
+        {"(b + 2) ^ -1", "zero"},
+        {"sqrt(b)", "no finite"},
+        {"log10(b)", "no finite"},
+        {"log10(b + 2)", "no finite"},
+        {"b ^ 0.5", "no finite"},
+        {"exp(1000)", "no finite"},
+        {"10 ^ 400.5", "no finite"},
         {"10 ^ 400", "no finite"},
     };
     for (size_t i = 0; i < NELEM(cases); i++) {

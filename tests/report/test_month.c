@@ -102,8 +102,8 @@ static void daily_values_show_signs_codes_weekends_and_marks(void **state)
     struct sample s;
     char *text = month_text(&s, "2025-04-10");
     assert_string_equal(day_line(s.arena, text, "03-01"), "03-01 Sat 2.135 <0.010 6.8");
-    assert_string_equal(day_line(s.arena, text, "03-03"), "03-03 182.0 2.149 <2.0 11.0 <0.010 6.8");
-    assert_string_equal(day_line(s.arena, text, "03-10"), "03-10 189.0 2.107 6.5 8.0 E 6.9");
+    assert_string_equal(day_line(s.arena, text, "03-03"), "03-03 182 2.149 <2.0 11 <0.010 6.8");
+    assert_string_equal(day_line(s.arena, text, "03-10"), "03-10 189 2.107 6.5 8 E 6.9");
     assert_string_equal(day_line(s.arena, text, "03-18"), "03-18 4.163 0.031* 6.9");
     expect(text, "* beyond a daily or instantaneous limit in force on the day");
     free(text);
@@ -121,10 +121,9 @@ static void below_the_days_stand_mean_and_extremes(void **state)
     struct sample s;
     char *text = month_text(&s, "2025-04-10");
     assert_string_equal(day_line(s.arena, text, "mean"), "mean 195.7 2.595 <6 19.5 <0.001 >70");
-    assert_string_equal(day_line(s.arena, text, "lowest"),
-                        "lowest 182.0 2.100 <2.0 8.0 <0.010 6.8 12");
+    assert_string_equal(day_line(s.arena, text, "lowest"), "lowest 182 2.100 <2.0 8 <0.010 6.8 12");
     assert_string_equal(day_line(s.arena, text, "highest"),
-                        "highest 210.0 4.184 6.5 53.0 0.031 6.9 >2420");
+                        "highest 210 4.184 6.5 53 0.031 6.9 >2420");
     assert_string_equal(day_line(s.arena, text, "days"), "days 13 31 13 13 30 31 3");
     free(text);
     sample_free(&s);
@@ -135,7 +134,7 @@ static void readings_after_the_day_of_judgement_are_left_out(void **state)
     (void)state;
     struct sample s;
     char *text = month_text(&s, "2025-03-12");
-    assert_string_equal(day_line(s.arena, text, "03-12"), "03-12 191.0 2.121 6.5 10.0 <0.010 6.9");
+    assert_string_equal(day_line(s.arena, text, "03-12"), "03-12 191 2.121 6.5 10 <0.010 6.9");
     expect(text, "\n03-13\n03-14\n03-15 Sat\n");
     free(text);
     sample_free(&s);
