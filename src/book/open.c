@@ -224,11 +224,12 @@ enum status book_commit(struct book *b, struct fault *f)
 void book_rollback(struct book *b)
 {
     load_drop(b);
-    if (!b->db || sqlite3_get_autocommit(b->db))
-        return;
-    (void)sqlite3_exec(b->db, "ROLLBACK", NULL, NULL, NULL);
-    /* Where writing failed half way (a full disk) SQLite leaves the journal for the next look at the
-     * book: that is now. What cannot be put right now is put right by whoever opens the book next. */
-    if (b->mode == BOOK_WRITE)
+    if (b->db && !sqlite3_get_autocommit(b->db))
+        (void)sqlite3_exec(b->db, "ROLLBACK", NULL, NULL, NULL);
+    /* Where writing failed half way (a full disk) SQLite leaves the journal for the next look at
+     * the book: that is now. What cannot be put right now is put right by whoever opens the book
+     * next. */
+    if (b->half_written)
         (void)sqlite3_exec(b->db, "PRAGMA user_version", NULL, NULL, NULL);
+    b->half_written = false;
 }

@@ -16,6 +16,8 @@ struct book {
     enum book_mode mode;
     sqlite3_stmt *statement[STATEMENTS];
     struct load *load; /* NULL: none is under way */
+    bool half_written; /* a write failed: pages of it may stand in the file, with a journal beside
+                          it */
 };
 
 /* ---- opening (open.c), formats (schema.c) ---- */

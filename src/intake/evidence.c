@@ -107,19 +107,19 @@ static enum status either_order(const struct sighting *s, const char *path, stru
     const struct place where = {path, s->line, s->column};
     struct date_parts parts;
     day_t day = 0;
-    char month_first[11] = "";
-    char day_first[11] = "";
+    char by_month[11] = "";
+    char by_day[11] = "";
     if (!date_split(s->text, &parts))
         return fault_at(f, &where, NULL, "cannot read '%s' as a date", s->text);
     if (date_read(&parts, ORDER_MDY, false, &day) == DATE_FINE)
-        day_write(day, month_first);
+        day_write(day, by_month);
     if (date_read(&parts, ORDER_DMY, false, &day) == DATE_FINE)
-        day_write(day, day_first);
+        day_write(day, by_day);
     return fault_at(
         f, &where,
         "put the lines 'field,value' and 'date_order,mdy' (or dmy) in a file and give it"
         " with --dialect",
-        "'%s' is %s or %s, and no date of the file settles it", s->text, month_first, day_first);
+        "'%s' is %s or %s, and no date of the file settles it", s->text, by_month, by_day);
 }
 
 enum status evidence_order(const struct evidence *e, const char *path, enum date_order *out,

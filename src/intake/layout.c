@@ -236,7 +236,7 @@ static enum status take_headings(struct header *h, struct fault *f)
     if (row->problem != REASON_COUNT)
         return fault_at(f, &where, reason_todo[row->problem], "%s", row_problem(row->problem));
     if (row->count > COLUMNS_MAX)
-        return fault_at(f, &where, "split the file", "more than %d columns", COLUMNS_MAX);
+        return fault_at(f, &where, "split the file", "more than %zu columns", COLUMNS_MAX);
     l->columns = row->count;
     l->column = arena_alloc(h->arena, (row->count + 1) * sizeof *l->column);
     for (size_t i = 0; i < row->count; i++) {

@@ -200,7 +200,6 @@ enum status reader_give(struct reader *r, enum reason reason, struct fault *f)
 enum status reader_raw_aside(struct reader *r, const struct row *row, struct fault *f)
 {
     enum reason reason = row->problem;
-    char counts[96];
     for (size_t i = 0; i < LONG_COLUMNS; i++)
         r->text.cell[i] = "";
     r->text.line = row->line;
@@ -209,6 +208,7 @@ enum status reader_raw_aside(struct reader *r, const struct row *row, struct fau
     if (reason != REASON_COUNT) {
         reader_tell(r, reason, row_problem(reason), NULL, "");
     } else {
+        char counts[96];
         reason = REASON_WRONG_COLUMNS;
         snprintf(counts, sizeof counts, "the row has %zu cells, the header %zu", row->count,
                  r->layout.columns);

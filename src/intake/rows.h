@@ -10,7 +10,7 @@
 #include <csv.h>
 
 #define CELL_BYTES_MAX ((size_t)1 << 16)
-#define COLUMNS_MAX    2000
+#define COLUMNS_MAX    ((size_t)2000)
 
 struct row {
     long line; /* where it begins */

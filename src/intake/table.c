@@ -28,7 +28,7 @@ static enum status add_row(struct table_draft *d, const char *path, const struct
         return fault_at(f, &where, reason_todo[row->problem], "%s", row_problem(row->problem));
     if (t->header == NULL) {
         if (row->count > COLUMNS_MAX)
-            return fault_at(f, &where, "split the file", "more than %d columns", COLUMNS_MAX);
+            return fault_at(f, &where, "split the file", "more than %zu columns", COLUMNS_MAX);
         t->columns = row->count;
         while (t->columns > 0 && row->cell[t->columns - 1][0] == '\0')
             t->columns--;

@@ -114,7 +114,7 @@ static void summary_head(struct next_line *at, const struct month_input *in)
 
 static void summary_sheet(struct sheets *s, const struct month_input *in)
 {
-    enum { WORD_WIDTH = 16, LINE_WIDTH = 88 };
+    enum { WORD_WIDTH = 16, LINE_WIDTH = 88, ROWS_ON_A_PAGE = 72 };
     struct arena *a = s->arena;
     struct sentences weeks = {0};
     struct sentences cautions = {0};
@@ -137,6 +137,7 @@ static void summary_sheet(struct sheets *s, const struct month_input *in)
     footer_sentences(a, in, &foot);
     for (size_t i = 0; i < foot.count; i++)
         line(&at, foot.at[i], (struct look){.kind = LOOK_TEXT, .wraps = true});
+    worksheet_fit_to_pages(at.sheet, 1, at.row <= ROWS_ON_A_PAGE); /* signed on one page */
 }
 
 static void rules_sheet(struct sheets *s, const struct month_input *in)

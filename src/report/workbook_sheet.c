@@ -11,7 +11,7 @@
 enum {
     CELL_CHARACTERS_MOST = 32000, /* a cell holds 32,767 */
     PRINT_CHARACTERS_MOST = 255,  /* of a header or footer */
-    TEXT_WIDTH_MOST = 32,
+    TEXT_WIDTH_MOST = 40,
     LINE_POINTS = 15, /* the height of a line in the default face */
     ROWS_ON_A_PAGE = 48,
     PAGE_CHARACTERS = 290 /* across a landscape page at the smallest size still read */
@@ -234,12 +234,13 @@ void sheet_width(struct sheets *s, struct lxw_worksheet *sheet, uint16_t column,
     check(s, worksheet_set_column(sheet, column, column, width, NULL));
 }
 
-/* Programs do not all work out the height of a row of wrapped text: it is said. A bold or wide
- * letter takes more than a column, so lines are counted a little narrower than they are. */
+/* Programs do not all work out the height of a row of wrapped text: it is said. Widths are counted
+ * in digits; running text is narrower, a short bold word may be wider. */
 static int lines_in(const struct sheets *s, const char *text, int width)
 {
+    enum { RUNNING_TEXT = 40 };
     struct lines lines;
-    layout_wrap(s->arena, text, width > 12 ? width - 1 - width / 24 : width, &lines);
+    layout_wrap(s->arena, text, width < RUNNING_TEXT ? width : width + width / 16, &lines);
     return (int)lines.count;
 }
 

@@ -198,7 +198,7 @@ static void memory_does_not_grow_with_the_file(void **state)
     assert_int_equal(s->summary.rows, ROWS);
     assert_true(c.calls > 1 && c.last == 100);
     assert_true(arena_used(s->arena) - used < 1024);
-    assert_true(after.ru_maxrss - before.ru_maxrss < 20 * 1024); /* kilobytes */
+    assert_true(after.ru_maxrss - before.ru_maxrss < 20L * 1024); /* kilobytes */
     text_free(&t);
 }
 

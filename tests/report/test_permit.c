@@ -112,7 +112,10 @@ static void the_worst_news_comes_first(void **state)
         "\nTargets passed",
         "\nEvery limit of the month\n",
         "EFF: Final effluent, outfall 001\n",
-        "Mar 16-22        51 mg/L       at most 45 mg/L    3/3  EXCEEDED\n",
+        "TSS           weekly average   Mar 16-22",
+        "51 mg/L",
+        "at most 45 mg/L",
+        "3/3  EXCEEDED\n",
         "\nHighest weekly averages\n",
         /* 49, 51 and 53: the mean is 51 */
         "EFF TSS, weekly average: highest 51 mg/L, 2025-03-16 to 2025-03-22\n",

@@ -1,0 +1,92 @@
+/* mutations: files spoilt at random, from a seed. Whatever the bytes, the reader must come back
+ * with a fault of one line, or with rows that were each handed over once; never with a crash or a
+ * hang. Set WEIRBOOK_MUTATIONS to try more. */
+#include <setjmp.h>
+#include <stdarg.h>
+#include <stddef.h>
+#include <stdint.h>
+
+#include <cmocka.h>
+
+#include "support.h"
+
+#include <stdlib.h>
+#include <string.h>
+
+enum { MUTATIONS = 3000, CHANGES_MOST = 6 };
+
+static const char *const sound[] = {
+    "date,time,point,parameter,value,unit,sample,mdl,rl,note\n"
+    "2025-03-04,08:00,EFF,TSS,<9.6,mg/L,composite,0.1,1.0,\"a, \"\"b\"\"\nc\"\n"
+    "3/14/2025,7:30 PM,EFF,CU,ND,ug/L,,,,\n14/3/2025,,INF,FLOW,650621,kgal,,,,=x\n"
+    "2025-03-05T07:30,,EFF,ECOLI,TNTC,MPN/100mL,,,2420,\n2025-03-06,,EFF,TSS,code 9,,,,,\n",
+    "Datum;EFF TSS [mg/L];EFF FLOW;EFF CU\n04.03.2025;3,14;28.209,00;DNQ 0,5\n"
+    "05.03.2025 07:30;<5,0;1.234;\xb5\n06.03.2025;;;E 3\n",
+    "date\tEFF TSS\tEFF PH\r\n03/14/2025\t1,234\t7.1\r\n03/15/2025\t\"1,234.5\"\t\r\n",
+};
+
+/* What does most harm to a reader of CSV, and a few bytes of anything. */
+static const char harmful[] = "\"\"\",;\t\n\r' \x80\xc3\xff\x01<>=-0123456789.,/:EeDNQ";
+
+static uint32_t next(uint32_t *seed)
+{
+    *seed = *seed * 1664525U + 1013904223U;
+    return *seed >> 8;
+}
+
+static void spoil(struct text *t, uint32_t *seed)
+{
+    size_t at = next(seed) % t->length;
+    char c = harmful[next(seed) % (sizeof harmful - 1)];
+    switch (next(seed) % 4) {
+    case 0:
+        t->at[at] = c;
+        break;
+    case 1: /* put in */
+        text_add_char(t, c);
+        memmove(t->at + at + 1, t->at + at, t->length - 1 - at);
+        t->at[at] = c;
+        break;
+    case 2: /* taken out */
+        memmove(t->at + at, t->at + at + 1, t->length - at);
+        t->length -= t->length > 1;
+        break;
+    default: /* cut off, now and then */
+        if (next(seed) % 8 == 0 && at > 0)
+            t->at[t->length = at] = '\0';
+        break;
+    }
+}
+
+static void spoilt_files_lose_no_row(void **state)
+{
+    struct scene *s = *state;
+    const char *asked = getenv("WEIRBOOK_MUTATIONS");
+    long count = asked != NULL ? strtol(asked, NULL, 10) : MUTATIONS;
+    uint32_t seed = 4242;
+    long rows = 0;
+    struct text t;
+    text_init(&t, 1 << 16);
+    for (long i = 0; i < count; i++) {
+        text_clear(&t);
+        text_add(&t, sound[(size_t)i % NELEM(sound)]);
+        for (uint32_t k = next(&seed) % CHANGES_MOST; k > 0 && t.length > 1; k--)
+            spoil(&t, &seed);
+        const char *path = scene_bytes(s, "spoilt.csv", t.at, t.length);
+        scene_read_path(s, path, NULL, NULL); /* checks the counts, or the fault */
+        rows += s->readings + s->asides;
+        if (s->summary.rows > 0)
+            assert_true(text_is_utf8(s->said.at, s->said.length));
+    }
+    assert_true(rows > count); /* most files are still read */
+    print_message("%ld files, %ld rows\n", count, rows);
+    text_free(&t);
+}
+
+int main(void)
+{
+    const struct CMUnitTest tests[] = {
+        cmocka_unit_test(spoilt_files_lose_no_row),
+    };
+    return cmocka_run_group_tests(tests, scene_setup, scene_teardown);
+}
