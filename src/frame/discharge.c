@@ -64,6 +64,15 @@ static void mark_flow(struct frame *f, const struct column *c)
     }
 }
 
+/* Only where water leaves the works does a flow of 0 mean no discharge: a waste pump at rest, or an
+ * influent meter at 0, is a flow of 0 and nothing more. */
+static bool discharges(const struct point *p)
+{
+    bool river = p->role == ROLE_UPSTREAM || p->role == ROLE_DOWNSTREAM;
+
+    return p->role == ROLE_EFFLUENT || (*p->outfall != '\0' && !river);
+}
+
 void discharge_mark(struct frame *f)
 {
     for (size_t i = 0; i < f->column_count; i++)
@@ -71,7 +80,7 @@ void discharge_mark(struct frame *f)
     for (size_t i = 0; i < f->plant->point_count; i++) {
         int parameter = own_flow(f, (int)i, f->first, f->last);
 
-        if (parameter >= 0)
+        if (parameter >= 0 && discharges(&f->plant->points[i]))
             mark_flow(f, frame_column(f, (int)i, parameter));
     }
 }

@@ -179,12 +179,15 @@ static size_t distinct_figures(const struct month_input *in, size_t *which, size
     return count;
 }
 
+/* The catalogue's name with spaces, so that a title can be broken. */
 static const char *figure_title(struct arena *a, const struct process_figure *f)
 {
+    char *name = arena_text(a, f->name);
+    for (char *c = name; *c != '\0'; c++)
+        *c = *c == '-' ? ' ' : *c;
     const char *what =
         f->parameter[0] == '\0' ? f->at : arena_print(a, "%s %s", f->at, f->parameter);
-    return SAY(a,
-               PROCESS_TITLE, [PLACE_NAME] = f->name, [PLACE_WHAT] = what, [PLACE_UNIT] = f->unit);
+    return SAY(a, PROCESS_TITLE, [PLACE_NAME] = name, [PLACE_WHAT] = what, [PLACE_UNIT] = f->unit);
 }
 
 /* The month's mean and extremes under the days of a figure. */

@@ -240,7 +240,7 @@ static int lines_in(const struct sheets *s, const char *text, int width)
 {
     enum { RUNNING_TEXT = 40 };
     struct lines lines;
-    layout_wrap(s->arena, text, width < RUNNING_TEXT ? width : width + width / 16, &lines);
+    layout_wrap(s->arena, text, width < RUNNING_TEXT ? width : width + width / 8, &lines);
     return (int)lines.count;
 }
 

@@ -20,7 +20,8 @@ struct plant_draft *draft_with(struct arena *a, enum plant_file file, const char
              "TSS,Total suspended solids,mg/L,1,mean,arithmetic,00530,0,100000,,,\n"
              "ECOLI,E. coli,MPN/100mL,0,geometric,geometric,51040,0,,,1,");
     add_rows(d, PLANT_FIELDS, false, 2, "name,Marrow Bend\npermit,XX0000000\nunits,us");
-    add_rows(d, PLANT_POINTS, false, 2, "INF,Raw influent,influent,\nEFF,Final effluent,effluent,001");
+    add_rows(d, PLANT_POINTS, false, 2,
+             "INF,Raw influent,influent,\nEFF,Final effluent,effluent,001");
     add_rows(d, PLANT_LIMITS, false, 2,
              "001,EFF,BOD5,concentration,monthly-average,max,30.0,mg/L\n"
              "001,EFF,TSS,concentration,weekly-average,max,45,mg/L");
@@ -109,8 +110,11 @@ static void value_of(struct reading *r, const char *text)
     static const struct {
         const char *before;
         enum qualifier qualifier;
-    } forms[] = {{"<", QUALIFIER_LESS},      {">", QUALIFIER_GREATER}, {"DNQ", QUALIFIER_DNQ},
-                 {"E", QUALIFIER_ESTIMATED}, {"", QUALIFIER_PLAIN}};
+    } forms[] = {{"<", QUALIFIER_LESS},
+                 {">", QUALIFIER_GREATER},
+                 {"DNQ", QUALIFIER_DNQ},
+                 {"E", QUALIFIER_ESTIMATED},
+                 {"", QUALIFIER_PLAIN}};
     r->text = text;
     if (strcmp(text, "withdrawn") == 0) {
         r->qualifier = QUALIFIER_WITHDRAWN;
@@ -179,8 +183,8 @@ static enum reason reason_of(const char *word)
     return REASON_COUNT;
 }
 
-static void add_aside(struct shelf *s, struct book *b, const struct row_text *from, char **word, size_t count,
-                      enum reason reason, const char *why)
+static void add_aside(struct shelf *s, struct book *b, const struct row_text *from, char **word,
+                      size_t count, enum reason reason, const char *why)
 {
     struct row_text row = *from;
     for (size_t i = 0; i < LONG_COLUMNS; i++)
@@ -189,10 +193,13 @@ static void add_aside(struct shelf *s, struct book *b, const struct row_text *fr
     good(s, book_load_aside(b, &row, reason, why, &s->fault));
 }
 
-static char add_line(struct shelf *s, struct book *b, const struct row_text *row, char **word, size_t count)
+static char add_line(struct shelf *s, struct book *b, const struct row_text *row, char **word,
+                     size_t count)
 {
-    static const char letters[] = {
-        [BOOK_ACCEPTED] = 'A', [BOOK_PRESENT] = 'P', [BOOK_REVISED] = 'R', [BOOK_CONTRADICTS] = 'C'};
+    static const char letters[] = {[BOOK_ACCEPTED] = 'A',
+                                   [BOOK_PRESENT] = 'P',
+                                   [BOOK_REVISED] = 'R',
+                                   [BOOK_CONTRADICTS] = 'C'};
     enum book_outcome outcome = BOOK_ACCEPTED;
     struct book_clash clash = {0};
     if (strncmp(word[0], "aside:", 6) == 0) {
@@ -205,7 +212,8 @@ static char add_line(struct shelf *s, struct book *b, const struct row_text *row
     good(s, book_load_reading(b, &r, &outcome, &clash, &s->fault));
     if (outcome == BOOK_CONTRADICTS)
         add_aside(s, b, row, word, count, REASON_CONTRADICTS,
-                  arena_print(s->arena, "holds '%s' %s (%s:%ld)", clash.text, clash.unit, clash.file, clash.line));
+                  arena_print(s->arena, "holds '%s' %s (%s:%ld)", clash.text, clash.unit,
+                              clash.file, clash.line));
     return letters[outcome];
 }
 
@@ -227,9 +235,11 @@ const char *add_lines(struct shelf *s, struct book *b, const char *file, const c
     return told;
 }
 
-enum status end_load(struct shelf *s, struct book *b, const char *file, const char *reason, long rows)
+enum status end_load(struct shelf *s, struct book *b, const char *file, const char *reason,
+                     long rows)
 {
-    struct book_source source = {.file = file, .bytes = 100, .dialect_told = "long", .reason = reason ? reason : ""};
+    struct book_source source = {
+        .file = file, .bytes = 100, .dialect_told = "long", .reason = reason ? reason : ""};
     snprintf((char *)source.digest, sizeof source.digest, "%s", file);
     return book_load_end(b, &source, rows, &s->counts, &s->batch, &s->fault);
 }
@@ -259,11 +269,12 @@ static enum status tell_reading(void *context, const struct reading *r, struct f
         decimal_write(r->mdl, mdl);
     if (r->has_rl)
         decimal_write(r->rl, rl);
-    text_print(t, "%d %d %s %s #%s v%d '%s' %s%c %s %s mdl %s rl %s", r->point, r->parameter, date, time, r->sample,
-               r->version, r->text, qualifier_words[r->qualifier], r->code ? r->code : ' ', value,
-               unit_at(r->unit)->name, mdl, rl);
+    text_print(t, "%d %d %s %s #%s v%d '%s' %s%c %s %s mdl %s rl %s", r->point, r->parameter, date,
+               time, r->sample, r->version, r->text, qualifier_words[r->qualifier],
+               r->code ? r->code : ' ', value, unit_at(r->unit)->name, mdl, rl);
     text_print(t, " [%s|%s|%s|%s|%s] %s:%ld batch %d\n", r->detail->method, r->detail->analyst,
-               r->detail->collected_by, r->detail->analyzed, r->detail->note, r->file, r->line, (int)r->batch);
+               r->detail->collected_by, r->detail->analyzed, r->detail->note, r->file, r->line,
+               (int)r->batch);
     return OK;
 }
 
@@ -271,8 +282,8 @@ static enum status tell_aside(void *context, const struct book_aside *a, struct 
 {
     struct text *t = context;
     (void)f;
-    text_print(t, "aside %s:%ld:%d %s (%s) batch %d:", a->row.file, a->row.line, a->row.column, a->reason,
-               a->explanation, (int)a->batch);
+    text_print(t, "aside %s:%ld:%d %s (%s) batch %d:", a->row.file, a->row.line, a->row.column,
+               a->reason, a->explanation, (int)a->batch);
     for (size_t i = 0; i < LONG_COLUMNS; i++)
         text_print(t, " %s", a->row.cell[i]);
     text_print(t, " %s\n", a->row.raw);
@@ -285,9 +296,9 @@ static enum status tell_revision(void *context, const struct book_revision *r, s
     char date[11];
     (void)f;
     day_write(r->day, date);
-    text_print(t, "revised %s %d %d %d #%s '%s' to '%s' %s by %s at %s: %s, %s:%ld v%d\n", date, r->minute, r->point,
-               r->parameter, r->sample, r->old_text, r->new_text, r->unit, r->who, r->when, r->reason, r->file,
-               r->line, r->version);
+    text_print(t, "revised %s %d %d %d #%s '%s' to '%s' %s by %s at %s: %s, %s:%ld v%d\n", date,
+               r->minute, r->point, r->parameter, r->sample, r->old_text, r->new_text, r->unit,
+               r->who, r->when, r->reason, r->file, r->line, r->version);
     return OK;
 }
 
@@ -329,7 +340,8 @@ static enum status tell_finding(void *context, const struct book_finding *x, str
 {
     (void)f;
     if (!x->good)
-        text_print(context, "%s %d %s:%ld: %s\n", x->what, (int)x->batch, x->file, x->line, x->note);
+        text_print(context, "%s %d %s:%ld: %s\n", x->what, (int)x->batch, x->file, x->line,
+                   x->note);
     return OK;
 }
 
@@ -430,11 +442,14 @@ const char *raw_text(struct shelf *s, const char *sql)
 void tamper(struct shelf *s, const char *table, const char *sql)
 {
     sqlite3 *db = raw_open(s);
-    const char *name = first_text(s, db, "SELECT group_concat('DROP TRIGGER ' || name || ';', ' ') FROM sqlite_schema "
-                                         "WHERE type = 'trigger' AND tbl_name = ?1",
-                                  table);
-    const char *text = first_text(s, db, "SELECT group_concat(sql || ';', ' ') FROM sqlite_schema "
-                                         "WHERE type = 'trigger' AND tbl_name = ?1",
+    const char *name =
+        first_text(s, db,
+                   "SELECT group_concat('DROP TRIGGER ' || name || ';', ' ') FROM sqlite_schema "
+                   "WHERE type = 'trigger' AND tbl_name = ?1",
+                   table);
+    const char *text = first_text(s, db,
+                                  "SELECT group_concat(sql || ';', ' ') FROM sqlite_schema "
+                                  "WHERE type = 'trigger' AND tbl_name = ?1",
                                   table);
     assert_non_null(name);
     run(db, name);

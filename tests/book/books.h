@@ -2,7 +2,8 @@
  * are lines of
  *     POINT PARAMETER DATE VALUE UNIT [@HH:MM] [#SAMPLE] [note:WORD] [mdl:NUMBER] [rl:NUMBER]
  * VALUE is 12.5, <2, >2420, E12, DNQ0.4, a no-data code as code:C, or withdrawn. A line that begins
- * with "aside:REASON " is a row set aside, its cells parted by blanks in the order of a long file. */
+ * with "aside:REASON " is a row set aside, its cells parted by blanks in the order of a long file.
+ */
 #ifndef WEIRBOOK_TESTS_BOOKS_H
 #define WEIRBOOK_TESTS_BOOKS_H
 
@@ -40,18 +41,20 @@ struct plant_draft *draft_with(struct arena *a, enum plant_file file, const char
 /* Succeeds, or fails the test with the fault. */
 void good(struct shelf *s, enum status rc);
 struct book *shelf_open(struct shelf *s, enum book_mode mode);
-/* Loads lines as a file, line 2 first. What became of each, as letters: accepted A, present P, revised R,
- * contradicts C (which is then set aside), set aside S. reason: NULL, or why it revises. */
+/* Loads lines as a file, line 2 first. What became of each, as letters: accepted A, present P,
+ * revised R, contradicts C (which is then set aside), set aside S. reason: NULL, or why it revises.
+ */
 const char *shelf_load(struct shelf *s, const char *file, const char *reason, const char *lines);
 /* The same on an open book, up to its end; the load is still under way. */
 const char *add_lines(struct shelf *s, struct book *b, const char *file, const char *lines);
 /* Ends a load that add_lines fed. */
-enum status end_load(struct shelf *s, struct book *b, const char *file, const char *reason, long rows);
+enum status end_load(struct shelf *s, struct book *b, const char *file, const char *reason,
+                     long rows);
 
 /* All that the program can read of the book, as text; NULL with a fault. */
 const char *shelf_told(struct shelf *s, struct fault *f);
-/* All bad findings of a check, one a line: "what batch file:line: note"; "" when it is sound. A book
- * that cannot be opened or checked gives the fault. */
+/* All bad findings of a check, one a line: "what batch file:line: note"; "" when it is sound. A
+ * book that cannot be opened or checked gives the fault. */
 const char *shelf_check(struct shelf *s);
 
 /* Whole files. */
@@ -59,7 +62,8 @@ uint8_t *file_bytes(struct arena *a, const char *path, size_t *length);
 void file_write(const char *path, const void *bytes, size_t length);
 void same_file(const char *path, const uint8_t *bytes, size_t length);
 
-/* Straight into the file, as with the sqlite3 shell. raw_text gives the first column of the first row. */
+/* Straight into the file, as with the sqlite3 shell. raw_text gives the first column of the first
+ * row. */
 void raw(struct shelf *s, const char *sql);
 const char *raw_text(struct shelf *s, const char *sql);
 /* Changes a table behind the back of its triggers, which stand again afterwards. */

@@ -13,7 +13,8 @@ static void fill(struct shelf *s)
     shelf_load(s, "a.csv", NULL,
                "EFF BOD5 2025-03-05 30.0 mg/L note:spiked\nEFF TSS 2025-03-05 <2 mg/L mdl:2\n"
                "INF TSS 2025-03-05 200 mg/L #b\naside:not-a-number 2025-03-06 - EFF BOD5 1O mg/L");
-    shelf_load(s, "b.csv", "typing error", "EFF BOD5 2025-03-05 3.0 mg/L\nEFF ECOLI 2025-03-05 code:E MPN/100mL");
+    shelf_load(s, "b.csv", "typing error",
+               "EFF BOD5 2025-03-05 3.0 mg/L\nEFF ECOLI 2025-03-05 code:E MPN/100mL");
     shelf_load(s, "c.csv", NULL, "EFF FLOW 2025-03-05 2.4 MGD");
 }
 
@@ -56,65 +57,93 @@ static void whatever_is_changed_is_named(void **state)
         const char *table, *sql, *line;
     } cases[] = {
         {"reading", "UPDATE reading SET value = '31.0' WHERE id = 1",
-         "reading 2 a.csv:2: EFF BOD5 on 2025-03-05, '31.0' (reading 1), is not what was loaded; go back to a sound copy\n"},
-        {"reading", "UPDATE reading SET coefficient = 301 WHERE id = 1", "reading 2 a.csv:2: EFF BOD5 on 2025-03-05"},
+         "reading 2 a.csv:2: EFF BOD5 on 2025-03-05, '31.0' (reading 1), is not what was loaded; "
+         "go back to a sound copy\n"},
+        {"reading", "UPDATE reading SET coefficient = 301 WHERE id = 1",
+         "reading 2 a.csv:2: EFF BOD5 on 2025-03-05"},
         {"reading", "UPDATE reading SET scale = 2 WHERE id = 1", "reading 2 a.csv:2: "},
         {"reading", "UPDATE reading SET qualifier = 2 WHERE id = 2", "reading 2 a.csv:3: EFF TSS"},
-        {"reading", "UPDATE reading SET day = day + 1 WHERE id = 2", "reading 2 a.csv:3: EFF TSS on 2025-03-06"},
+        {"reading", "UPDATE reading SET day = day + 1 WHERE id = 2",
+         "reading 2 a.csv:3: EFF TSS on 2025-03-06"},
         {"reading", "UPDATE reading SET minute = 1 WHERE id = 2", "reading 2 a.csv:3: "},
         {"reading", "UPDATE reading SET mdl = 3 WHERE id = 2", "reading 2 a.csv:3: "},
         {"reading", "UPDATE reading SET line = 99 WHERE id = 2", "reading 2 a.csv:99: "},
-        {"reading", "UPDATE reading SET unit = (SELECT id FROM unit_code WHERE name = 'MGD') WHERE id = 3", "reading 2 a.csv:4: "},
-        {"reading", "UPDATE reading SET series = 1, version = 7 WHERE id = 3", "reading 2 a.csv:4: EFF BOD5"},
+        {"reading",
+         "UPDATE reading SET unit = (SELECT id FROM unit_code WHERE name = 'MGD') WHERE id = 3",
+         "reading 2 a.csv:4: "},
+        {"reading", "UPDATE reading SET series = 1, version = 7 WHERE id = 3",
+         "reading 2 a.csv:4: EFF BOD5"},
         {"reading", "UPDATE reading SET detail = NULL WHERE id = 1", "reading 2 a.csv:2: "},
         {"reading", "UPDATE reading SET code = 'D' WHERE id = 5", "reading 3 b.csv:3: EFF ECOLI"},
         {"reading", "UPDATE reading SET version = 5 WHERE id = 4", "reading 3 b.csv:2: "},
         {"reading", "UPDATE reading SET batch = 4 WHERE id = 5", "reading 3 b.csv:3: "},
         {"reading", "UPDATE reading SET mark = 1 WHERE id = 6", "reading 4 c.csv:2: EFF FLOW"},
-        {"reading", "DELETE FROM reading WHERE id = 2", "reading 2 a.csv:0: 1 of its 3 readings are missing"},
-        {"reading", "DELETE FROM reading WHERE id = 6", "reading 4 c.csv:0: 1 of its 1 readings are missing"},
+        {"reading", "DELETE FROM reading WHERE id = 2",
+         "reading 2 a.csv:0: 1 of its 3 readings are missing"},
+        {"reading", "DELETE FROM reading WHERE id = 6",
+         "reading 4 c.csv:0: 1 of its 1 readings are missing"},
         {"reading",
-         "INSERT INTO reading SELECT 7, series, day + 1, minute, 0, batch, line, qualifier, code, value, coefficient, scale, "
+         "INSERT INTO reading SELECT 7, series, day + 1, minute, 0, batch, line, qualifier, code, "
+         "value, coefficient, scale, "
          "unit, mdl, mdl_scale, rl, rl_scale, detail, mark FROM reading WHERE id = 1",
          "reading 0 :0: number 7 belongs to no batch"},
-        {"point_code", "UPDATE point_code SET name = 'INF2' WHERE name = 'INF'", "reading 2 a.csv:4: INF2 TSS"},
-        {"parameter_code", "UPDATE parameter_code SET name = 'TDS' WHERE name = 'TSS'", "reading 2 a.csv:3: EFF TDS"},
-        {"unit_code", "UPDATE unit_code SET name = 'ug/L' WHERE name = 'mg/L'", "reading 2 a.csv:2: "},
+        {"point_code", "UPDATE point_code SET name = 'INF2' WHERE name = 'INF'",
+         "reading 2 a.csv:4: INF2 TSS"},
+        {"parameter_code", "UPDATE parameter_code SET name = 'TDS' WHERE name = 'TSS'",
+         "reading 2 a.csv:3: EFF TDS"},
+        {"unit_code", "UPDATE unit_code SET name = 'ug/L' WHERE name = 'mg/L'",
+         "reading 2 a.csv:2: "},
         {"series", "UPDATE series SET sample = 'c' WHERE sample = 'b'", "reading 2 a.csv:4: "},
         {"detail", "UPDATE detail SET note = 'spoilt'", "reading 2 a.csv:2: "},
-        {"aside", "UPDATE aside SET value = '10'", "row set aside 2 a.csv:5: row 1 set aside is not what was loaded"},
+        {"aside", "UPDATE aside SET value = '10'",
+         "row set aside 2 a.csv:5: row 1 set aside is not what was loaded"},
         {"aside", "UPDATE aside SET day = NULL", "row set aside 2 a.csv:5: "},
         {"aside", "UPDATE aside SET explanation = ''", "row set aside 2 a.csv:5: "},
-        {"aside", "DELETE FROM aside", "row set aside 2 a.csv:0: 1 of its 1 rows set aside are missing"},
-        {"load", "UPDATE load SET file = 'z.csv' WHERE batch = 3", "batch 3 z.csv:0: what stands in it"},
-        {"load", "UPDATE load SET reason = 'none' WHERE batch = 3", "batch 3 b.csv:0: what stands in it"},
+        {"aside", "DELETE FROM aside",
+         "row set aside 2 a.csv:0: 1 of its 1 rows set aside are missing"},
+        {"load", "UPDATE load SET file = 'z.csv' WHERE batch = 3",
+         "batch 3 z.csv:0: what stands in it"},
+        {"load", "UPDATE load SET reason = 'none' WHERE batch = 3",
+         "batch 3 b.csv:0: what stands in it"},
         {"load", "UPDATE load SET digest = zeroblob(32) WHERE batch = 3", "batch 3 b.csv:0: "},
         {"load", "UPDATE load SET present = 1, rows = 2 WHERE batch = 4", "batch 4 c.csv:0: "},
         {"batch", "UPDATE batch SET who = 'nobody' WHERE id = 3", "batch 3 b.csv:0: "},
         {"batch", "UPDATE batch SET at = '2025-04-02T06:10:00Z' WHERE id = 4", "batch 4 c.csv:0: "},
-        {"batch", "INSERT INTO batch VALUES (5, 'load', '2025-04-02T06:10:00Z', 'x')", "batch 5 :0: nothing says what came with it"},
-        {"batch", "INSERT INTO batch VALUES (9, 'load', '2025-04-02T06:10:00Z', 'x')", "chain 9 :0: batch 5 should come here"},
+        {"batch", "INSERT INTO batch VALUES (5, 'load', '2025-04-02T06:10:00Z', 'x')",
+         "batch 5 :0: nothing says what came with it"},
+        {"batch", "INSERT INTO batch VALUES (9, 'load', '2025-04-02T06:10:00Z', 'x')",
+         "chain 9 :0: batch 5 should come here"},
         {"chain", "UPDATE chain SET head = zeroblob(32) WHERE batch = 3", "batch 3 b.csv:0: "},
-        {"chain", "UPDATE chain SET head = zeroblob(32) WHERE batch = 3", "chain 4 c.csv:0: it does not follow the head before it"},
-        {"chain", "UPDATE chain SET previous = zeroblob(32) WHERE batch = 3", "chain 3 b.csv:0: it does not follow"},
-        {"chain", "DELETE FROM chain WHERE batch = 4", "chain 4 c.csv:0: it has no link in the chain"},
+        {"chain", "UPDATE chain SET head = zeroblob(32) WHERE batch = 3",
+         "chain 4 c.csv:0: it does not follow the head before it"},
+        {"chain", "UPDATE chain SET previous = zeroblob(32) WHERE batch = 3",
+         "chain 3 b.csv:0: it does not follow"},
+        {"chain", "DELETE FROM chain WHERE batch = 4",
+         "chain 4 c.csv:0: it has no link in the chain"},
         {"description", "UPDATE description SET reason = 'x'", "batch 1 :0: "},
         {"plant_limit", "UPDATE plant_limit SET \"limit\" = '35.0' WHERE parameter = 'BOD5'",
          "description 1 limits.csv:2: this row of limits.csv is not what was put in"},
-        {"plant_limit", "UPDATE plant_limit SET unit = NULL WHERE parameter = 'TSS'", "description 1 limits.csv:3: "},
-        {"plant_point", "UPDATE plant_point SET line = 9 WHERE point = 'EFF'", "description 1 points.csv:9: "},
-        {"plant_point", "DELETE FROM plant_point WHERE point = 'INF'", "description 1 :0: it should have 12 rows"},
-        {"plant_parameter", "UPDATE plant_parameter SET builtin = 0 WHERE parameter = 'TSS'", "description 1 parameters.csv:4: "},
-        {"plant_field", "UPDATE plant_field SET value = 'Marrow Bent' WHERE field = 'name'", "description 1 plant.csv:2: "},
+        {"plant_limit", "UPDATE plant_limit SET unit = NULL WHERE parameter = 'TSS'",
+         "description 1 limits.csv:3: "},
+        {"plant_point", "UPDATE plant_point SET line = 9 WHERE point = 'EFF'",
+         "description 1 points.csv:9: "},
+        {"plant_point", "DELETE FROM plant_point WHERE point = 'INF'",
+         "description 1 :0: it should have 12 rows"},
+        {"plant_parameter", "UPDATE plant_parameter SET builtin = 0 WHERE parameter = 'TSS'",
+         "description 1 parameters.csv:4: "},
+        {"plant_field", "UPDATE plant_field SET value = 'Marrow Bent' WHERE field = 'name'",
+         "description 1 plant.csv:2: "},
         {"plant_meter", "UPDATE plant_meter SET rolls_at = '100'", "description 1 meters.csv:2: "},
-        {"qualifier", "UPDATE qualifier SET word = 'more' WHERE id = 1", "schema 0 :0: the words of table qualifier"},
+        {"qualifier", "UPDATE qualifier SET word = 'more' WHERE id = 1",
+         "schema 0 :0: the words of table qualifier"},
         {"reading", "DROP INDEX reading_key; CREATE INDEX reading_key ON reading (series, day)",
          "schema 0 :0: index reading_key is not as weirbook made it"},
         {"reading", "DROP VIEW limits", "schema 0 :0: view limits is missing"},
         {"reading", "CREATE VIEW mine AS SELECT 1", "schema 0 :0: view mine is not weirbook's"},
         {"reading", "PRAGMA foreign_keys = OFF; UPDATE reading SET detail = 99 WHERE id = 1",
          "foreign keys 0 :0: row 1 of table reading points to a row of detail that is not there"},
-        {"reading", "PRAGMA ignore_check_constraints = ON; UPDATE reading SET minute = 2000 WHERE id = 1",
+        {"reading",
+         "PRAGMA ignore_check_constraints = ON; UPDATE reading SET minute = 2000 WHERE id = 1",
          "pages 0 :0: CHECK constraint failed in reading"},
     };
     (void)state;
@@ -136,10 +165,12 @@ static void whatever_is_changed_is_named(void **state)
 static void a_missing_trigger_is_named(void **state)
 {
     raw(THIS, "DROP TRIGGER reading_stays");
-    assert_string_equal(shelf_check(THIS), "schema 0 :0: trigger reading_stays is missing; go back to a sound copy\n");
+    assert_string_equal(shelf_check(THIS),
+                        "schema 0 :0: trigger reading_stays is missing; go back to a sound copy\n");
 }
 
-/* A file swapped for another load of the same rows by the sqlite3 shell, marks and all, breaks the chain. */
+/* A file swapped for another load of the same rows by the sqlite3 shell, marks and all, breaks the
+ * chain. */
 static void a_reading_with_a_fresh_mark_still_breaks_the_chain(void **state)
 {
     struct shelf *s = THIS;
@@ -149,13 +180,19 @@ static void a_reading_with_a_fresh_mark_still_breaks_the_chain(void **state)
     shelf_load(other, "a.csv", NULL,
                "EFF BOD5 2025-03-05 3.1 mg/L note:spiked\nEFF TSS 2025-03-05 <2 mg/L mdl:2\n"
                "INF TSS 2025-03-05 200 mg/L #b\naside:not-a-number 2025-03-06 - EFF BOD5 1O mg/L");
-    const char *mark = arena_text(s->arena, raw_text(other, "SELECT mark FROM reading WHERE id = 1"));
+    const char *mark =
+        arena_text(s->arena, raw_text(other, "SELECT mark FROM reading WHERE id = 1"));
     shelf_teardown(&other);
-    tamper(s, "reading",
-           arena_print(s->arena, "UPDATE reading SET value = '3.1', coefficient = 31, scale = 1, mark = %s WHERE id = 1", mark));
+    tamper(
+        s, "reading",
+        arena_print(
+            s->arena,
+            "UPDATE reading SET value = '3.1', coefficient = 31, scale = 1, mark = %s WHERE id = 1",
+            mark));
     const char *told = shelf_check(s);
     assert_null(strstr(told, "reading 2"));
-    assert_non_null(strstr(told, "batch 2 a.csv:0: what stands in it is not what its hash was made of"));
+    assert_non_null(
+        strstr(told, "batch 2 a.csv:0: what stands in it is not what its hash was made of"));
 }
 
 static void of_one_kind_twenty_are_told_and_the_rest_counted(void **state)

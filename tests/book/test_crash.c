@@ -18,9 +18,10 @@ static bool all(void)
     return getenv("WEIRBOOK_ALL") != NULL;
 }
 
-/* In a child: opens the book, loads `rows` readings as a file, and closes it. Nothing here may end in a
- * failed check of cmocka, which would go on with the parent's tests. */
-static enum status load_rows(struct shelf *s, const char *file, int series, int rows, struct fault *f)
+/* In a child: opens the book, loads `rows` readings as a file, and closes it. Nothing here may end
+ * in a failed check of cmocka, which would go on with the parent's tests. */
+static enum status load_rows(struct shelf *s, const char *file, int series, int rows,
+                             struct fault *f)
 {
     static const struct detail nothing = {"", "", "", "", ""};
     struct book *b = NULL;
@@ -81,7 +82,8 @@ static pid_t endless_loader(struct shelf *s, int *acknowledged, int round)
     if (child == 0) {
         struct fault f = {0};
         for (int n = 0;; n++)
-            if (load_rows(s, "a.csv", round * 1000 + n, ROWS, &f) != OK || write(pipes[1], "x", 1) != 1)
+            if (load_rows(s, "a.csv", round * 1000 + n, ROWS, &f) != OK ||
+                write(pipes[1], "x", 1) != 1)
                 _exit(1);
     }
     close(pipes[1]);
@@ -108,7 +110,8 @@ static void a_kill_at_any_moment_loses_nothing_that_was_told_as_done(void **stat
         assert_string_equal(shelf_check(s), ""); /* opening it puts it right */
         long after = batches(s);
         if (after < before + told || after > before + told + 1)
-            fail_msg("round %d: %ld files before, %ld told as done, %ld there", round, before, told, after);
+            fail_msg("round %d: %ld files before, %ld told as done, %ld there", round, before, told,
+                     after);
     }
     assert_true(batches(s) > 0);
 }
@@ -130,7 +133,8 @@ static pid_t with_limit(struct shelf *s, size_t bytes, const char *what)
                                                : book_create(what, s->draft, &tester, &f);
     if (rc == OK)
         _exit(0);
-    _exit(f.set && (strstr(f.text, "it stays as it was") || strstr(f.text, "cannot make") || strstr(f.text, "cannot open"))
+    _exit(f.set && (strstr(f.text, "it stays as it was") || strstr(f.text, "cannot make") ||
+                    strstr(f.text, "cannot open"))
               ? 1
               : 2);
 }
@@ -147,8 +151,11 @@ static void a_full_disk_leaves_the_book_as_it_was(void **state)
         if (status == 0)
             break;
         assert_int_equal(status, 1);
+        /* Below its own size not even the old pages can be written back: the next look does it. */
+        if (limit >= length)
+            same_file(s->path, before, length);
+        assert_string_equal(raw_text(s, "SELECT count(*) FROM reading"), "1");
         same_file(s->path, before, length);
-        assert_string_equal(raw_text(s, "SELECT count(*) FROM reading"), "1"); /* also rolls back what is left */
     }
     assert_true(tries > 3);
     assert_string_equal(raw_text(s, "SELECT count(*) FROM reading"), "5001");

@@ -1,6 +1,6 @@
-/* Bit flips: of seeded single-bit flips in a book's file, all that change anything the program reads
- * out of it are noticed, by the reading itself or by the check. A sample by default; 1,000 with
- * WEIRBOOK_ALL set, or as many as WEIRBOOK_FLIPS says. */
+/* Bit flips: of seeded single-bit flips in a book's file, all that change anything the program
+ * reads out of it are noticed, by the reading itself or by the check. A sample by default; 1,000
+ * with WEIRBOOK_ALL set, or as many as WEIRBOOK_FLIPS says. */
 #include "book/books.h"
 
 #include <stdio.h>
@@ -21,13 +21,14 @@ static void fill(struct shelf *s)
     struct text lines;
     text_init(&lines, 1 << 20);
     for (int i = 0; i < 300; i++)
-        text_print(&lines, "%s %s 2025-%02d-%02d %s%d.%d mg/L @%02d:15 note:n%d\n", i % 2 ? "EFF" : "INF",
-                   i % 3 ? "BOD5" : "TSS", 1 + i / 28, 1 + i % 28, i % 7 ? "" : "<", 2 + i * 37 % 250, i % 10, i % 24,
-                   i % 40);
+        text_print(&lines, "%s %s 2025-%02d-%02d %s%d.%d mg/L @%02d:15 note:n%d\n",
+                   i % 2 ? "EFF" : "INF", i % 3 ? "BOD5" : "TSS", 1 + i / 28, 1 + i % 28,
+                   i % 7 ? "" : "<", 2 + i * 37 % 250, i % 10, i % 24, i % 40);
     shelf_load(s, "a.csv", NULL, lines.at);
     text_clear(&lines);
     for (int i = 0; i < 100; i++)
-        text_print(&lines, "EFF BOD5 2025-%02d-%02d %d mg/L @%02d:15\n", 1 + i / 28, 1 + i % 28, i, i % 24);
+        text_print(&lines, "EFF BOD5 2025-%02d-%02d %d mg/L @%02d:15\n", 1 + i / 28, 1 + i % 28, i,
+                   i % 24);
     shelf_load(s, "b.csv", "second look", lines.at);
     text_clear(&lines);
     for (int i = 0; i < 60; i++)
@@ -67,8 +68,8 @@ static void every_flip_that_changes_what_is_read_is_noticed(void **state)
         bool differs = !told || strcmp(told, before) != 0;
         bool noticed = *shelf_check(s) != '\0';
         if (differs && told && !noticed)
-            fail_msg("bit %d of byte %ld of the file changes what is read, and nobody notices", (int)(at % 8),
-                     (long)(at / 8));
+            fail_msg("bit %d of byte %ld of the file changes what is read, and nobody notices",
+                     (int)(at % 8), (long)(at / 8));
         if (!told && !noticed)
             fail_msg("byte %ld: '%s', and the check finds nothing", (long)(at / 8), f.text);
         changed += differs;
@@ -78,7 +79,8 @@ static void every_flip_that_changes_what_is_read_is_noticed(void **state)
         arena_free(s->arena);
         s->arena = kept;
     }
-    print_message("%ld flips in %ld bytes: %ld change what is read (%ld of them refused by reading), all noticed; the check "
+    print_message("%ld flips in %ld bytes: %ld change what is read (%ld of them refused by "
+                  "reading), all noticed; the check "
                   "finds %ld, %ld of them in bytes that are not read\n",
                   flips, (long)length, changed, refused, found, unread);
     assert_true(changed > flips / 20);
@@ -87,7 +89,8 @@ static void every_flip_that_changes_what_is_read_is_noticed(void **state)
 int main(void)
 {
     const struct CMUnitTest tests[] = {
-        cmocka_unit_test_setup_teardown(every_flip_that_changes_what_is_read_is_noticed, shelf_setup, shelf_teardown),
+        cmocka_unit_test_setup_teardown(every_flip_that_changes_what_is_read_is_noticed,
+                                        shelf_setup, shelf_teardown),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }

@@ -29,11 +29,12 @@ static void lacks(const char *text, const char *part)
 static void a_reading_is_kept_as_it_was_written(void **state)
 {
     struct shelf *s = THIS;
-    assert_string_equal(shelf_load(s, "march.csv", NULL,
-                                   "EFF BOD5 2025-03-05 30.0 mg/L @08:15 #grab note:spiked mdl:0.5 rl:2.00\n"
-                                   "EFF BOD5 2025-03-06 <2 mg/L\n"
-                                   "EFF TSS 2025-03-06 code:E mg/L"),
-                        "AAA");
+    assert_string_equal(
+        shelf_load(s, "march.csv", NULL,
+                   "EFF BOD5 2025-03-05 30.0 mg/L @08:15 #grab note:spiked mdl:0.5 rl:2.00\n"
+                   "EFF BOD5 2025-03-06 <2 mg/L\n"
+                   "EFF TSS 2025-03-06 code:E mg/L"),
+        "AAA");
     const char *t = told(s);
     contains(t, "2025-03-05 08:15 #grab v0 '30.0' plain  30.0 mg/L mdl 0.5 rl 2.00 "
                 "[method 1|analyst|sampler|2025-03-06|spiked] march.csv:2 batch 2\n");
@@ -75,7 +76,8 @@ static void the_same_value_is_present_and_another_contradicts(void **state)
         {"EFF BOD5 2025-03-05 code:E mg/L", "EFF BOD5 2025-03-05 code:D mg/L", "C"},
         {"EFF BOD5 2025-03-05 code:E mg/L", "EFF BOD5 2025-03-05 3 mg/L", "C"},
         {"EFF BOD5 2025-03-05 3 mg/L note:one", "EFF BOD5 2025-03-05 3 mg/L note:two", "P"},
-        {"EFF BOD5 2025-03-05 999999999999999999 mg/L", "EFF BOD5 2025-03-05 999999999999999998 mg/L", "C"},
+        {"EFF BOD5 2025-03-05 999999999999999999 mg/L",
+         "EFF BOD5 2025-03-05 999999999999999998 mg/L", "C"},
         {"EFF BOD5 2025-03-05 withdrawn mg/L", "EFF BOD5 2025-03-05 3 mg/L", "A"},
         {"EFF BOD5 2025-03-05 withdrawn mg/L", "EFF BOD5 2025-03-05 withdrawn mg/L", "P"},
     };
@@ -86,7 +88,8 @@ static void the_same_value_is_present_and_another_contradicts(void **state)
         assert_string_equal(shelf_load(shelf, "a.csv", NULL, cases[i].first), "A");
         const char *becomes = shelf_load(shelf, "b.csv", NULL, cases[i].second);
         if (strcmp(becomes, cases[i].becomes) != 0)
-            fail_msg("%s, then %s: %s, not %s", cases[i].first, cases[i].second, becomes, cases[i].becomes);
+            fail_msg("%s, then %s: %s, not %s", cases[i].first, cases[i].second, becomes,
+                     cases[i].becomes);
         assert_string_equal(shelf_check(shelf), "");
         shelf_teardown(&shelf);
     }
@@ -116,12 +119,15 @@ static void a_revised_reading_keeps_the_old_one(void **state)
     const char *t = told(s);
     contains(t, "2025-03-05  # v2 '3.2' plain  3.2 mg/L");
     lacks(t, "v0 '30.0'");
-    contains(t, "revised 2025-03-05 -1 1 1 # '30.0' to '3.00' mg/L by tester at 2025-04-01T06:10:00Z: typing error, "
+    contains(t, "revised 2025-03-05 -1 1 1 # '30.0' to '3.00' mg/L by tester at "
+                "2025-04-01T06:10:00Z: typing error, "
                 "b.csv:2 v1\n");
-    contains(t, "'3.00' to '3.2' mg/L by tester at 2025-04-01T06:10:00Z: second look, c.csv:2 v2\n");
-    assert_string_equal(raw_text(s, "SELECT group_concat(value) FROM (SELECT value FROM reading WHERE day = "
-                                    "julianday('2025-03-05') - julianday('1970-01-01') ORDER BY version)"),
-                        "30.0,3.00,3.2");
+    contains(t,
+             "'3.00' to '3.2' mg/L by tester at 2025-04-01T06:10:00Z: second look, c.csv:2 v2\n");
+    assert_string_equal(
+        raw_text(s, "SELECT group_concat(value) FROM (SELECT value FROM reading WHERE day = "
+                    "julianday('2025-03-05') - julianday('1970-01-01') ORDER BY version)"),
+        "30.0,3.00,3.2");
     assert_string_equal(shelf_check(s), "");
 }
 
@@ -130,18 +136,24 @@ static void a_row_never_revises_a_row_of_its_own_file(void **state)
     static const struct {
         const char *before, *lines, *becomes;
     } cases[] = {
-        {"EFF BOD5 2025-03-01 9 mg/L", "EFF BOD5 2025-03-05 1 mg/L\nEFF BOD5 2025-03-05 2 mg/L", "AC"},
-        {"EFF BOD5 2025-03-05 9 mg/L", "EFF BOD5 2025-03-05 1 mg/L\nEFF BOD5 2025-03-05 2 mg/L", "RC"},
-        {"EFF BOD5 2025-03-05 9 mg/L", "EFF BOD5 2025-03-05 1 mg/L\nEFF BOD5 2025-03-05 9 mg/L", "RC"},
-        {"EFF BOD5 2025-03-05 9 mg/L", "EFF BOD5 2025-03-05 9 mg/L\nEFF BOD5 2025-03-05 2 mg/L", "PC"},
-        {"EFF BOD5 2025-03-05 9 mg/L", "EFF BOD5 2025-03-05 1 mg/L\nEFF BOD5 2025-03-05 1.0 mg/L", "RP"},
+        {"EFF BOD5 2025-03-01 9 mg/L", "EFF BOD5 2025-03-05 1 mg/L\nEFF BOD5 2025-03-05 2 mg/L",
+         "AC"},
+        {"EFF BOD5 2025-03-05 9 mg/L", "EFF BOD5 2025-03-05 1 mg/L\nEFF BOD5 2025-03-05 2 mg/L",
+         "RC"},
+        {"EFF BOD5 2025-03-05 9 mg/L", "EFF BOD5 2025-03-05 1 mg/L\nEFF BOD5 2025-03-05 9 mg/L",
+         "RC"},
+        {"EFF BOD5 2025-03-05 9 mg/L", "EFF BOD5 2025-03-05 9 mg/L\nEFF BOD5 2025-03-05 2 mg/L",
+         "PC"},
+        {"EFF BOD5 2025-03-05 9 mg/L", "EFF BOD5 2025-03-05 1 mg/L\nEFF BOD5 2025-03-05 1.0 mg/L",
+         "RP"},
     };
     (void)state;
     for (size_t i = 0; i < NELEM(cases); i++) {
         void *shelf = NULL;
         shelf_setup(&shelf);
         shelf_load(shelf, "a.csv", NULL, cases[i].before);
-        assert_string_equal(shelf_load(shelf, "b.csv", "why not", cases[i].lines), cases[i].becomes);
+        assert_string_equal(shelf_load(shelf, "b.csv", "why not", cases[i].lines),
+                            cases[i].becomes);
         assert_string_equal(shelf_check(shelf), "");
         shelf_teardown(&shelf);
     }
@@ -151,7 +163,8 @@ static void a_withdrawn_reading_leaves_room_and_stays_on_record(void **state)
 {
     struct shelf *s = THIS;
     shelf_load(s, "a.csv", NULL, "EFF BOD5 2025-03-05 30 mg/L");
-    assert_string_equal(shelf_load(s, "b.csv", "sample spoiled", "EFF BOD5 2025-03-05 withdrawn mg/L"), "R");
+    assert_string_equal(
+        shelf_load(s, "b.csv", "sample spoiled", "EFF BOD5 2025-03-05 withdrawn mg/L"), "R");
     lacks(told(s), "'30' plain");
     assert_string_equal(shelf_load(s, "c.csv", NULL, "EFF BOD5 2025-03-05 31 mg/L"), "A");
     const char *t = told(s);
@@ -174,9 +187,10 @@ static void the_four_counts_add_up_and_are_kept(void **state)
     assert_int_equal(c->present, 1);
     assert_int_equal(c->revised, 1);
     assert_int_equal(c->aside, 2);
-    assert_string_equal(raw_text(s, "SELECT rows || ' ' || accepted || ' ' || present || ' ' || revised || ' ' || "
-                                    "set_aside FROM batches WHERE file = 'b.csv'"),
-                        "5 1 1 1 2");
+    assert_string_equal(
+        raw_text(s, "SELECT rows || ' ' || accepted || ' ' || present || ' ' || revised || ' ' || "
+                    "set_aside FROM batches WHERE file = 'b.csv'"),
+        "5 1 1 1 2");
 }
 
 static void counts_that_do_not_add_up_load_nothing(void **state)
@@ -188,8 +202,9 @@ static void counts_that_do_not_add_up_load_nothing(void **state)
     good(s, book_load_begin(b, s->plant, &tester, false, &s->fault));
     add_lines(s, b, "a.csv", "EFF BOD5 2025-03-05 30 mg/L");
     assert_int_equal(end_load(s, b, "a.csv", NULL, 2), FAULT);
-    assert_string_equal(s->fault.text, "a.csv: 2 rows were read, but 1 ended in the book or aside; nothing was "
-                                       "loaded; please report it");
+    assert_string_equal(s->fault.text,
+                        "a.csv: 2 rows were read, but 1 ended in the book or aside; nothing was "
+                        "loaded; please report it");
     book_load_abandon(b); /* harmless */
     book_close(b);
     same_file(s->path, before, length);
@@ -203,15 +218,18 @@ static void an_abandoned_load_leaves_nothing(void **state)
     const uint8_t *before = file_bytes(s->arena, s->path, &length);
     struct book *b = shelf_open(s, BOOK_WRITE);
     good(s, book_load_begin(b, s->plant, &tester, true, &s->fault));
-    assert_string_equal(add_lines(s, b, "b.csv",
-                                  "EFF BOD5 2025-03-05 31 mg/L note:x\nINF TSS 2025-03-05 1 ug/L #new\n"
-                                  "aside:bad-date x y"),
-                        "RAS");
+    assert_string_equal(
+        add_lines(s, b, "b.csv",
+                  "EFF BOD5 2025-03-05 31 mg/L note:x\nINF TSS 2025-03-05 1 ug/L #new\n"
+                  "aside:bad-date x y"),
+        "RAS");
     book_load_abandon(b);
     same_file(s->path, before, length);
     /* And the connection goes on as if nothing had been. */
     good(s, book_load_begin(b, s->plant, &tester, false, &s->fault));
-    assert_string_equal(add_lines(s, b, "c.csv", "EFF BOD5 2025-03-05 30 mg/L\nINF TSS 2025-03-05 1 ug/L #new"), "PA");
+    assert_string_equal(
+        add_lines(s, b, "c.csv", "EFF BOD5 2025-03-05 30 mg/L\nINF TSS 2025-03-05 1 ug/L #new"),
+        "PA");
     book_close(b); /* abandons it */
     same_file(s->path, before, length);
 }
@@ -226,12 +244,14 @@ static void a_file_loaded_before_is_known(void **state)
     bool known = true;
     snprintf((char *)source.digest, sizeof source.digest, "a.csv"); /* as end_load makes it */
     struct book *b = shelf_open(s, BOOK_READ);
-    good(s, book_known(b, s->arena, source.digest, &known, &batch, &file, &when, &counts, &s->fault));
+    good(s,
+         book_known(b, s->arena, source.digest, &known, &batch, &file, &when, &counts, &s->fault));
     assert_false(known);
     book_close(b);
     shelf_load(s, "a.csv", NULL, "EFF BOD5 2025-03-05 30 mg/L\naside:bad-date x");
     b = shelf_open(s, BOOK_READ);
-    good(s, book_known(b, s->arena, source.digest, &known, &batch, &file, &when, &counts, &s->fault));
+    good(s,
+         book_known(b, s->arena, source.digest, &known, &batch, &file, &when, &counts, &s->fault));
     assert_true(known);
     assert_int_equal(batch, 2);
     assert_string_equal(file, "a.csv");
@@ -255,8 +275,10 @@ static void many_different_notes_each_stay_with_their_reading(void **state)
     assert_int_equal(strspn(outcome, "P"), 9000);
     text_free(&lines);
     assert_string_equal(raw_text(s, "SELECT count(*) FROM detail"), "9000");
-    assert_string_equal(raw_text(s, "SELECT count(*) FROM readings WHERE note = 'n' || value AND sample = 's' || value"),
-                        "9000");
+    assert_string_equal(
+        raw_text(
+            s, "SELECT count(*) FROM readings WHERE note = 'n' || value AND sample = 's' || value"),
+        "9000");
     assert_string_equal(shelf_check(s), "");
 }
 
@@ -277,7 +299,8 @@ static void the_connection_refuses_what_the_tables_forbid(void **state)
         {"DELETE FROM plant_point", "descriptions are never taken out"},
         {"UPDATE point_code SET name = 'X'", "names that readings use are never rewritten"},
         {"DELETE FROM series", "names that readings use are never taken out"},
-        {"INSERT INTO batch (kind, at, who) VALUES ('load', '2025-04-01', 'x')", "CHECK constraint failed: batch_at"},
+        {"INSERT INTO batch (kind, at, who) VALUES ('load', '2025-04-01', 'x')",
+         "CHECK constraint failed: batch_at"},
         {"INSERT INTO batch (kind, at, who) VALUES ('load', '2025-04-01T06:10:00Z', '')",
          "CHECK constraint failed: batch_who"},
         {"INSERT INTO load VALUES (2, 'f', 1, zeroblob(32), '', '', 3, 1, 1, 0, 0, 1, 1)",
@@ -305,10 +328,10 @@ static void every_check_on_readings_is_named(void **state)
     static const struct {
         const char *set, *check;
     } cases[] = {
-        {"day = 84006", "reading_day"},       {"minute = 1441", "reading_minute"},
-        {"version = -1", "reading_version"},  {"qualifier = 8", "reading_qualifier"},
-        {"code = 'E'", "reading_code"},       {"coefficient = NULL", "reading_number"},
-        {"scale = 19", "reading_scale"},      {"mdl = 1", "reading_mdl"},
+        {"day = 84006", "reading_day"},      {"minute = 1441", "reading_minute"},
+        {"version = -1", "reading_version"}, {"qualifier = 8", "reading_qualifier"},
+        {"code = 'E'", "reading_code"},      {"coefficient = NULL", "reading_number"},
+        {"scale = 19", "reading_scale"},     {"mdl = 1", "reading_mdl"},
         {"rl_scale = 1", "reading_rl"},
     };
     struct shelf *s = THIS;

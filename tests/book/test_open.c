@@ -1,4 +1,5 @@
-/* Opening: what is refused, in which words, and that it stays untouched; and books that cannot be written. */
+/* Opening: what is refused, in which words, and that it stays untouched; and books that cannot be
+ * written. */
 #include "book/books.h"
 #include "book/store.h"
 
@@ -44,19 +45,27 @@ static void what_is_no_book_is_refused_and_untouched(void **state)
     struct shelf *s = THIS;
     char text[4000];
     assert_int_equal(chdir(s->folder), 0);
-    refused(s, "missing.book", "there is no book 'missing.book'; name the book, or make it with 'weirbook new BOOK DIR'");
-    refused(s, "plant.book/x", "there is no book 'plant.book/x'; name the book, or make it with 'weirbook new BOOK DIR'");
+    refused(
+        s, "missing.book",
+        "there is no book 'missing.book'; name the book, or make it with 'weirbook new BOOK DIR'");
+    refused(
+        s, "plant.book/x",
+        "there is no book 'plant.book/x'; name the book, or make it with 'weirbook new BOOK DIR'");
     refused(s, ".", "'.' is a folder; name the book file in it");
     file_write("empty.book", "", 0);
-    refused(s, "empty.book", "'empty.book' is not a weirbook book: it is empty; name a file that 'weirbook new' made");
+    refused(
+        s, "empty.book",
+        "'empty.book' is not a weirbook book: it is empty; name a file that 'weirbook new' made");
     file_write("x.csv", "date,point\n", 11);
     refused(s, "x.csv", "'x.csv' is not a weirbook book; name a file that 'weirbook new' made");
     memset(text, 'x', sizeof text);
     file_write("long.csv", text, sizeof text);
-    refused(s, "long.csv", "'long.csv' is not a weirbook book; name a file that 'weirbook new' made");
+    refused(s, "long.csv",
+            "'long.csv' is not a weirbook book; name a file that 'weirbook new' made");
     assert_int_equal(mkfifo("fifo", 0600), 0);
     refused(s, "fifo", "'fifo' is not a weirbook book; name a file that 'weirbook new' made");
-    refused(s, "/dev/null", "'/dev/null' is not a weirbook book; name a file that 'weirbook new' made");
+    refused(s, "/dev/null",
+            "'/dev/null' is not a weirbook book; name a file that 'weirbook new' made");
 }
 
 static void another_programs_database_is_refused_with_its_journal(void **state)
@@ -68,7 +77,8 @@ static void another_programs_database_is_refused_with_its_journal(void **state)
     assert_int_equal(sqlite3_exec(db, "CREATE TABLE t (x)", NULL, NULL, NULL), SQLITE_OK);
     sqlite3_close(db);
     file_write("other.db-journal", "a journal", 9);
-    refused(s, "other.db", "'other.db' is not a weirbook book; name a file that 'weirbook new' made");
+    refused(s, "other.db",
+            "'other.db' is not a weirbook book; name a file that 'weirbook new' made");
     same_file("other.db-journal", (const uint8_t *)"a journal", 9);
 }
 
@@ -77,10 +87,14 @@ static void a_newer_book_is_refused_by_its_number(void **state)
     struct shelf *s = THIS;
     assert_int_equal(chdir(s->folder), 0);
     raw(s, "PRAGMA user_version = 7");
-    refused(s, "plant.book", "'plant.book' is a book of format 7; this program knows formats up to 1; use a newer weirbook");
+    refused(s, "plant.book",
+            "'plant.book' is a book of format 7; this program knows formats up to 1; use a newer "
+            "weirbook");
     raw(s, "PRAGMA user_version = 0");
-    refused(s, "plant.book", "'plant.book' is damaged: its header is not one that weirbook writes; run 'weirbook check', and "
-                             "go back to a sound copy");
+    refused(s, "plant.book",
+            "'plant.book' is damaged: its header is not one that weirbook writes; run 'weirbook "
+            "check', and "
+            "go back to a sound copy");
 }
 
 static void hard_links_are_refused(void **state)
@@ -88,7 +102,8 @@ static void hard_links_are_refused(void **state)
     struct shelf *s = THIS;
     assert_int_equal(chdir(s->folder), 0);
     assert_int_equal(link("plant.book", "second.book"), 0);
-    refused(s, "plant.book", "'plant.book' has 2 names (hard links); keep one name, or work on a copy");
+    refused(s, "plant.book",
+            "'plant.book' has 2 names (hard links); keep one name, or work on a copy");
     assert_int_equal(unlink("second.book"), 0);
     assert_int_equal(symlink("plant.book", "second.book"), 0); /* one file still */
     struct book *b = NULL;
@@ -101,12 +116,16 @@ static void foreign_triggers_are_refused(void **state)
     struct shelf *s = THIS;
     assert_int_equal(chdir(s->folder), 0);
     raw(s, "CREATE TRIGGER mine AFTER INSERT ON reading BEGIN DELETE FROM detail; END");
-    refused(s, "plant.book", "'plant.book' holds a trigger that is not weirbook's, 'mine'; take it out, or go back to a "
-                             "sound copy");
+    refused(
+        s, "plant.book",
+        "'plant.book' holds a trigger that is not weirbook's, 'mine'; take it out, or go back to a "
+        "sound copy");
     raw(s, "DROP TRIGGER mine; DROP TRIGGER reading_kept; "
            "CREATE TRIGGER reading_kept BEFORE DELETE ON reading BEGIN SELECT 1; END");
-    refused(s, "plant.book", "'plant.book' holds a trigger that is not weirbook's, 'reading_kept'; take it out, or go back to "
-                             "a sound copy");
+    refused(s, "plant.book",
+            "'plant.book' holds a trigger that is not weirbook's, 'reading_kept'; take it out, or "
+            "go back to "
+            "a sound copy");
 }
 
 static void a_cut_off_book_is_damaged(void **state)
@@ -116,13 +135,17 @@ static void a_cut_off_book_is_damaged(void **state)
     assert_int_equal(truncate("plant.book", 8192), 0);
     struct book *b = NULL;
     assert_int_equal(book_open(&b, "plant.book", BOOK_READ, &s->fault), FAULT);
-    assert_string_equal(s->fault.text, "'plant.book' is damaged: database disk image is malformed; run 'weirbook check', and "
-                                       "go back to a sound copy");
+    assert_string_equal(
+        s->fault.text,
+        "'plant.book' is damaged: database disk image is malformed; run 'weirbook check', and "
+        "go back to a sound copy");
     fault_clear(&s->fault);
     put_bytes("plant.book", 16, "\xff\xff", 2); /* no page size */
     assert_int_equal(book_open(&b, "plant.book", BOOK_READ, &s->fault), FAULT);
-    assert_string_equal(s->fault.text, "'plant.book' is damaged: file is not a database; run 'weirbook check', and go back to "
-                                       "a sound copy");
+    assert_string_equal(
+        s->fault.text,
+        "'plant.book' is damaged: file is not a database; run 'weirbook check', and go back to "
+        "a sound copy");
     fault_clear(&s->fault);
 }
 
@@ -132,8 +155,9 @@ static void a_connection_is_set_as_it_must_be(void **state)
         const char *pragma;
         int read, write;
     } settings[] = {
-        {"PRAGMA foreign_keys", 1, 1},   {"PRAGMA trusted_schema", 0, 0}, {"PRAGMA cell_size_check", 1, 1},
-        {"PRAGMA synchronous", -1, 3},   {"PRAGMA query_only", 1, 0},     {"PRAGMA busy_timeout", 5000, 5000},
+        {"PRAGMA foreign_keys", 1, 1},    {"PRAGMA trusted_schema", 0, 0},
+        {"PRAGMA cell_size_check", 1, 1}, {"PRAGMA synchronous", -1, 3},
+        {"PRAGMA query_only", 1, 0},      {"PRAGMA busy_timeout", 5000, 5000},
         {"PRAGMA page_size", 8192, 8192},
     };
     struct shelf *s = THIS;
@@ -149,7 +173,8 @@ static void a_connection_is_set_as_it_must_be(void **state)
                 assert_int_equal(sqlite3_column_int(q, 0), wanted);
             sqlite3_finalize(q);
         }
-        static const int off[] = {SQLITE_DBCONFIG_DQS_DML, SQLITE_DBCONFIG_DQS_DDL, SQLITE_DBCONFIG_TRUSTED_SCHEMA};
+        static const int off[] = {SQLITE_DBCONFIG_DQS_DML, SQLITE_DBCONFIG_DQS_DDL,
+                                  SQLITE_DBCONFIG_TRUSTED_SCHEMA};
         int on = -1;
         for (size_t i = 0; i < NELEM(off); i++) {
             assert_int_equal(sqlite3_db_config(db, off[i], -1, &on), SQLITE_OK);
@@ -184,7 +209,7 @@ static const char *as_nobody(struct shelf *s, const char *work(struct shelf *s))
     }
     close(pipes[1]);
     size_t length = 0;
-    for (ssize_t got = 1; got > 0 && length < sizeof said - 1; length += got > 0 ? (size_t)got : 0)
+    for (ssize_t got = 1; got > 0 && length<sizeof said - 1; length += got> 0 ? (size_t)got : 0)
         got = read(pipes[0], said + length, sizeof said - 1 - length);
     said[length] = '\0';
     close(pipes[0]);
@@ -216,16 +241,19 @@ static void a_book_that_cannot_be_written_can_be_read(void **state)
     assert_int_equal(chmod(s->path, 0444), 0);
     assert_int_equal(chmod(s->folder, 0777), 0);
     assert_non_null(strstr(as_nobody(s, read_all), "'30' plain"));
-    assert_string_equal(as_nobody(s, open_to_write),
-                        "'plant.book' cannot be written; let yourself write the file, or work on a copy");
+    assert_string_equal(
+        as_nobody(s, open_to_write),
+        "'plant.book' cannot be written; let yourself write the file, or work on a copy");
     assert_int_equal(chmod(s->path, 0666), 0);
     assert_int_equal(chmod(s->folder, 0555), 0);
     assert_non_null(strstr(as_nobody(s, read_all), "'30' plain"));
-    assert_string_equal(as_nobody(s, open_to_write), "'plant.book' cannot be written: its folder must take a journal beside "
-                                                     "it; let yourself write the folder, or work on a copy");
+    assert_string_equal(as_nobody(s, open_to_write),
+                        "'plant.book' cannot be written: its folder must take a journal beside "
+                        "it; let yourself write the folder, or work on a copy");
     assert_int_equal(chmod(s->path, 0000), 0);
-    assert_string_equal(as_nobody(s, open_to_write), "cannot open 'plant.book': Permission denied; see that the file and its "
-                                                     "folder can be read and written");
+    assert_string_equal(as_nobody(s, open_to_write),
+                        "cannot open 'plant.book': Permission denied; see that the file and its "
+                        "folder can be read and written");
     assert_int_equal(chmod(s->path, 0644), 0);
     assert_int_equal(chmod(s->folder, 0755), 0);
     same_file(s->path, before, length);
@@ -240,12 +268,13 @@ static void leave_half_written(struct shelf *s)
         sqlite3 *db = NULL;
         if (sqlite3_open(s->path, &db) != SQLITE_OK)
             _exit(1);
-        _exit(sqlite3_exec(db,
-                           "PRAGMA cache_size = 1; BEGIN IMMEDIATE; DROP TRIGGER detail_kept; "
-                           "WITH RECURSIVE n (i) AS (SELECT 1 UNION ALL SELECT i + 1 FROM n WHERE i < 5000) "
-                           "INSERT INTO detail (method, analyst, collected_by, analyzed, note) "
-                           "SELECT i, 'x', 'x', 'x', hex(zeroblob(50)) FROM n",
-                           NULL, NULL, NULL) == SQLITE_OK
+        _exit(sqlite3_exec(
+                  db,
+                  "PRAGMA cache_size = 1; BEGIN IMMEDIATE; DROP TRIGGER detail_kept; "
+                  "WITH RECURSIVE n (i) AS (SELECT 1 UNION ALL SELECT i + 1 FROM n WHERE i < 5000) "
+                  "INSERT INTO detail (method, analyst, collected_by, analyzed, note) "
+                  "SELECT i, 'x', 'x', 'x', hex(zeroblob(50)) FROM n",
+                  NULL, NULL, NULL) == SQLITE_OK
                   ? 0
                   : 2);
     }
@@ -264,11 +293,13 @@ static void a_half_written_book_is_put_right_where_it_can_be_and_refused_where_n
     assert_int_equal(chmod(s->path, 0444), 0);
     assert_int_equal(chmod("plant.book-journal", 0444), 0);
     assert_int_equal(chmod(s->folder, 0555), 0);
-    assert_string_equal(as_nobody(s, read_all),
-                        arena_print(s->arena,
-                                    "'%s' was left half written, and the file '%s-journal' that puts it right cannot be used "
-                                    "here; copy both to a folder that can be written, and open the copy there",
-                                    s->path, s->path));
+    assert_string_equal(
+        as_nobody(s, read_all),
+        arena_print(s->arena,
+                    "'%s' was left half written, and the file '%s-journal' that puts it right "
+                    "cannot be used "
+                    "here; copy both to a folder that can be written, and open the copy there",
+                    s->path, s->path));
     assert_int_equal(access("plant.book-journal", F_OK), 0);
     assert_int_equal(chmod(s->folder, 0755), 0);
     assert_int_equal(chmod(s->path, 0644), 0);
@@ -297,7 +328,9 @@ static void a_book_being_written_is_waited_for_and_then_named(void **state)
     double began = clock_seconds();
     assert_int_equal(book_open(&b, "plant.book", BOOK_READ, &s->fault), FAULT);
     assert_true(clock_seconds() - began > 4.5);
-    assert_string_equal(s->fault.text, "'plant.book' is being written by another program; try again when it is done");
+    assert_string_equal(
+        s->fault.text,
+        "'plant.book' is being written by another program; try again when it is done");
     fault_clear(&s->fault);
     sqlite3_close(db);
 
@@ -306,7 +339,9 @@ static void a_book_being_written_is_waited_for_and_then_named(void **state)
     book_close(b);
     good(s, book_open(&b, "plant.book", BOOK_WRITE, &s->fault));
     assert_int_equal(book_load_begin(b, s->plant, &tester, false, &s->fault), FAULT);
-    assert_string_equal(s->fault.text, "'plant.book' is being written by another program; try again when it is done");
+    assert_string_equal(
+        s->fault.text,
+        "'plant.book' is being written by another program; try again when it is done");
     fault_clear(&s->fault);
     sqlite3_close(db);
     good(s, book_load_begin(b, s->plant, &tester, false, &s->fault));
@@ -325,15 +360,16 @@ static void a_book_being_read_is_waited_for_and_stays_as_it_was(void **state)
     good(s, book_load_begin(b, s->plant, &tester, false, &s->fault));
     add_lines(s, b, "a.csv", "EFF BOD5 2025-03-05 30 mg/L");
     assert_int_equal(end_load(s, b, "a.csv", NULL, 1), FAULT);
-    assert_string_equal(s->fault.text, "'plant.book' is being read by another program; try again when it is done");
+    assert_string_equal(s->fault.text,
+                        "'plant.book' is being read by another program; try again when it is done");
     fault_clear(&s->fault);
     sqlite3_close(db);
     same_file(s->path, before, length);
     book_close(b);
 }
 
-/* Loads a row once a byte comes through the pipe. In a process of its own from the start: one that is
- * forked while a book is open would share locks it does not hold. */
+/* Loads a row once a byte comes through the pipe. In a process of its own from the start: one that
+ * is forked while a book is open would share locks it does not hold. */
 static pid_t loader_waiting(struct shelf *s, int start[2])
 {
     assert_int_equal(pipe(start), 0);

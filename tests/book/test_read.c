@@ -1,4 +1,5 @@
-/* Reading: frames, spans, order, what was set aside and what was revised, and that every question goes by index. */
+/* Reading: frames, spans, order, what was set aside and what was revised, and that every question
+ * goes by index. */
 #include "book/books.h"
 #include "book/store.h"
 
@@ -25,8 +26,8 @@ static int parameter(struct shelf *s, const char *id)
     return plant_parameter(s->plant, id);
 }
 
-static struct frame *filled(struct shelf *s, const struct frame_span *spans, size_t count, const char *first,
-                            const char *last)
+static struct frame *filled(struct shelf *s, const struct frame_span *spans, size_t count,
+                            const char *first, const char *last)
 {
     struct book *b = shelf_open(s, BOOK_READ);
     struct frame *frame = frame_new(s->arena, s->plant, day(first), day(last));
@@ -37,11 +38,13 @@ static struct frame *filled(struct shelf *s, const struct frame_span *spans, siz
 }
 
 /* The texts of a day's readings, parted by blanks. */
-static const char *texts(struct shelf *s, const struct frame *f, const char *p, const char *q, const char *on)
+static const char *texts(struct shelf *s, const struct frame *f, const char *p, const char *q,
+                         const char *on)
 {
     struct text t;
     size_t count;
-    const struct reading *const *r = frame_readings(f, point(s, p), parameter(s, q), day(on), &count);
+    const struct reading *const *r =
+        frame_readings(f, point(s, p), parameter(s, q), day(on), &count);
     text_init(&t, 4096);
     for (size_t i = 0; i < count; i++)
         text_print(&t, "%s%s", i ? " " : "", r[i]->text);
@@ -53,14 +56,18 @@ static const char *texts(struct shelf *s, const struct frame *f, const char *p, 
 static void a_frame_holds_the_newest_versions_of_what_was_asked_for(void **state)
 {
     struct shelf *s = THIS;
-    shelf_load(s, "a.csv", NULL,
-               "EFF BOD5 2025-02-28 1 mg/L\nEFF BOD5 2025-03-01 2 mg/L\nEFF BOD5 2025-03-01 3 mg/L @08:00 note:n\n"
-               "EFF BOD5 2025-03-31 4 mg/L #x\nEFF BOD5 2025-04-01 5 mg/L\nEFF TSS 2025-03-01 6 mg/L\n"
-               "INF BOD5 2025-03-02 7 mg/L");
-    shelf_load(s, "b.csv", "why", "EFF BOD5 2025-03-01 2.5 mg/L\nINF BOD5 2025-03-02 withdrawn mg/L");
+    shelf_load(
+        s, "a.csv", NULL,
+        "EFF BOD5 2025-02-28 1 mg/L\nEFF BOD5 2025-03-01 2 mg/L\nEFF BOD5 2025-03-01 3 mg/L @08:00 "
+        "note:n\n"
+        "EFF BOD5 2025-03-31 4 mg/L #x\nEFF BOD5 2025-04-01 5 mg/L\nEFF TSS 2025-03-01 6 mg/L\n"
+        "INF BOD5 2025-03-02 7 mg/L");
+    shelf_load(s, "b.csv", "why",
+               "EFF BOD5 2025-03-01 2.5 mg/L\nINF BOD5 2025-03-02 withdrawn mg/L");
     const struct frame_span spans[] = {
         {point(s, "EFF"), parameter(s, "BOD5"), day("2025-03-01"), day("2025-03-20")},
-        {point(s, "EFF"), parameter(s, "BOD5"), day("2025-03-10"), day("2025-03-31")}, /* overlaps */
+        {point(s, "EFF"), parameter(s, "BOD5"), day("2025-03-10"),
+         day("2025-03-31")}, /* overlaps */
         {point(s, "INF"), parameter(s, "BOD5"), day("2025-03-01"), day("2025-03-31")},
     };
     struct frame *f = filled(s, spans, NELEM(spans), "2025-03-01", "2025-03-31");
@@ -74,8 +81,10 @@ static void a_frame_holds_the_newest_versions_of_what_was_asked_for(void **state
     assert_string_equal(r->file, "b.csv");
     assert_int_equal(r->line, 2);
     assert_int_equal(r->version, 1);
-    assert_string_equal(frame_readings(f, point(s, "EFF"), parameter(s, "BOD5"), day("2025-03-01"), &count)[1]->detail->note,
-                        "n");
+    assert_string_equal(
+        frame_readings(f, point(s, "EFF"), parameter(s, "BOD5"), day("2025-03-01"), &count)[1]
+            ->detail->note,
+        "n");
 }
 
 /* INF FLOW is a totalizer: the first day needs the register before it. 1005 - 1000 = 5. */
@@ -84,11 +93,14 @@ static void a_totalizer_gets_the_reading_before_its_span(void **state)
     struct shelf *s = THIS;
     struct day_value v;
     shelf_load(s, "a.csv", NULL,
-               "INF FLOW 2025-02-27 900 MGD\nINF FLOW 2025-02-28 950 MGD @06:00\nINF FLOW 2025-02-28 999 MGD @07:00\n"
+               "INF FLOW 2025-02-27 900 MGD\nINF FLOW 2025-02-28 950 MGD @06:00\nINF FLOW "
+               "2025-02-28 999 MGD @07:00\n"
                "INF FLOW 2025-02-28 777 MGD @08:00\nINF FLOW 2025-02-28 code:E MGD @09:00\n"
                "INF FLOW 2025-03-01 1005 MGD");
-    shelf_load(s, "b.csv", "why", "INF FLOW 2025-02-28 1000 MGD @07:00\nINF FLOW 2025-02-28 withdrawn MGD @08:00");
-    const struct frame_span span = {point(s, "INF"), parameter(s, "FLOW"), day("2025-03-01"), day("2025-03-31")};
+    shelf_load(s, "b.csv", "why",
+               "INF FLOW 2025-02-28 1000 MGD @07:00\nINF FLOW 2025-02-28 withdrawn MGD @08:00");
+    const struct frame_span span = {point(s, "INF"), parameter(s, "FLOW"), day("2025-03-01"),
+                                    day("2025-03-31")};
     struct frame *f = filled(s, &span, 1, "2025-03-01", "2025-03-31");
     frame_day(f, span.point, span.parameter, day("2025-03-01"), &s->plant->rules, NULL, &v);
     assert_int_equal(v.state, DAY_VALUED);
@@ -108,14 +120,16 @@ static void spans_and_extent_tell_what_there_is(void **state)
     good(s, book_spans(b, s->arena, s->plant, DAY_NONE, DAY_NONE, &spans, &count, &s->fault));
     assert_int_equal(count, 0);
     book_close(b);
-    shelf_load(s, "a.csv", NULL,
-               "INF TSS 2025-03-05 1 mg/L\nINF TSS 2025-03-05 1 mg/L #b\nEFF BOD5 2025-02-01 1 mg/L\n"
-               "EFF TSS 2025-05-01 1 mg/L");
+    shelf_load(
+        s, "a.csv", NULL,
+        "INF TSS 2025-03-05 1 mg/L\nINF TSS 2025-03-05 1 mg/L #b\nEFF BOD5 2025-02-01 1 mg/L\n"
+        "EFF TSS 2025-05-01 1 mg/L");
     b = shelf_open(s, BOOK_READ);
     good(s, book_extent(b, &first, &last, &s->fault));
     assert_int_equal(first, day("2025-02-01"));
     assert_int_equal(last, day("2025-05-01"));
-    good(s, book_spans(b, s->arena, s->plant, day("2025-02-01"), day("2025-03-05"), &spans, &count, &s->fault));
+    good(s, book_spans(b, s->arena, s->plant, day("2025-02-01"), day("2025-03-05"), &spans, &count,
+                       &s->fault));
     assert_int_equal(count, 2);
     assert_int_equal(spans[0].point, point(s, "INF"));
     assert_int_equal(spans[0].parameter, parameter(s, "TSS"));
@@ -143,10 +157,13 @@ static void every_reading_in_force_comes_once_in_order(void **state)
     struct shelf *s = THIS;
     struct text t;
     shelf_load(s, "a.csv", NULL,
-               "EFF TSS 2025-03-02 9 mg/L\nEFF BOD5 2025-03-02 6 mg/L @10:00\nEFF BOD5 2025-03-02 5 mg/L @09:00 #z\n"
-               "EFF BOD5 2025-03-02 4 mg/L @09:00 #a\nEFF BOD5 2025-03-02 3 mg/L\nEFF BOD5 2025-03-01 2 mg/L\n"
+               "EFF TSS 2025-03-02 9 mg/L\nEFF BOD5 2025-03-02 6 mg/L @10:00\nEFF BOD5 2025-03-02 "
+               "5 mg/L @09:00 #z\n"
+               "EFF BOD5 2025-03-02 4 mg/L @09:00 #a\nEFF BOD5 2025-03-02 3 mg/L\nEFF BOD5 "
+               "2025-03-01 2 mg/L\n"
                "INF TSS 2025-04-01 1 mg/L\nEFF BOD5 2025-03-03 7 mg/L");
-    shelf_load(s, "b.csv", "why", "EFF BOD5 2025-03-03 withdrawn mg/L\nEFF BOD5 2025-03-02 3.3 mg/L");
+    shelf_load(s, "b.csv", "why",
+               "EFF BOD5 2025-03-03 withdrawn mg/L\nEFF BOD5 2025-03-02 3.3 mg/L");
     struct book *b = shelf_open(s, BOOK_READ);
     text_init(&t, 1000);
     good(s, book_each(b, s->plant, DAY_NONE, DAY_NONE, gather, &t, &s->fault));
@@ -155,7 +172,8 @@ static void every_reading_in_force_comes_once_in_order(void **state)
     good(s, book_each(b, s->plant, day("2025-03-02"), day("2025-03-02"), gather, &t, &s->fault));
     assert_string_equal(t.at, "3.3 4 5 6 9 ");
     int seen = 0;
-    assert_int_equal(book_each(b, s->plant, DAY_NONE, DAY_NONE, stop_at_second, &seen, &s->fault), FAULT);
+    assert_int_equal(book_each(b, s->plant, DAY_NONE, DAY_NONE, stop_at_second, &seen, &s->fault),
+                     FAULT);
     assert_string_equal(s->fault.text, "enough");
     assert_int_equal(seen, 2);
     fault_clear(&s->fault);
@@ -166,7 +184,8 @@ static void every_reading_in_force_comes_once_in_order(void **state)
 static enum status gather_aside(void *context, const struct book_aside *a, struct fault *f)
 {
     (void)f;
-    text_print(context, "%s:%ld:%d %s '%s' ", a->row.file, a->row.line, a->row.column, a->reason, a->row.cell[LONG_DATE]);
+    text_print(context, "%s:%ld:%d %s '%s' ", a->row.file, a->row.line, a->row.column, a->reason,
+               a->row.cell[LONG_DATE]);
     return OK;
 }
 
@@ -174,13 +193,16 @@ static void rows_set_aside_come_by_their_days_and_the_unreadable_always(void **s
 {
     struct shelf *s = THIS;
     struct text t;
-    struct row_text row = {.file = "wide.csv", .line = 8, .column = 3, .cell = {"2025-03-09"}, .raw = "raw; \"line"};
+    struct row_text row = {
+        .file = "wide.csv", .line = 8, .column = 3, .cell = {"2025-03-09"}, .raw = "raw; \"line"};
     shelf_load(s, "a.csv", NULL,
-               "aside:not-a-number 2025-03-01 - EFF BOD5 1O mg/L\naside:bad-date 03/04/05 - EFF BOD5 1 mg/L\n"
+               "aside:not-a-number 2025-03-01 - EFF BOD5 1O mg/L\naside:bad-date 03/04/05 - EFF "
+               "BOD5 1 mg/L\n"
                "aside:not-a-number 2025-04-01 - EFF BOD5 x mg/L");
     struct book *b = shelf_open(s, BOOK_WRITE);
     good(s, book_load_begin(b, s->plant, &tester, false, &s->fault));
-    good(s, book_load_aside(b, &row, REASON_WRONG_COLUMNS, "three cells, the header has five", &s->fault));
+    good(s, book_load_aside(b, &row, REASON_WRONG_COLUMNS, "three cells, the header has five",
+                            &s->fault));
     good(s, end_load(s, b, "wide.csv", NULL, 1));
     book_close(b);
     b = shelf_open(s, BOOK_READ);
@@ -193,8 +215,9 @@ static void rows_set_aside_come_by_their_days_and_the_unreadable_always(void **s
     assert_non_null(strstr(t.at, "2025-04-01"));
     text_free(&t);
     book_close(b);
-    assert_string_equal(raw_text(s, "SELECT raw || explanation FROM rows_set_aside WHERE file = 'wide.csv'"),
-                        "raw; \"linethree cells, the header has five");
+    assert_string_equal(
+        raw_text(s, "SELECT raw || explanation FROM rows_set_aside WHERE file = 'wide.csv'"),
+        "raw; \"linethree cells, the header has five");
 }
 
 static enum status gather_revision(void *context, const struct book_revision *r, struct fault *f)
@@ -216,7 +239,8 @@ static void revisions_come_by_day(void **state)
     good(s, book_revisions(b, s->plant, DAY_NONE, DAY_NONE, gather_revision, &t, &s->fault));
     assert_string_equal(t.at, "9>6 6>5 8>7 ");
     text_clear(&t);
-    good(s, book_revisions(b, s->plant, day("2025-04-01"), day("2025-04-30"), gather_revision, &t, &s->fault));
+    good(s, book_revisions(b, s->plant, day("2025-04-01"), day("2025-04-30"), gather_revision, &t,
+                           &s->fault));
     assert_string_equal(t.at, "8>7 ");
     text_free(&t);
     book_close(b);
@@ -225,9 +249,9 @@ static void revisions_come_by_day(void **state)
 static enum status gather_batch(void *context, const struct book_batch *x, struct fault *f)
 {
     (void)f;
-    text_print(context, "%d %s %s %s %s %ld=%ld+%ld+%ld+%ld '%s' %d; ", (int)x->batch, x->kind, x->file, x->when, x->who,
-               x->counts.rows, x->counts.accepted, x->counts.present, x->counts.revised, x->counts.aside, x->reason,
-               (int)strlen(x->head));
+    text_print(context, "%d %s %s %s %s %ld=%ld+%ld+%ld+%ld '%s' %d; ", (int)x->batch, x->kind,
+               x->file, x->when, x->who, x->counts.rows, x->counts.accepted, x->counts.present,
+               x->counts.revised, x->counts.aside, x->reason, (int)strlen(x->head));
     return OK;
 }
 
@@ -241,9 +265,10 @@ static void batches_come_in_order_each_with_its_head(void **state)
     struct book *b = shelf_open(s, BOOK_READ);
     text_init(&t, 2000);
     good(s, book_batches(b, gather_batch, &t, &s->fault));
-    assert_string_equal(t.at, "1 description  2025-04-01T06:10:00Z tester 12=0+0+0+0 'first description' 64; "
-                              "2 load a.csv 2025-04-01T06:10:00Z tester 2=1+0+0+1 '' 64; "
-                              "3 load b.csv 2025-04-01T06:10:00Z tester 1=0+0+1+0 'why' 64; ");
+    assert_string_equal(
+        t.at, "1 description  2025-04-01T06:10:00Z tester 12=0+0+0+0 'first description' 64; "
+              "2 load a.csv 2025-04-01T06:10:00Z tester 2=1+0+0+1 '' 64; "
+              "3 load b.csv 2025-04-01T06:10:00Z tester 1=0+0+1+0 'why' 64; ");
     text_free(&t);
     good(s, book_head(b, head, &s->fault));
     book_close(b);
@@ -260,12 +285,14 @@ static void a_damaged_reading_is_never_handed_over(void **state)
     tamper(s, "reading", "UPDATE reading SET value = '8', coefficient = 8 WHERE line = 3");
     assert_null(shelf_told(s, &s->fault));
     snprintf(said, sizeof said,
-             "'%s' is damaged: reading 2 (EFF TSS) of batch 2, a.csv:3, is not what was loaded; run 'weirbook check', and "
+             "'%s' is damaged: reading 2 (EFF TSS) of batch 2, a.csv:3, is not what was loaded; "
+             "run 'weirbook check', and "
              "go back to a sound copy",
              s->path);
     assert_string_equal(s->fault.text, said);
     fault_clear(&s->fault);
-    const struct frame_span span = {point(s, "EFF"), parameter(s, "TSS"), day("2025-03-01"), day("2025-03-31")};
+    const struct frame_span span = {point(s, "EFF"), parameter(s, "TSS"), day("2025-03-01"),
+                                    day("2025-03-31")};
     struct book *b = shelf_open(s, BOOK_READ);
     struct frame *frame = frame_new(s->arena, s->plant, span.first, span.last);
     assert_int_equal(book_fill(b, s->arena, s->plant, &span, 1, frame, &s->fault), FAULT);
@@ -276,10 +303,12 @@ static void a_damaged_reading_is_never_handed_over(void **state)
 
 /* ---- query plans ---- */
 
-/* Tables that grow with the years may be searched, and scanned only where a statement is for all of them. */
+/* Tables that grow with the years may be searched, and scanned only where a statement is for all of
+ * them. */
 static bool may_scan(enum statement which, const char *what)
 {
-    static const char *const small[] = {"SCAN s", "SCAN unit_code", "SCAN sqlite_schema", "SCAN qualifier"};
+    static const char *const small[] = {"SCAN s", "SCAN unit_code", "SCAN sqlite_schema",
+                                        "SCAN qualifier"};
     for (size_t i = 0; i < NELEM(small); i++)
         if (strcmp(what, small[i]) == 0)
             return true;
@@ -326,7 +355,8 @@ static void a_months_readings_come_by_the_key_alone(void **state)
     } cases[] = {
         {SERIES_SPAN, "SEARCH r USING INDEX reading_key (series=? AND day>? AND day<?)"},
         {SERIES_BEFORE, "SEARCH r USING INDEX reading_key (series=? AND day<?)"},
-        {SERIES_HAS, "SEARCH reading USING COVERING INDEX reading_key (series=? AND day>? AND day<?)"},
+        {SERIES_HAS,
+         "SEARCH reading USING COVERING INDEX reading_key (series=? AND day>? AND day<?)"},
         {NEWEST_READING, "SEARCH r USING INDEX reading_key (series=? AND day=? AND minute=?)"},
     };
     struct shelf *s = THIS;

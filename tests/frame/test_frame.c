@@ -302,6 +302,23 @@ static void a_reading_in_a_unit_of_another_kind_is_no_number(void **state)
     made_free(m);
 }
 
+/* Common practice, no source: a meter at rest inside the works is a flow of 0, not a day without
+ * discharge. */
+static void a_flow_of_zero_inside_the_works_is_a_flow(void **state)
+{
+    (void)state;
+    struct made *m = made_plant("2025-03", "no_discharge,skip", "", "");
+    struct frame *f;
+
+    made_readings(m, "PE FLOW MGD 1=0\nPE TSS mg/L 1=80\nEFF FLOW MGD 1=0\n");
+    f = made_frame(m, m->month, month_last(m->month));
+    assert_false(frame_no_discharge(f, plant_point(m->plant, "PE"), m->month));
+    assert_true(frame_no_discharge(f, plant_point(m->plant, "EFF"), m->month));
+    assert_string_equal(day_text(m, f, "PE", "FLOW", 1, NULL), "0");
+    assert_string_equal(day_text(m, f, "PE", "TSS", 1, NULL), "80");
+    made_free(m);
+}
+
 /* R23, R39, G10: EPA's no-data indicator C, and a flow of 0. */
 static void a_code_c_or_a_flow_of_0_marks_the_day_and_a_flow_above_0_clears_it(void **state)
 {
@@ -492,6 +509,7 @@ int main(void)
         cmocka_unit_test(days_without_a_value_say_what_is_missing),
         cmocka_unit_test(a_reading_in_a_unit_of_another_kind_is_no_number),
         cmocka_unit_test(a_code_c_or_a_flow_of_0_marks_the_day_and_a_flow_above_0_clears_it),
+        cmocka_unit_test(a_flow_of_zero_inside_the_works_is_a_flow),
         cmocka_unit_test(the_flow_of_a_point_is_its_own_meter_then_the_rules),
         cmocka_unit_test(a_register_gives_the_days_difference),
         cmocka_unit_test(a_day_the_register_cannot_tell_says_why),

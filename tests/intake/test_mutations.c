@@ -13,7 +13,7 @@
 #include <stdlib.h>
 #include <string.h>
 
-enum { MUTATIONS = 3000, CHANGES_MOST = 6 };
+enum { MUTATIONS = 1000, CHANGES_MOST = 6 };
 
 static const char *const sound[] = {
     "date,time,point,parameter,value,unit,sample,mdl,rl,note\n"

@@ -133,7 +133,7 @@ def other_sheets(book):
     check([sheet.cell(r, 1).value for r in rows(sheet)] == found, "Exceedances: not those of the summary")
     process = book["Process"]
     check([process.cell(r, 2).value for r in (2, 3, 33, 34, 35, 36)] == [121.0, 124.5, 122.8, 121.0, 124.5, 2], "Process")
-    check(process.cell(1, 2).value == "sludge-volume-index AB1 mL/g", f"Process: {process.cell(1, 2).value}")
+    check(process.cell(1, 2).value == "sludge volume index AB1 mL/g", f"Process: {process.cell(1, 2).value}")
     rules = [line[0].value for line in book["Rules and notes"].iter_rows()]
     for sentence in ("weeks begin on Sunday", "The permit governs over this summary.", "BOD5: SM 5210 B",
                      "2025-03-10, EFF CL2: code E, analysis not conducted"):
