@@ -108,13 +108,17 @@ static enum status gather(struct session *s, const struct report_options *o, str
     day_t on = o->on != DAY_NONE ? o->on : in->printed;
     struct gathered *g = arena_alloc(s->arena, sizeof *g);
     char head[2 * DIGEST_BYTES + 1];
-    struct process_figure *figures = NULL;
-    struct process_options table = {.from = o->month, .to = last, .step = STEP_DAY, .smooth = 1};
+    struct process_figure *figures = NULL, *means = NULL;
+    const struct process_options days = {
+        .from = o->month, .to = last, .step = STEP_DAY, .smooth = 1};
+    const struct process_options whole = {
+        .from = o->month, .to = last, .step = STEP_MONTH, .smooth = 1};
 
     if (session_book(s, BOOK_READ, NULL, &plant, f) != OK ||
         month_judge(s, plant, o->month, on, &judged, month, f) != OK ||
-        session_frame_all(s, plant, process_reach(&table), last, &all, f) != OK ||
-        process_table(s->arena, all, &table, &figures, &in->process_count, f) != OK)
+        session_frame_all(s, plant, process_reach(&days), last, &all, f) != OK ||
+        process_table(s->arena, all, &days, &figures, &in->process_count, f) != OK ||
+        process_table(s->arena, all, &whole, &means, &in->process_months, f) != OK)
         return FAULT;
     *g = (struct gathered){.arena = s->arena, .plant = plant};
     if (book_asides(s->book, o->month, last, gather_aside, g, f) != OK ||
@@ -125,6 +129,7 @@ static enum status gather(struct session *s, const struct report_options *o, str
     in->frame = all;
     in->permit = month;
     in->process = figures;
+    in->process_month = means;
     in->aside = g->aside;
     in->asides = g->asides;
     in->revision = g->revision;

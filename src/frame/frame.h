@@ -197,8 +197,8 @@ void frame_day(const struct frame *f, int point, int parameter, day_t day,
 /* One reading's amount under the rules, in `unit` (NULL: the parameter's own). False for codes. */
 bool frame_amount(const struct frame *f, const struct reading *r, const struct rules *rules,
                   const struct unit *unit, struct amount *out);
-/* Whether the point did not discharge on the day (R23, R39, G10): code C under any parameter, or at a
- * point that discharges (an effluent, or one with an outfall) a flow of 0; not where its flow is
+/* Whether the point did not discharge on the day (R23, R39, G10): code C under any parameter, or at
+ * a point that discharges (an effluent, or one with an outfall) a flow of 0; not where its flow is
  * above 0. */
 bool frame_no_discharge(const struct frame *f, int point, day_t day);
 /* Whether anything stands on record at the point on the day, codes included. */

@@ -217,9 +217,11 @@ static enum status read_wide(struct header *h, const char *map_path, struct faul
     if (map_read(h->arena, map_path, h->plant, &map, f) != OK)
         return FAULT;
     if (h->layout->columns < 2)
-        return fault_at(f, &(struct place){.file = h->path, .line = h->row->line},
-                        "if another sign parts the cells, state the delimiter in a dialect file",
-                        "the header has one column alone, '%s'", h->layout->column[0].heading);
+        return fault_at(
+            f, &(struct place){.file = h->path, .line = h->row->line},
+            "if its headings stand lower, or another sign parts its cells, state header_line or"
+            " delimiter in a dialect file",
+            "the header has one column alone, '%s'", h->layout->column[0].heading);
     for (size_t i = 1; i < h->layout->columns; i++)
         if (read_wide_column(h, i, &map, f) != OK)
             return FAULT;

@@ -142,15 +142,33 @@ static void add_dates(const struct reader *r, struct text *t)
     }
 }
 
+/* Marks between thousands, when some column has them. */
+static const char *thousands_told(const struct reader *r)
+{
+    for (size_t i = 0; i < r->layout.columns; i++) {
+        switch (r->layout.column[i].style.thousands) {
+        case ',':
+            return ", thousands comma";
+        case '.':
+            return ", thousands point";
+        case ' ':
+            return ", thousands space";
+        default:
+            break;
+        }
+    }
+    return "";
+}
+
 static const char *tell_dialect(const struct reader *r, struct arena *a)
 {
     struct text t;
     text_init(&t, TOLD_BYTES);
-    text_print(&t, "%s, %s, decimal %s", r->layout.wide ? "wide" : "long",
+    text_print(&t, "%s, %s, decimal %s%s", r->layout.wide ? "wide" : "long",
                r->delimiter == ','   ? "commas"
                : r->delimiter == ';' ? "semicolons"
                                      : "tabs",
-               r->decimal == ',' ? "comma" : "point");
+               r->decimal == ',' ? "comma" : "point", thousands_told(r));
     add_dates(r, &t);
     text_print(&t, ", %s", r->lines.encoding == ENCODING_UTF8 ? "UTF-8" : "Windows-1252");
     const char *told = arena_text(a, t.at);

@@ -270,6 +270,35 @@ done:
 
 /* ---- one day ---- */
 
+/* The one reading of a day as the laboratory gave it, its digits kept; NULL where several make the
+ * value, where it was in another unit, or where a register stands behind it. */
+static const char *as_given(struct arena *a, const struct frame *frame, int point, int parameter,
+                            day_t day)
+{
+    static const char *const signs[QUALIFIERS] = {
+        [QUALIFIER_PLAIN] = "", [QUALIFIER_LESS] = "<", [QUALIFIER_GREATER] = ">"};
+    size_t count = 0;
+    const struct reading *const *r = frame_readings(frame, point, parameter, day, &count);
+    const struct plant *plant = frame_plant(frame);
+    const struct meter *meter = plant_meter(plant, point, parameter, day);
+    const struct reading *one = NULL;
+    char digits[24];
+
+    for (size_t i = 0; i < count; i++) {
+        if (r[i]->qualifier == QUALIFIER_CODE)
+            continue;
+        if (one != NULL)
+            return NULL;
+        one = r[i];
+    }
+    if (one == NULL || signs[one->qualifier] == NULL ||
+        unit_at(one->unit) != plant->parameters[parameter].unit ||
+        (meter != NULL && meter->kind == METER_TOTALIZER))
+        return NULL;
+    decimal_write(one->value, digits);
+    return arena_print(a, "%s%s", signs[one->qualifier], digits);
+}
+
 const char *permit_day_text(struct arena *a, const struct frame *frame, int point, int parameter,
                             day_t day, const struct rules *rules, int decimals)
 {
@@ -285,6 +314,7 @@ const char *permit_day_text(struct arena *a, const struct frame *frame, int poin
     struct day_value v;
     struct value value;
     struct figure x;
+    const char *given;
 
     l.rules.word[RULE_DIGITS] = DIGITS_NUMBER;
     w.rules = &l.rules;
@@ -292,6 +322,8 @@ const char *permit_day_text(struct arena *a, const struct frame *frame, int poin
     frame_day(frame, point, parameter, day, rules, NULL, &v);
     if (!v.amount.number)
         return "";
+    if (v.state == DAY_VALUED && (given = as_given(a, frame, point, parameter, day)))
+        return given;
     value = (struct value){.day = day, .amount = v.amount, .readings = v.readings, .sample = true};
     figure_of_value(&w, &value, &x);
     return figure_text(&w, &x, decimals);

@@ -65,8 +65,8 @@ MUST_USE enum status permit_month(struct arena *a, const struct frame *frame, da
 /* Whether a row is a shortfall: fewer samples than required, the period over by `on`. */
 bool permit_shortfall(const struct permit_row *row, day_t on);
 
-/* One day's value as a limit judges it, for the daily pages: text as it is printed ("<2", "14.5"),
- * and whether it is beyond a daily or instantaneous limit of the month. "" where there is none. */
+/* One day's value as it is printed on the daily pages ("<2", "14.5"); "" where there is none. A
+ * day's only reading keeps the laboratory's digits; what is worked from several has `decimals`. */
 const char *permit_day_text(struct arena *a, const struct frame *frame, int point, int parameter,
                             day_t day, const struct rules *rules, int decimals);
 

@@ -215,33 +215,6 @@ static const char *code_letter(struct arena *a, const struct frame *frame, int p
     return "";
 }
 
-/* The one reading of a day as the laboratory gave it, its digits kept; NULL where several make the
- * value, where it was in another unit, or where a register stands behind it. */
-static const char *as_given(struct arena *a, const struct month_input *in,
-                            const struct daily_column *c, day_t day)
-{
-    static const char *const signs[QUALIFIERS] = {
-        [QUALIFIER_PLAIN] = "", [QUALIFIER_LESS] = "<", [QUALIFIER_GREATER] = ">"};
-    size_t count = 0;
-    const struct reading *const *r = frame_readings(in->frame, c->point, c->parameter, day, &count);
-    const struct meter *meter = plant_meter(in->plant, c->point, c->parameter, day);
-    const struct reading *one = NULL;
-    for (size_t i = 0; i < count; i++) {
-        if (r[i]->qualifier == QUALIFIER_CODE)
-            continue;
-        if (one != NULL)
-            return NULL;
-        one = r[i];
-    }
-    if (one == NULL || signs[one->qualifier] == NULL ||
-        unit_at(one->unit) != in->plant->parameters[c->parameter].unit ||
-        (meter != NULL && meter->kind == METER_TOTALIZER))
-        return NULL;
-    char digits[24];
-    decimal_write(one->value, digits);
-    return arena_print(a, "%s%s", signs[one->qualifier], digits);
-}
-
 static void note_broken(struct arena *a, struct daily *d, const struct daily_column *c, day_t day,
                         const char *why)
 {
@@ -258,10 +231,8 @@ static void fill_day(struct arena *a, const struct month_input *in, struct daily
     int i = day - d->first;
     struct day_value v;
     frame_day(in->frame, c->point, c->parameter, day, &p->rules, NULL, &v);
-    const char *given = v.state == DAY_VALUED ? as_given(a, in, c, day) : NULL;
-    c->value[i] = given != NULL ? given
-                                : permit_day_text(a, in->frame, c->point, c->parameter, day,
-                                                  &p->rules, decimals_of(p));
+    c->value[i] =
+        permit_day_text(a, in->frame, c->point, c->parameter, day, &p->rules, decimals_of(p));
     if (v.state == DAY_BROKEN) {
         c->value[i] = "?";
         note_broken(a, d, c, day, v.why != NULL ? v.why : "");

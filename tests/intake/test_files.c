@@ -78,16 +78,43 @@ static void what_is_not_there_or_no_file_says_so(void **state)
                         "none.csv: there is no such file; correct the name");
 }
 
+/* Root may read and write everything: it lays that right down for a moment. */
+static void become_nobody(bool nobody)
+{
+    static const uid_t user = 65534;
+    if (getuid() == 0)
+        assert_int_equal(seteuid(nobody ? user : 0), 0);
+}
+
 static void a_file_that_may_not_be_read_says_so(void **state)
 {
     struct scene *s = *state;
-    if (geteuid() == 0) /* root may read everything; the command tests drop that right */
-        return;
     const char *path = scene_file(s, "locked.csv", HEAD);
     assert_int_equal(chmod(path, 0), 0);
-    assert_string_equal(scene_read_path(s, path, NULL, NULL),
-                        "locked.csv: the file cannot be read (Permission denied); see to it that "
-                        "you may read it, and that its disk is sound");
+    become_nobody(true);
+    const char *said = scene_read_path(s, path, NULL, NULL);
+    become_nobody(false);
+    assert_string_equal(said, "locked.csv: the file cannot be read (Permission denied); see to it "
+                              "that you may read it, and that its disk is sound");
+}
+
+static void a_folder_that_may_not_be_written_says_so(void **state)
+{
+    struct scene *s = *state;
+    struct fault f = {.set = false};
+    const char *folder = scene_path(s, "closed");
+    assert_int_equal(mkdir(folder, 0500), 0);
+    assert_int_equal(chmod(s->folder, 0755), 0);
+    assert_int_equal(chmod(folder, 0555), 0);
+    become_nobody(true);
+    enum status rc = intake_example(folder, &f);
+    become_nobody(false);
+    assert_int_equal(rc, FAULT);
+    assert_string_equal(f.text, arena_print(s->arena,
+                                            "%s/plant.csv: the file cannot be written "
+                                            "(Permission denied); free some room, or "
+                                            "choose a folder that can be written",
+                                            folder));
 }
 
 static void a_file_larger_than_a_gigabyte_is_refused_unread(void **state)
@@ -208,6 +235,7 @@ int main(void)
         cmocka_unit_test(what_is_no_readings_file_says_so),
         cmocka_unit_test(what_is_not_there_or_no_file_says_so),
         cmocka_unit_test(a_file_that_may_not_be_read_says_so),
+        cmocka_unit_test(a_folder_that_may_not_be_written_says_so),
         cmocka_unit_test(a_file_larger_than_a_gigabyte_is_refused_unread),
         cmocka_unit_test(a_file_is_known_by_its_size_and_digest),
         cmocka_unit_test(a_read_file_has_the_digest_it_is_known_by),

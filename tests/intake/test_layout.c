@@ -65,8 +65,8 @@ static const struct {
     {"date,,EFF TSS\n", NULL,
      "readings.csv:1:2: the column has no heading; name it, or take it out"},
     {"date\n2025-03-04\n", NULL,
-     "readings.csv:1: the header has one column alone, 'date'; if another sign parts the cells, "
-     "state the delimiter in a dialect file"},
+     "readings.csv:1: the header has one column alone, 'date'; if its headings stand lower, or "
+     "another sign parts its cells, state header_line or delimiter in a dialect file"},
     /* maps */
     {"Datum;Ablauf AFS in mg/l;Ablauf AFS Tropfen;Rest;EFF PH\n04.03.2025;1;2;x;7,1\n",
      MAP "Ablauf AFS in mg/l,EFF,TSS,mg/L,composite,\nAblauf AFS Tropfen,EFF,TSS,,grab,\n"

@@ -5,4 +5,7 @@ date,point,parameter,value,unit
 2024-12-31,EFF,BOD5,22,mg/L
 2025-02-30,EFF,BOD5,23,mg/L
 END
-"$weirbook" load dates.csv | sed "s|today, 20[0-9-]*|today, {today}|"
+"$weirbook" load dates.csv >told
+status=$?
+sed "s|today, 20[0-9-]*|today, {today}|" told
+exit $status
