@@ -97,14 +97,18 @@ CREATE TABLE series (
     UNIQUE (point, parameter, sample)
 ) STRICT;
 
+-- What many readings have in common.
 CREATE TABLE detail (
     id           INTEGER PRIMARY KEY,
+    unit         INTEGER NOT NULL REFERENCES unit_code (id),
+    mdl          TEXT NOT NULL,  -- method detection limit, in the unit; '' where none is known
+    rl           TEXT NOT NULL,  -- reporting limit, likewise
     method       TEXT NOT NULL,  -- '' where the file says nothing, here and below
     analyst      TEXT NOT NULL,
     collected_by TEXT NOT NULL,
     analyzed     TEXT NOT NULL,  -- when, as written
     note         TEXT NOT NULL,
-    UNIQUE (method, analyst, collected_by, analyzed, note)
+    UNIQUE (unit, mdl, rl, method, analyst, collected_by, analyzed, note)
 ) STRICT;
 
 CREATE TABLE qualifier (
@@ -135,19 +139,21 @@ CREATE TABLE reading (
     scale       INTEGER
                 CONSTRAINT reading_scale CHECK ((scale IS NOT NULL) = (qualifier < 6)
                                                 AND (scale IS NULL OR scale BETWEEN 0 AND 18)),
-    unit        INTEGER NOT NULL REFERENCES unit_code (id),
-    mdl         INTEGER,              -- method detection limit, in the same unit: mdl / 10^mdl_scale
-    mdl_scale   INTEGER
-                CONSTRAINT reading_mdl CHECK ((mdl IS NULL) = (mdl_scale IS NULL)),
-    rl          INTEGER,              -- reporting limit, likewise
-    rl_scale    INTEGER
-                CONSTRAINT reading_rl CHECK ((rl IS NULL) = (rl_scale IS NULL)),
-    detail      INTEGER REFERENCES detail (id),  -- NULL: nothing more is known
+    detail      INTEGER NOT NULL REFERENCES detail (id),  -- its unit, and what else is known of it
     mark        INTEGER NOT NULL      -- a 63-bit FNV-1a hash of all the above, names for numbers
 ) STRICT;
 
 CREATE UNIQUE INDEX reading_key ON reading (series, day, minute, version);
-CREATE INDEX reading_revised ON reading (day) WHERE version > 0;
+
+-- Which readings replaced which. It could be worked out from the versions; it is kept so that they are
+-- found without a search through all readings. (An index over the versions would cost every row of a load.)
+CREATE TABLE revision (
+    reading  INTEGER PRIMARY KEY REFERENCES reading (id),       -- the new version
+    replaced INTEGER NOT NULL UNIQUE REFERENCES reading (id),  -- the version before it
+    day      INTEGER NOT NULL                                   -- of both
+) STRICT;
+
+CREATE INDEX revision_by_day ON revision (day);
 
 -- ---- rows that could not be accepted, as they were written ------------------------------------------------
 
@@ -253,6 +259,10 @@ CREATE TRIGGER reading_stays BEFORE UPDATE ON reading
 BEGIN SELECT RAISE(ABORT, 'readings are never rewritten'); END;
 CREATE TRIGGER reading_kept BEFORE DELETE ON reading
 BEGIN SELECT RAISE(ABORT, 'readings are never taken out'); END;
+CREATE TRIGGER revision_stays BEFORE UPDATE ON revision
+BEGIN SELECT RAISE(ABORT, 'readings are never rewritten'); END;
+CREATE TRIGGER revision_kept BEFORE DELETE ON revision
+BEGIN SELECT RAISE(ABORT, 'readings are never taken out'); END;
 CREATE TRIGGER aside_stays BEFORE UPDATE ON aside
 BEGIN SELECT RAISE(ABORT, 'rows set aside are never rewritten'); END;
 CREATE TRIGGER aside_kept BEFORE DELETE ON aside
@@ -331,16 +341,15 @@ SELECT date(r.day * 86400, 'unixepoch') AS date,
             ELSE format('%02d:%02d', r.minute / 60, r.minute % 60) END AS time,
        p.name AS point, q.name AS parameter, r.value, u.name AS unit, w.word AS qualifier,
        CAST(r.coefficient || 'e-' || r.scale AS REAL) AS number,
-       s.sample, coalesce(d.method, '') AS method, coalesce(d.analyst, '') AS analyst,
-       coalesce(d.collected_by, '') AS collected_by, coalesce(d.analyzed, '') AS analyzed,
-       coalesce(d.note, '') AS note, coalesce(l.file, '') AS file, r.line, r.version, r.batch, r.id
+       s.sample, d.mdl, d.rl, d.method, d.analyst, d.collected_by, d.analyzed, d.note,
+       coalesce(l.file, '') AS file, r.line, r.version, r.batch, r.id
 FROM reading r
 JOIN series s ON s.id = r.series
 JOIN point_code p ON p.id = s.point
 JOIN parameter_code q ON q.id = s.parameter
-JOIN unit_code u ON u.id = r.unit
+JOIN detail d ON d.id = r.detail
+JOIN unit_code u ON u.id = d.unit
 JOIN qualifier w ON w.id = r.qualifier
-LEFT JOIN detail d ON d.id = r.detail
 LEFT JOIN load l ON l.batch = r.batch
 WHERE r.qualifier <> 7
   AND NOT EXISTS (SELECT 1 FROM reading n WHERE n.series = r.series AND n.day = r.day
@@ -364,17 +373,18 @@ SELECT date(r.day * 86400, 'unixepoch') AS date,
        CASE WHEN r.qualifier = 7 THEN 'withdrawn' ELSE r.value END AS new, u.name AS unit,
        b.who, b.at AS "when", coalesce(l.reason, '') AS reason, coalesce(l.file, '') AS file, r.line,
        r.version, r.batch
-FROM reading r
-JOIN reading o ON o.series = r.series AND o.day = r.day AND o.minute = r.minute
-              AND o.version = r.version - 1
+FROM revision v
+JOIN reading r ON r.id = v.reading
+JOIN reading o ON o.id = v.replaced
 JOIN series s ON s.id = r.series
 JOIN point_code p ON p.id = s.point
 JOIN parameter_code q ON q.id = s.parameter
-JOIN unit_code u ON u.id = r.unit
-JOIN unit_code ou ON ou.id = o.unit
+JOIN detail d ON d.id = r.detail
+JOIN unit_code u ON u.id = d.unit
+JOIN detail od ON od.id = o.detail
+JOIN unit_code ou ON ou.id = od.unit
 JOIN batch b ON b.id = r.batch
-LEFT JOIN load l ON l.batch = r.batch
-WHERE r.version > 0;
+LEFT JOIN load l ON l.batch = r.batch;
 
 -- Everything that was ever done to the book.
 CREATE VIEW batches AS

@@ -30,6 +30,7 @@ struct check {
     uint8_t running[DIGEST_BYTES]; /* the head so far */
     int64_t next_batch, next_reading, next_aside;
     int64_t count[PARTS], bad[PARTS];
+    int64_t newer;     /* readings that replaced one */
     int64_t rows_left; /* of the description that is walked */
 };
 
@@ -271,6 +272,7 @@ static enum status walk_readings(struct check *c, int64_t first, int64_t count, 
         bool sound = row_sound(&c->pack, &row);
         digest_add(c->content, c->pack.at, c->pack.length);
         c->count[READING]++;
+        c->newer += row.version > 0;
         next++;
         if (!sound && tell_reading(c, &row) != OK)
             return FAULT;
@@ -474,6 +476,24 @@ static enum status check_strays(struct check *c, enum statement last, enum part 
     return tell(c, part, 0, NULL, 0, "number %lld belongs to no batch" GO_BACK, (long long)id);
 }
 
+/* Every newer version is joined to the one before it, and nothing else is. */
+static enum status check_revisions(struct check *c, struct fault *f)
+{
+    sqlite3_stmt *s = NULL;
+    bool row;
+    if (book_statement(c->book, CHECK_REVISIONS, &s, f) != OK ||
+        book_step(c->book, s, &row, f) != OK)
+        return FAULT;
+    int64_t rows = sqlite3_column_int64(s, 0), joined = sqlite3_column_int64(s, 1);
+    sqlite3_reset(s);
+    if (rows == c->newer && joined == c->newer)
+        return OK;
+    return tell(
+        c, READING, 0, NULL, 0,
+        "of %lld newer versions %lld are joined to what they replaced, by %lld rows" GO_BACK,
+        (long long)c->newer, (long long)joined, (long long)rows);
+}
+
 static enum status check_chain(struct check *c, struct fault *f)
 {
     sqlite3_stmt *s = NULL;
@@ -488,6 +508,7 @@ static enum status check_chain(struct check *c, struct fault *f)
             break;
         TRY(walk_batch(c, s, f));
     }
+    TRY(check_revisions(c, f));
     TRY(check_strays(c, LAST_READING, READING, c->next_reading, f));
     TRY(check_strays(c, LAST_ASIDE, ASIDE, c->next_aside, f));
 done:

@@ -19,11 +19,18 @@ void codes_free(struct codes *c)
     *c = (struct codes){0};
 }
 
+/* Eight bytes at a time; any mixing does, since keys are compared. */
 static uint64_t hash_of(const uint8_t *key, size_t length)
 {
-    uint64_t h = 0xcbf29ce484222325U;
-    for (size_t i = 0; i < length; i++)
-        h = (h ^ key[i]) * 0x100000001b3U;
+    uint64_t h = length * 0x9e3779b97f4a7c15U, word = 0;
+    for (; length >= sizeof word; key += sizeof word, length -= sizeof word) {
+        memcpy(&word, key, sizeof word);
+        h = (h ^ word) * 0x9e3779b97f4a7c15U;
+        h ^= h >> 29;
+    }
+    word = 0;
+    memcpy(&word, key, length);
+    h = (h ^ word) * 0x9e3779b97f4a7c15U;
     return h ^ h >> 32;
 }
 

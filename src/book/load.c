@@ -249,44 +249,91 @@ done:
     return rc;
 }
 
+/* What is bound of a row of table detail. */
+struct detail_key {
+    int64_t unit;
+    char mdl[24], rl[24];
+    const struct detail *detail;
+};
+
 static void bind_detail(sqlite3_stmt *s, const void *what)
 {
-    const struct detail *d = what;
-    bind_text(s, 1, d->method);
-    bind_text(s, 2, d->analyst);
-    bind_text(s, 3, d->collected_by);
-    bind_text(s, 4, d->analyzed);
-    bind_text(s, 5, d->note);
+    const struct detail_key *key = what;
+    bind_int(s, 1, key->unit);
+    bind_text(s, 2, key->mdl);
+    bind_text(s, 3, key->rl);
+    bind_text(s, 4, key->detail->method);
+    bind_text(s, 5, key->detail->analyst);
+    bind_text(s, 6, key->detail->collected_by);
+    bind_text(s, 7, key->detail->analyzed);
+    bind_text(s, 8, key->detail->note);
 }
 
-static bool says_nothing(const struct detail *d)
+static void add_key(struct text *t, const void *bytes, size_t length)
 {
-    return !d || !(*d->method || *d->analyst || *d->collected_by || *d->analyzed || *d->note);
+    text_add_bytes(t, bytes, length);
 }
 
-static enum status detail_code(struct book *b, struct load *l, const struct detail *d, int64_t *out,
-                               struct fault *f)
+/* All that tells two rows of table detail apart, as bytes. */
+static void make_detail_key(struct text *t, const struct reading *r, const struct detail *d)
 {
     const char *const part[] = {d->method, d->analyst, d->collected_by, d->analyzed, d->note};
-    text_clear(&l->key);
+    text_clear(t);
+    add_key(t, &r->unit, sizeof r->unit);
+    text_add_char(t, (char)(r->has_mdl + 2 * r->has_rl));
+    if (r->has_mdl) {
+        add_key(t, &r->mdl.coefficient, sizeof r->mdl.coefficient);
+        add_key(t, &r->mdl.scale, sizeof r->mdl.scale);
+    }
+    if (r->has_rl) {
+        add_key(t, &r->rl.coefficient, sizeof r->rl.coefficient);
+        add_key(t, &r->rl.scale, sizeof r->rl.scale);
+    }
     for (size_t i = 0; i < NELEM(part); i++)
-        text_add_bytes(&l->key, part[i], strlen(part[i]) + 1);
-    assert(!l->key.overflowed); /* cells are far shorter; half a key would stand for another */
+        add_key(t, part[i], strlen(part[i]) + 1);
+    assert(!t->overflowed); /* cells are far shorter; half a key would stand for another */
+}
+
+static enum status detail_code(struct book *b, struct load *l, const struct reading *r,
+                               const struct common *c, int64_t *out, struct fault *f)
+{
+    struct detail_key key = {.detail = &c->detail};
+    enum status rc = OK;
+    make_detail_key(&l->key, r, &c->detail);
     *out = codes_find(&l->details, l->key.at, l->key.length);
     if (*out)
         return OK;
-    if (find_or_add(b, FIND_DETAIL, ADD_DETAIL, bind_detail, d, out, f) != OK)
-        return FAULT;
+    TRY(name_code(b, FIND_UNIT, ADD_UNIT, c->unit_name, &l->unit[r->unit], f));
+    key.unit = l->unit[r->unit];
+    if (r->has_mdl)
+        decimal_write(r->mdl, key.mdl);
+    if (r->has_rl)
+        decimal_write(r->rl, key.rl);
+    TRY(find_or_add(b, FIND_DETAIL, ADD_DETAIL, bind_detail, &key, out, f));
     codes_add(&l->details, l->key.at, l->key.length, *out);
-    return OK;
+done:
+    return rc;
 }
 
 /* ---- one reading ---- */
 
-/* What the table will hold. `code` gives the no-data code room for a NUL. */
-static void to_stored(const struct load *l, const struct reading *r, char code[2], struct stored *s)
+static void to_common(const struct reading *r, struct common *c)
 {
-    bool has_number = r->qualifier < QUALIFIER_CODE;
+    *c = (struct common){.unit_name = unit_at(r->unit)->name,
+                         .unit = r->unit,
+                         .has_mdl = r->has_mdl,
+                         .has_rl = r->has_rl,
+                         .mdl = r->mdl,
+                         .rl = r->rl,
+                         .detail = {"", "", "", "", ""}};
+    if (r->detail)
+        c->detail = *r->detail;
+}
+
+/* What the table will hold. `code` gives the no-data code room for a NUL. */
+static void to_stored(const struct load *l, const struct reading *r, const struct common *c,
+                      char code[2], struct stored *s)
+{
     code[0] = r->code;
     code[1] = '\0';
     *s = (struct stored){
@@ -296,34 +343,16 @@ static void to_stored(const struct load *l, const struct reading *r, char code[2
         .day = r->day,
         .minute = r->minute,
         .qualifier = r->qualifier,
-        .has_number = has_number,
-        .has_mdl = r->has_mdl,
-        .has_rl = r->has_rl,
+        .has_number = r->qualifier < QUALIFIER_CODE,
         .coefficient = r->value.coefficient,
         .scale = r->value.scale,
-        .mdl = r->mdl.coefficient,
-        .mdl_scale = r->mdl.scale,
-        .rl = r->rl.coefficient,
-        .rl_scale = r->rl.scale,
         .code = r->qualifier == QUALIFIER_CODE ? code : NULL,
         .value = r->text,
         .point = l->plant->points[r->point].id,
         .parameter = l->plant->parameters[r->parameter].id,
         .sample = r->sample,
-        .unit_name = unit_at(r->unit)->name,
-        .known = says_nothing(r->detail) ? NULL : r->detail,
+        .common = c,
     };
-}
-
-static void bind_decimal(sqlite3_stmt *q, int at, bool has, int64_t coefficient, int64_t scale)
-{
-    if (has) {
-        bind_int(q, at, coefficient);
-        bind_int(q, at + 1, scale);
-    } else {
-        bind_null(q, at);
-        bind_null(q, at + 1);
-    }
 }
 
 /* *added is false when that version of its key is there already. */
@@ -344,15 +373,15 @@ static enum status add_reading(struct book *b, struct load *l, struct stored *s,
     bind_int(q, 8, s->qualifier);
     bind_text(q, 9, s->code);
     bind_text(q, 10, s->value);
-    bind_decimal(q, 11, s->has_number, s->coefficient, s->scale);
-    bind_int(q, 13, s->unit);
-    bind_decimal(q, 14, s->has_mdl, s->mdl, s->mdl_scale);
-    bind_decimal(q, 16, s->has_rl, s->rl, s->rl_scale);
-    if (s->known)
-        bind_int(q, 18, s->detail);
-    else
-        bind_null(q, 18);
-    bind_int(q, 19, pack_mark(&l->pack));
+    if (s->has_number) {
+        bind_int(q, 11, s->coefficient);
+        bind_int(q, 12, s->scale);
+    } else {
+        bind_null(q, 11);
+        bind_null(q, 12);
+    }
+    bind_int(q, 13, s->detail);
+    bind_int(q, 14, pack_mark(&l->pack));
     if (book_run(b, q, f) != OK)
         return FAULT;
     *added = sqlite3_changes(b->db) == 1;
@@ -366,7 +395,7 @@ static enum status add_reading(struct book *b, struct load *l, struct stored *s,
 /* ---- a reading whose key is taken ---- */
 
 struct newest {
-    int64_t id, version, batch, line, unit, qualifier;
+    int64_t id, version, batch, line, detail, qualifier;
     struct decimal number;
     char code;
 };
@@ -392,7 +421,7 @@ static enum status find_newest(struct book *b, struct load *l, const struct stor
         .line = sqlite3_column_int64(q, 6),
         .qualifier = sqlite3_column_int64(q, 7),
         .code = column_text(q, 8)[0],
-        .unit = sqlite3_column_int64(q, 12),
+        .detail = sqlite3_column_int64(q, 12),
         .number = {.coefficient = sqlite3_column_int64(q, 10),
                    .scale = (int8_t)sqlite3_column_int(q, 11)},
     };
@@ -402,15 +431,15 @@ static enum status find_newest(struct book *b, struct load *l, const struct stor
     return book_step(b, q, &row, f);
 }
 
-/* The unit of a code; NULL when this program does not know it. */
-static enum status unit_of(struct book *b, int64_t code, const struct unit **out, struct fault *f)
+/* The unit of a detail; NULL when this program does not know it. */
+static enum status unit_of(struct book *b, int64_t detail, const struct unit **out, struct fault *f)
 {
     sqlite3_stmt *q = NULL;
     bool row;
     *out = NULL;
-    if (book_statement(b, UNIT_AT, &q, f) != OK)
+    if (book_statement(b, DETAIL_AT, &q, f) != OK)
         return FAULT;
-    bind_int(q, 1, code);
+    bind_int(q, 1, detail);
     if (book_step(b, q, &row, f) != OK)
         return FAULT;
     if (row)
@@ -482,6 +511,25 @@ static void confirm(struct load *l, const struct newest *old)
         l->confirmed[old->id / 8] |= (uint8_t)(1U << old->id % 8);
 }
 
+static enum status add_revision(struct book *b, struct load *l, const struct newest *old,
+                                struct stored *s, struct fault *f)
+{
+    sqlite3_stmt *q = NULL;
+    bool added = false;
+    enum status rc = OK;
+    s->version = old->version + 1;
+    TRY(add_reading(b, l, s, &added, f));
+    if (!added)
+        return book_damaged(b, f, "an index leads nowhere");
+    TRY(book_statement(b, ADD_REVISION, &q, f));
+    bind_int(q, 1, s->id);
+    bind_int(q, 2, old->id);
+    bind_int(q, 3, s->day);
+    TRY(book_run(b, q, f));
+done:
+    return rc;
+}
+
 static enum status settle(struct book *b, struct load *l, const struct reading *r, struct stored *s,
                           enum book_outcome *outcome, struct book_clash *clash, struct fault *f)
 {
@@ -491,7 +539,7 @@ static enum status settle(struct book *b, struct load *l, const struct reading *
     enum status rc = OK;
 
     TRY(find_newest(b, l, s, &old, f));
-    TRY(unit_of(b, old.unit, &unit, f));
+    TRY(unit_of(b, old.detail, &unit, f));
     bool gone = old.qualifier == QUALIFIER_WITHDRAWN && r->qualifier != QUALIFIER_WITHDRAWN;
     *outcome = BOOK_CONTRADICTS;
     if (same_value(r, &old, unit))
@@ -500,16 +548,12 @@ static enum status settle(struct book *b, struct load *l, const struct reading *
         *outcome = BOOK_ACCEPTED; /* nothing in force is contradicted */
     else if (l->revise && !spoken_for(l, &old))
         *outcome = BOOK_REVISED;
-    if (*outcome == BOOK_ACCEPTED || *outcome == BOOK_REVISED) {
-        s->version = old.version + 1;
-        TRY(add_reading(b, l, s, &added, f));
-        if (!added)
-            rc = book_damaged(b, f, "an index leads nowhere");
-    } else if (*outcome == BOOK_CONTRADICTS) {
+    if (*outcome == BOOK_ACCEPTED || *outcome == BOOK_REVISED)
+        rc = add_revision(b, l, &old, s, f);
+    else if (*outcome == BOOK_CONTRADICTS)
         rc = tell_clash(b, l, &old, unit, r, clash, f);
-    } else {
+    else
         confirm(l, &old);
-    }
 done:
     return rc;
 }
@@ -518,18 +562,17 @@ enum status book_load_reading(struct book *b, const struct reading *r, enum book
                               struct book_clash *clash, struct fault *f)
 {
     struct load *l = b->load;
+    struct common common;
     struct stored s;
     char code[2];
     bool added = false;
     enum status rc = OK;
 
     assert(l && r->point < l->plant->point_count && r->parameter < l->plant->parameter_count);
-    to_stored(l, r, code, &s);
+    to_common(r, &common);
+    to_stored(l, r, &common, code, &s);
     TRY(series_code(b, l, r, &s.series, f));
-    TRY(name_code(b, FIND_UNIT, ADD_UNIT, s.unit_name, &l->unit[r->unit], f));
-    s.unit = l->unit[r->unit];
-    if (s.known)
-        TRY(detail_code(b, l, s.known, &s.detail, f));
+    TRY(detail_code(b, l, r, &common, &s.detail, f));
     TRY(add_reading(b, l, &s, &added, f));
     *outcome = BOOK_ACCEPTED;
     if (!added)

@@ -33,35 +33,13 @@ static enum status read_series(struct book *b, struct names *n, const struct pla
     }
 }
 
-static enum status read_units(struct book *b, struct names *n, struct fault *f)
-{
-    sqlite3_stmt *q = NULL;
-    bool row;
-    if (book_statement(b, UNIT_NAMES, &q, f) != OK)
-        return FAULT;
-    for (;;) {
-        if (book_step(b, q, &row, f) != OK)
-            return FAULT;
-        if (!row)
-            return OK;
-        struct unit_name *u =
-            arena_push(n->arena, &n->unit, &n->unit_count, &n->unit_room, sizeof *u);
-        *u = (struct unit_name){.id = sqlite3_column_int64(q, 0),
-                                .name = arena_text(n->arena, column_text(q, 1))};
-        const struct unit *known = unit_find(u->name);
-        u->index = known ? unit_index(known) : -1;
-    }
-}
-
 enum status names_begin(struct book *b, struct names *n, struct arena *a, const struct plant *plant,
                         bool passing, struct fault *f)
 {
     memset(n, 0, sizeof *n);
     n->arena = a;
     n->passing = passing ? arena_new() : NULL;
-    if (read_series(b, n, plant, f) != OK)
-        return FAULT;
-    return read_units(b, n, f);
+    return read_series(b, n, plant, f);
 }
 
 void names_end(struct names *n)
@@ -97,12 +75,6 @@ const struct series_name *names_series(const struct names *n, int64_t id)
     return find(n->series, n->series_count, sizeof *n->series, id);
 }
 
-const struct unit_name *names_unit(const struct names *n, int64_t id)
-{
-    _Static_assert(offsetof(struct unit_name, id) == 0, "find reads the first member");
-    return find(n->unit, n->unit_count, sizeof *n->unit, id);
-}
-
 /* Where texts that were looked up go. */
 static struct arena *keeping(struct names *n)
 {
@@ -124,34 +96,53 @@ static struct names_slot *slot_of(struct names_slot *slots, int64_t id)
     return &slots[(uint64_t)id % NAMES_SLOTS];
 }
 
-enum status names_detail(struct book *b, struct names *n, int64_t id, const struct detail **out,
+/* A limit as the table has it. One that is no number keeps a scale that no reading was ever marked
+ * with. */
+static void read_limit(const char *text, bool *has, struct decimal *out)
+{
+    *has = *text != '\0';
+    if (*has && decimal_parse(text, strlen(text), out) != DECIMAL_FINE)
+        out->scale = -1;
+}
+
+static const struct common *common_of(struct arena *a, sqlite3_stmt *q)
+{
+    struct common *c = arena_alloc(a, sizeof *c);
+    c->unit_name = arena_text(a, column_text(q, 0));
+    const struct unit *known = unit_find(c->unit_name);
+    c->unit = known ? unit_index(known) : -1;
+    read_limit(column_text(q, 1), &c->has_mdl, &c->mdl);
+    read_limit(column_text(q, 2), &c->has_rl, &c->rl);
+    c->detail.method = arena_text(a, column_text(q, 3));
+    c->detail.analyst = arena_text(a, column_text(q, 4));
+    c->detail.collected_by = arena_text(a, column_text(q, 5));
+    c->detail.analyzed = arena_text(a, column_text(q, 6));
+    c->detail.note = arena_text(a, column_text(q, 7));
+    return c;
+}
+
+enum status names_common(struct book *b, struct names *n, int64_t detail, const struct common **out,
                          struct fault *f)
 {
-    struct names_slot *slot = slot_of(n->detail, id);
+    struct names_slot *slot = slot_of(n->detail, detail);
     sqlite3_stmt *q = NULL;
     bool row;
     *out = slot->what;
-    if (slot->what && slot->id == id)
+    if (slot->what && slot->id == detail)
         return OK;
     *out = NULL;
     if (book_statement(b, DETAIL_AT, &q, f) != OK)
         return FAULT;
-    bind_int(q, 1, id);
+    bind_int(q, 1, detail);
     if (book_step(b, q, &row, f) != OK)
         return FAULT;
     if (!row)
         return OK;
-    struct arena *a = keeping(n);
-    struct detail *d = arena_alloc(a, sizeof *d);
-    d->method = arena_text(a, column_text(q, 0));
-    d->analyst = arena_text(a, column_text(q, 1));
-    d->collected_by = arena_text(a, column_text(q, 2));
-    d->analyzed = arena_text(a, column_text(q, 3));
-    d->note = arena_text(a, column_text(q, 4));
+    const struct common *c = common_of(keeping(n), q);
     if (book_step(b, q, &row, f) != OK) /* tells when a text could not be had */
         return FAULT;
-    *slot_of(n->detail, id) = (struct names_slot){id, d};
-    *out = d;
+    *slot = (struct names_slot){detail, c};
+    *out = c;
     return OK;
 }
 
@@ -172,7 +163,7 @@ enum status names_file(struct book *b, struct names *n, int64_t batch, const cha
     const char *file = arena_text(keeping(n), row ? column_text(q, 0) : "");
     if (row && book_step(b, q, &row, f) != OK)
         return FAULT;
-    *slot_of(n->file, batch) = (struct names_slot){batch, file};
+    *slot = (struct names_slot){batch, file};
     *out = file;
     return OK;
 }

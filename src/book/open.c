@@ -173,13 +173,13 @@ enum status book_open(struct book **out, const char *path, enum book_mode mode, 
     struct book *b = NULL;
     TRY(refuse_file(path, f));
     b = book_on(NULL, path, mode);
-    sqlite3_config(SQLITE_CONFIG_MEMSTATUS, 0);sqlite3_config(SQLITE_CONFIG_SINGLETHREAD);
+    sqlite3_config(SQLITE_CONFIG_MEMSTATUS, 0);
+    sqlite3_config(SQLITE_CONFIG_SINGLETHREAD);
     /* Read-write for reading too, or a load that was killed could not be rolled back; where that is
      * not allowed SQLite opens the file for reading alone. */
     int code = sqlite3_open_v2(plain_name(b->arena, path), &db,
                                SQLITE_OPEN_READWRITE | SQLITE_OPEN_NOMUTEX, NULL);
     b->db = db;
-    sqlite3_db_config(db, SQLITE_DBCONFIG_LOOKASIDE, NULL, 1200, 500);
     if (code != SQLITE_OK)
         TRY(book_fault(b, f));
     TRY(refuse_header(b, f));

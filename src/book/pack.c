@@ -85,16 +85,19 @@ static void pack_optional(struct pack *p, bool has, int64_t coefficient, int64_t
     }
 }
 
-static void pack_detail(struct pack *p, const struct detail *d)
+static void pack_common(struct pack *p, const struct common *c)
 {
-    pack_int(p, d != NULL);
-    if (d) {
-        pack_text(p, d->method);
-        pack_text(p, d->analyst);
-        pack_text(p, d->collected_by);
-        pack_text(p, d->analyzed);
-        pack_text(p, d->note);
-    }
+    pack_int(p, c != NULL);
+    if (!c)
+        return;
+    pack_text(p, c->unit_name);
+    pack_optional(p, c->has_mdl, c->mdl.coefficient, c->mdl.scale);
+    pack_optional(p, c->has_rl, c->rl.coefficient, c->rl.scale);
+    pack_text(p, c->detail.method);
+    pack_text(p, c->detail.analyst);
+    pack_text(p, c->detail.collected_by);
+    pack_text(p, c->detail.analyzed);
+    pack_text(p, c->detail.note);
 }
 
 void pack_reading(struct pack *p, const struct stored *s)
@@ -114,10 +117,7 @@ void pack_reading(struct pack *p, const struct stored *s)
     pack_text(p, s->code);
     pack_text(p, s->value);
     pack_optional(p, s->has_number, s->coefficient, s->scale);
-    pack_text(p, s->unit_name);
-    pack_optional(p, s->has_mdl, s->mdl, s->mdl_scale);
-    pack_optional(p, s->has_rl, s->rl, s->rl_scale);
-    pack_detail(p, s->known);
+    pack_common(p, s->common);
 }
 
 void pack_aside(struct pack *p, const struct stored_aside *s)

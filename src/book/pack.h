@@ -24,17 +24,26 @@ void pack_bytes(struct pack *p, const void *bytes, size_t length); /* as they ar
  * one. */
 int64_t pack_mark(const struct pack *p);
 
+/* What many readings have in common: a row of table detail. */
+struct common {
+    const char *unit_name;
+    int unit; /* unit_at(); -1: none of this program's */
+    bool has_mdl, has_rl;
+    struct decimal mdl, rl;
+    struct detail detail; /* no text is NULL */
+};
+
 /* A reading as its table holds it, names beside its codes. Numbers are kept as wide as the file can
  * make them, so that a damaged one is hashed as it stands. */
 struct stored {
     int64_t id, batch, line, day, minute, version, qualifier, mark;
-    int64_t series, unit, detail; /* codes; detail 0: none */
-    bool has_number, has_mdl, has_rl;
-    int64_t coefficient, scale, mdl, mdl_scale, rl, rl_scale;
+    int64_t series, detail; /* codes */
+    bool has_number;
+    int64_t coefficient, scale;
     const char *code; /* NULL: none */
     const char *value;
-    const char *point, *parameter, *sample, *unit_name;
-    const struct detail *known; /* NULL: none */
+    const char *point, *parameter, *sample; /* NULL: no such series */
+    const struct common *common;            /* NULL: no such detail */
 };
 void pack_reading(struct pack *p, const struct stored *s);
 

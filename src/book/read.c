@@ -377,7 +377,7 @@ enum {
     AT_DAY,
     AT_MINUTE,
     AT_SERIES,
-    AT_UNIT,
+    AT_DETAIL,
     AT_QUALIFIER,
     AT_NEW,
     AT_OLD,
@@ -390,12 +390,14 @@ enum {
     AT_FILE
 };
 
-static enum status give_revision(struct book *b, const struct names *n, sqlite3_stmt *s,
+static enum status give_revision(struct book *b, struct names *n, sqlite3_stmt *s,
                                  book_revision_sink *sink, void *context, struct fault *f)
 {
     const struct series_name *series = names_series(n, sqlite3_column_int64(s, AT_SERIES));
-    const struct unit_name *unit = names_unit(n, sqlite3_column_int64(s, AT_UNIT));
-    if (!series || series->plant_point < 0 || series->plant_parameter < 0 || !unit)
+    const struct common *common = NULL;
+    if (names_common(b, n, sqlite3_column_int64(s, AT_DETAIL), &common, f) != OK)
+        return FAULT;
+    if (!series || series->plant_point < 0 || series->plant_parameter < 0 || !common)
         return book_damaged(b, f, "a revision is of a reading its description does not know");
     bool withdrawn = sqlite3_column_int(s, AT_QUALIFIER) == QUALIFIER_WITHDRAWN;
     const struct book_revision out = {
@@ -406,7 +408,7 @@ static enum status give_revision(struct book *b, const struct names *n, sqlite3_
         .sample = series->sample,
         .old_text = column_text(s, AT_OLD),
         .new_text = withdrawn ? "withdrawn" : column_text(s, AT_NEW),
-        .unit = unit->name,
+        .unit = common->unit_name,
         .who = column_text(s, AT_WHO),
         .when = column_text(s, AT_WHEN),
         .reason = column_text(s, AT_REASON),

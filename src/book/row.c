@@ -20,11 +20,6 @@ enum {
     AT_VALUE,
     AT_COEFFICIENT,
     AT_SCALE,
-    AT_UNIT,
-    AT_MDL,
-    AT_MDL_SCALE,
-    AT_RL,
-    AT_RL_SCALE,
     AT_DETAIL,
     AT_MARK
 };
@@ -48,13 +43,6 @@ static void read_numbers(sqlite3_stmt *s, struct stored *out)
         .has_number = !is_null(s, AT_COEFFICIENT) || !is_null(s, AT_SCALE),
         .coefficient = sqlite3_column_int64(s, AT_COEFFICIENT),
         .scale = sqlite3_column_int64(s, AT_SCALE),
-        .unit = sqlite3_column_int64(s, AT_UNIT),
-        .has_mdl = !is_null(s, AT_MDL) || !is_null(s, AT_MDL_SCALE),
-        .mdl = sqlite3_column_int64(s, AT_MDL),
-        .mdl_scale = sqlite3_column_int64(s, AT_MDL_SCALE),
-        .has_rl = !is_null(s, AT_RL) || !is_null(s, AT_RL_SCALE),
-        .rl = sqlite3_column_int64(s, AT_RL),
-        .rl_scale = sqlite3_column_int64(s, AT_RL_SCALE),
         .detail = sqlite3_column_int64(s, AT_DETAIL),
         .mark = sqlite3_column_int64(s, AT_MARK),
     };
@@ -68,17 +56,12 @@ enum status row_read(struct book *b, struct names *n, sqlite3_stmt *s, struct st
     out->code = is_null(s, AT_CODE) ? NULL : column_text(s, AT_CODE);
     out->value = column_text(s, AT_VALUE);
     const struct series_name *series = names_series(n, out->series);
-    const struct unit_name *unit = names_unit(n, out->unit);
     if (series) {
         out->point = series->point;
         out->parameter = series->parameter;
         out->sample = series->sample;
     }
-    if (unit)
-        out->unit_name = unit->name;
-    if (is_null(s, AT_DETAIL))
-        return OK;
-    return names_detail(b, n, out->detail, &out->known, f);
+    return names_common(b, n, out->detail, &out->common, f);
 }
 
 bool row_sound(struct pack *p, const struct stored *s)
@@ -100,24 +83,18 @@ static enum status unsound(struct book *b, struct names *n, const struct stored 
                         (long long)s->line);
 }
 
-static struct decimal decimal_of(int64_t coefficient, int64_t scale)
-{
-    return (struct decimal){.coefficient = coefficient, .scale = (int8_t)scale};
-}
-
 enum status row_reading(struct book *b, struct names *n, struct pack *p, const struct stored *s,
                         struct reading *out, struct fault *f)
 {
-    static const struct detail nothing = {"", "", "", "", ""};
     if (!row_sound(p, s))
         return unsound(b, n, s, f);
     const struct series_name *series = names_series(n, s->series);
-    const struct unit_name *unit = names_unit(n, s->unit);
+    const struct common *common = s->common;
     /* What is sound was written by this program or a later one. */
     if (!series || series->plant_point < 0 || series->plant_parameter < 0)
         return book_damaged(b, f, "it has readings of %s %s, which its description does not know",
                             series ? series->point : "?", series ? series->parameter : "?");
-    if (!unit || unit->index < 0 || s->qualifier < 0 || s->qualifier >= QUALIFIERS)
+    if (!common || common->unit < 0 || s->qualifier < 0 || s->qualifier >= QUALIFIERS)
         return book_damaged(b, f, "reading %lld has a unit or qualifier this program does not know",
                             (long long)s->id);
     *out = (struct reading){
@@ -125,18 +102,18 @@ enum status row_reading(struct book *b, struct names *n, struct pack *p, const s
         .minute = (int16_t)s->minute,
         .point = (uint16_t)series->plant_point,
         .parameter = (uint16_t)series->plant_parameter,
-        .unit = (uint16_t)unit->index,
+        .unit = (uint16_t)common->unit,
         .qualifier = (uint8_t)s->qualifier,
         .code = s->code ? s->code[0] : '\0',
-        .has_mdl = s->has_mdl,
-        .has_rl = s->has_rl,
+        .has_mdl = common->has_mdl,
+        .has_rl = common->has_rl,
         .version = (int)s->version,
-        .value = decimal_of(s->coefficient, s->scale),
-        .mdl = decimal_of(s->mdl, s->mdl_scale),
-        .rl = decimal_of(s->rl, s->rl_scale),
+        .value = {.coefficient = s->coefficient, .scale = (int8_t)s->scale},
+        .mdl = common->mdl,
+        .rl = common->rl,
         .text = s->value,
         .sample = s->sample,
-        .detail = s->known ? s->known : &nothing,
+        .detail = &common->detail,
         .line = (long)s->line,
         .id = s->id,
         .batch = s->batch,

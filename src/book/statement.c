@@ -48,26 +48,28 @@ const char *const book_sql[] = {
     [FIND_SERIES] = "SELECT id FROM series WHERE point = ?1 AND parameter = ?2 AND sample = ?3",
     [ADD_SERIES] = "INSERT INTO series (point, parameter, sample) VALUES (?1, ?2, ?3)",
     [FIND_DETAIL] =
-        "SELECT id FROM detail WHERE method = ?1 AND analyst = ?2 AND collected_by = ?3 "
-        "AND analyzed = ?4 AND note = ?5",
-    [ADD_DETAIL] = "INSERT INTO detail (method, analyst, collected_by, analyzed, note) "
-                   "VALUES (?1, ?2, ?3, ?4, ?5)",
+        "SELECT id FROM detail WHERE unit = ?1 AND mdl = ?2 AND rl = ?3 AND method = ?4 "
+        "AND analyst = ?5 AND collected_by = ?6 AND analyzed = ?7 AND note = ?8",
+    [ADD_DETAIL] =
+        "INSERT INTO detail (unit, mdl, rl, method, analyst, collected_by, analyzed, note) "
+        "VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8)",
     [SERIES_NAMES] =
         "SELECT s.id, p.name, q.name, s.sample FROM series s "
         "JOIN point_code p ON p.id = s.point JOIN parameter_code q ON q.id = s.parameter "
         "ORDER BY s.id",
-    [UNIT_NAMES] = "SELECT id, name FROM unit_code ORDER BY id",
-    [UNIT_AT] = "SELECT name FROM unit_code WHERE id = ?1",
-    [DETAIL_AT] = "SELECT method, analyst, collected_by, analyzed, note FROM detail WHERE id = ?1",
+    [DETAIL_AT] =
+        "SELECT u.name, d.mdl, d.rl, d.method, d.analyst, d.collected_by, d.analyzed, d.note "
+        "FROM detail d JOIN unit_code u ON u.id = d.unit WHERE d.id = ?1",
 
     [LAST_READING] = "SELECT coalesce(max(id), 0) FROM reading",
     /* No question whether the key is there before it is put in: that would cost every row a search.
      */
     [ADD_READING] =
         "INSERT INTO reading (id, series, day, minute, version, batch, line, qualifier, code, "
-        "value, coefficient, scale, unit, mdl, mdl_scale, rl, rl_scale, detail, mark) "
-        "VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13, ?14, ?15, ?16, ?17, "
-        "?18, ?19) ON CONFLICT (series, day, minute, version) DO NOTHING",
+        "value, coefficient, scale, detail, mark) "
+        "VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13, ?14) "
+        "ON CONFLICT (series, day, minute, version) DO NOTHING",
+    [ADD_REVISION] = "INSERT INTO revision (reading, replaced, day) VALUES (?1, ?2, ?3)",
     [NEWEST_READING] = "SELECT " READING_COLUMNS " FROM reading r "
                        "WHERE r.series = ?1 AND r.day = ?2 AND r.minute = ?3 "
                        "ORDER BY r.version DESC LIMIT 1",
@@ -95,12 +97,11 @@ const char *const book_sql[] = {
         "AND n.minute = r.minute AND n.version > r.version) "
         "ORDER BY r.day, r.minute, s.sample",
     [REVISIONS] =
-        "SELECT r.day, r.minute, r.series, r.unit, r.qualifier, r.value, o.value, r.version, "
+        "SELECT r.day, r.minute, r.series, r.detail, r.qualifier, r.value, o.value, r.version, "
         "r.batch, r.line, b.who, b.at, coalesce(l.reason, ''), coalesce(l.file, '') "
-        "FROM reading r JOIN reading o ON o.series = r.series AND o.day = r.day "
-        "AND o.minute = r.minute AND o.version = r.version - 1 "
+        "FROM revision v JOIN reading r ON r.id = v.reading JOIN reading o ON o.id = v.replaced "
         "JOIN batch b ON b.id = r.batch LEFT JOIN load l ON l.batch = r.batch "
-        "WHERE r.version > 0 AND r.day BETWEEN ?1 AND ?2 ORDER BY r.day, r.id",
+        "WHERE v.day BETWEEN ?1 AND ?2 ORDER BY v.day, v.reading",
     [ASIDES_OF_DAYS] = "SELECT " ASIDE_COLUMNS " FROM aside a "
                        "WHERE a.day BETWEEN ?1 AND ?2 OR a.day IS NULL ORDER BY a.id",
     [ASIDES_ALL] = "SELECT " ASIDE_COLUMNS " FROM aside a ORDER BY a.id",
@@ -173,6 +174,12 @@ const char *const book_sql[] = {
         "ORDER BY b.id",
     [CHECK_READINGS] =
         "SELECT " READING_COLUMNS " FROM reading r WHERE r.id BETWEEN ?1 AND ?2 ORDER BY r.id",
+    /* How many there are, and how many of them join a reading to the version before it. */
+    [CHECK_REVISIONS] =
+        "SELECT count(*), count(o.id) FROM revision v LEFT JOIN reading r ON r.id = v.reading "
+        "AND r.day = v.day AND r.version > 0 LEFT JOIN reading o ON o.id = v.replaced "
+        "AND o.series = r.series AND o.day = r.day AND o.minute = r.minute AND o.version = "
+        "r.version - 1",
     [CHECK_ASIDES] =
         "SELECT " ASIDE_COLUMNS " FROM aside a WHERE a.id BETWEEN ?1 AND ?2 ORDER BY a.id",
     [ADD_QUALIFIER] = "INSERT INTO qualifier (id, word) VALUES (?1, ?2) ON CONFLICT DO NOTHING",

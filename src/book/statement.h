@@ -31,12 +31,12 @@ enum statement {
     FIND_DETAIL,
     ADD_DETAIL,
     SERIES_NAMES,
-    UNIT_NAMES,
-    UNIT_AT,
+
     DETAIL_AT,
     /* readings in */
     LAST_READING,
     ADD_READING,
+    ADD_REVISION,
     NEWEST_READING,
     LAST_ASIDE,
     ADD_ASIDE,
@@ -62,6 +62,7 @@ enum statement {
     CHECK_QUALIFIERS,
     CHECK_BATCHES,
     CHECK_READINGS,
+    CHECK_REVISIONS,
     CHECK_ASIDES,
     ADD_QUALIFIER,
     ADD_REASON,

@@ -65,12 +65,6 @@ struct series_name {
     int plant_point, plant_parameter; /* of the plant given; -1 without one */
 };
 
-struct unit_name {
-    int64_t id;
-    const char *name;
-    int index; /* unit_at(); -1: not a unit of this program */
-};
-
 enum { NAMES_SLOTS = 1024 };
 
 /* The last details and files that were looked up, by their number; what falls out is read again. */
@@ -80,12 +74,11 @@ struct names_slot {
 };
 
 struct names {
-    struct arena *arena;   /* series and units, and all the rest unless `passing` */
+    struct arena *arena;   /* series, and all the rest unless `passing` */
     struct arena *passing; /* for a pass over a whole book: dropped when it has grown; NULL: nothing
                               is dropped */
     struct series_name *series;
-    struct unit_name *unit;
-    size_t series_count, series_room, unit_count, unit_room;
+    size_t series_count, series_room;
     struct names_slot detail[NAMES_SLOTS], file[NAMES_SLOTS];
 };
 
@@ -96,9 +89,8 @@ void names_end(struct names *n); /* accepts a zeroed one */
 /* Between two readings: a pass over a whole book drops what it looked up once that has grown. */
 void names_turn(struct names *n);
 const struct series_name *names_series(const struct names *n, int64_t id); /* NULL: no such code */
-const struct unit_name *names_unit(const struct names *n, int64_t id);
-MUST_USE enum status names_detail(struct book *b, struct names *n, int64_t id,
-                                  const struct detail **out,
+MUST_USE enum status names_common(struct book *b, struct names *n, int64_t detail,
+                                  const struct common **out,
                                   struct fault *f); /* NULL when there is none */
 MUST_USE enum status names_file(struct book *b, struct names *n, int64_t batch, const char **out,
                                 struct fault *f);
@@ -108,7 +100,7 @@ MUST_USE enum status names_file(struct book *b, struct names *n, int64_t batch, 
 /* Columns of every statement that gives readings, in this order. */
 #define READING_COLUMNS                                                                            \
     "r.id, r.series, r.day, r.minute, r.version, r.batch, r.line, r.qualifier, r.code, r.value, "  \
-    "r.coefficient, r.scale, r.unit, r.mdl, r.mdl_scale, r.rl, r.rl_scale, r.detail, r.mark"
+    "r.coefficient, r.scale, r.detail, r.mark"
 
 /* A row of such a statement. Texts die with the next step; unknown codes give NULL names. */
 MUST_USE enum status row_read(struct book *b, struct names *n, sqlite3_stmt *s, struct stored *out,

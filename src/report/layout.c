@@ -63,7 +63,7 @@ static void add_line(struct arena *a, struct lines *out, const char *s, size_t l
 }
 
 /* Where the line that begins at s ends: before the last space that leaves it narrow enough; a word
- * that is too long ends after a stroke, if it has one (the names of files do). */
+ * that is too long ends after a stroke or a hyphen, if it has one (names of files, of formulas). */
 static size_t line_end(const char *s, int width)
 {
     size_t fits = fitting(s, strlen(s), width);
@@ -77,7 +77,7 @@ static size_t line_end(const char *s, int width)
     if (end > 0)
         return end;
     end = fits;
-    while (end > 0 && s[end - 1] != '/')
+    while (end > 0 && s[end - 1] != '/' && s[end - 1] != '-')
         end--;
     return end > 0 ? end : fits;
 }

@@ -130,9 +130,8 @@ static const char *process_number(struct arena *a, const struct fraction *value)
 struct table *process_summary(struct arena *a, const struct month_input *in)
 {
     static const enum word titles[] = {
-        WORD_COLUMN_PERIOD,    WORD_COLUMN_NAME, WORD_COLUMN_AT,
-        WORD_COLUMN_PARAMETER, WORD_COLUMN_MEAN, WORD_COLUMN_LEAST,
-        WORD_COLUMN_MOST,      WORD_COLUMN_UNIT, WORD_COLUMN_DAYS,
+        WORD_COLUMN_PERIOD, WORD_COLUMN_NAME, WORD_COLUMN_AT,   WORD_COLUMN_OF,   WORD_COLUMN_MEAN,
+        WORD_COLUMN_LEAST,  WORD_COLUMN_MOST, WORD_COLUMN_UNIT, WORD_COLUMN_DAYS,
     };
     struct column *columns = columns_of(a, titles, NELEM(titles));
     for (size_t i = 4; i < 7; i++)
