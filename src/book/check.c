@@ -21,7 +21,7 @@ struct check {
     book_finding_sink *sink;
     void *context;
     struct fault *fault;
-    bool stopped; /* the sink gave up: its fault stands */
+    bool stopped; /* the check cannot go on: its fault stands */
     struct arena *arena;
     struct names names;
     struct pack pack;
@@ -194,7 +194,7 @@ static enum status compare_objects(struct check *c, const struct objects *want,
 static enum status wanted_objects(struct check *c, struct objects *out, struct fault *f)
 {
     sqlite3 *db = NULL;
-    int code = sqlite3_open_v2(":memory:", &db, SQLITE_OPEN_READWRITE | SQLITE_OPEN_MEMORY, NULL);
+    int code = book_connect(":memory:", SQLITE_OPEN_READWRITE | SQLITE_OPEN_MEMORY, &db);
     struct book *b = book_on(db, "a new book", BOOK_WRITE);
     enum status rc = OK;
     if (code != SQLITE_OK)
@@ -231,8 +231,12 @@ static enum status check_words(struct check *c, struct fault *f)
 static enum status check_schema(struct check *c, struct fault *f)
 {
     struct objects want = {0}, have = {0};
-    if (wanted_objects(c, &want, f) != OK || read_objects(c->book, c->arena, &have, f) != OK ||
-        compare_objects(c, &want, &have) != OK)
+    if (wanted_objects(c, &want, f) != OK) { /* nothing the book could be blamed for */
+        *c->fault = *f;
+        c->stopped = true;
+        return FAULT;
+    }
+    if (read_objects(c->book, c->arena, &have, f) != OK || compare_objects(c, &want, &have) != OK)
         return FAULT;
     return check_words(c, f);
 }

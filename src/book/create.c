@@ -65,7 +65,7 @@ static enum status build(const char *beside, const char *path, const struct plan
                          const struct author *author, struct fault *f)
 {
     sqlite3 *db = NULL;
-    int code = sqlite3_open_v2(beside, &db, SQLITE_OPEN_READWRITE | SQLITE_OPEN_NOMUTEX, NULL);
+    int code = book_connect(beside, SQLITE_OPEN_READWRITE, &db);
     struct book *b = book_on(db, path, BOOK_WRITE);
     enum status rc = code == SQLITE_OK ? fill(b, draft, author, f) : book_fault(b, f);
     book_close(b);

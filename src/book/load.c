@@ -535,7 +535,6 @@ static enum status settle(struct book *b, struct load *l, const struct reading *
 {
     struct newest old = {0};
     const struct unit *unit = NULL;
-    bool added = false;
     enum status rc = OK;
 
     TRY(find_newest(b, l, s, &old, f));

@@ -25,6 +25,8 @@ struct book {
 /* How long another program's writing is waited for. */
 #define BOOK_WAIT_MS 5000
 
+/* sqlite3_open_v2, with what must be set before the first of them. */
+int book_connect(const char *name, int flags, sqlite3 **out);
 /* Settings of a connection, before anything is read or written. */
 MUST_USE enum status book_settings(struct book *b, struct fault *f);
 /* The same for a file that is not at its final place: book_create's. */

@@ -31,6 +31,21 @@ static const struct column list_columns[] = {
     {"source", NULL, ALIGN_LEFT, true, 0},
 };
 
+/* The subject stands over each table of the page, and the source on a formula's own. */
+static const struct column page_columns[] = {
+    {NULL, "formula", ALIGN_LEFT, false, 0},
+    {NULL, "gives", ALIGN_LEFT, false, 0},
+    {NULL, "equation", ALIGN_LEFT, true, 0},
+};
+
+static void add_to_page(struct table *t, const struct formula *g)
+{
+    struct cell *c = table_row(t);
+    c[0] = cell_text(g->name);
+    c[1] = cell_text(g->unit);
+    c[2] = cell_text(g->equation);
+}
+
 static void add_formula(struct table *t, const struct formula *g)
 {
     struct cell *c = table_row(t);
@@ -51,11 +66,11 @@ static enum status list(struct session *s, const struct formula_options *o)
         const struct formula *g = formula_at(i);
         if (strcmp(subject, g->subject) != 0) {
             subject = g->subject;
-            part = table_new(s->arena, subject, list_columns, NELEM(list_columns));
+            part = table_new(s->arena, subject, page_columns, NELEM(page_columns));
             page_table(page, part);
         }
         add_formula(all, g);
-        add_formula(part, g);
+        add_to_page(part, g);
     }
     page_line(page, FLAG_NONE,
               "weirbook formula NAME shows one with its source; figures are for a licensed "

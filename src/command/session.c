@@ -3,6 +3,7 @@
 #include "command/session.h"
 
 #include <dirent.h>
+#include <poll.h>
 #include <pwd.h>
 #include <signal.h>
 #include <stdlib.h>
@@ -135,12 +136,20 @@ static void look_at_terminal(struct session *s)
     s->colour = !(plain && *plain) && terminal && strcmp(terminal, "dumb") != 0;
 }
 
+/* A reader that has seen enough, such as head, is no failure. */
+static bool reader_is_gone(void)
+{
+    struct pollfd out = {.fd = STDOUT_FILENO, .events = POLLOUT};
+    return poll(&out, 1, 0) == 1 && (out.revents & POLLERR) != 0;
+}
+
 /* A full device must not lose what was printed without a word. */
 static enum status close_output(struct session *s, struct fault *f)
 {
     bool bad = fflush(s->out) != 0 || ferror(s->out) != 0;
+    bool gone = bad && reader_is_gone();
     bad = fclose(s->out) != 0 || bad;
-    if (bad)
+    if (bad && !gone)
         return fault_at(f, NULL, "free some room, or print to another place",
                         "could not write all of the output");
     return OK;

@@ -217,7 +217,7 @@ static bool rule_part(struct plant_draft *d, const struct plant_row *row, int co
 
         problem(d, row, column,
                 near ? arena_print(d->arena, "the nearest is '%s'", near)
-                     : "weirbook(7) lists the rules",
+                     : "weirbook-rules(7) lists the rules",
                 "no rule '%s'", pair[0]);
         return false;
     }

@@ -268,15 +268,16 @@ static void leave_half_written(struct shelf *s)
         sqlite3 *db = NULL;
         if (sqlite3_open(s->path, &db) != SQLITE_OK)
             _exit(1);
-        _exit(sqlite3_exec(
-                  db,
-                  "PRAGMA cache_size = 1; BEGIN IMMEDIATE; DROP TRIGGER detail_kept; "
-                  "WITH RECURSIVE n (i) AS (SELECT 1 UNION ALL SELECT i + 1 FROM n WHERE i < 5000) "
-                  "INSERT INTO detail (method, analyst, collected_by, analyzed, note) "
-                  "SELECT i, 'x', 'x', 'x', hex(zeroblob(50)) FROM n",
-                  NULL, NULL, NULL) == SQLITE_OK
-                  ? 0
-                  : 2);
+        _exit(
+            sqlite3_exec(
+                db,
+                "PRAGMA cache_size = 1; BEGIN IMMEDIATE; DROP TRIGGER detail_kept; "
+                "WITH RECURSIVE n (i) AS (SELECT 1 UNION ALL SELECT i + 1 FROM n WHERE i < 5000) "
+                "INSERT INTO detail (unit, mdl, rl, method, analyst, collected_by, analyzed, note) "
+                "SELECT 1, '', '', i, 'x', 'x', 'x', hex(zeroblob(50)) FROM n",
+                NULL, NULL, NULL) == SQLITE_OK
+                ? 0
+                : 2);
     }
     int status;
     assert_int_equal(waitpid(child, &status, 0), child);

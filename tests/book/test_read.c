@@ -307,8 +307,7 @@ static void a_damaged_reading_is_never_handed_over(void **state)
  * them. */
 static bool may_scan(enum statement which, const char *what)
 {
-    static const char *const small[] = {"SCAN s", "SCAN unit_code", "SCAN sqlite_schema",
-                                        "SCAN qualifier"};
+    static const char *const small[] = {"SCAN s", "SCAN sqlite_schema", "SCAN qualifier"};
     for (size_t i = 0; i < NELEM(small); i++)
         if (strcmp(what, small[i]) == 0)
             return true;
@@ -316,6 +315,8 @@ static bool may_scan(enum statement which, const char *what)
     case BATCHES:
     case CHECK_BATCHES:
         return strcmp(what, "SCAN b") == 0;
+    case CHECK_REVISIONS:
+        return strcmp(what, "SCAN v") == 0;
     case ASIDES_ALL:
         return strcmp(what, "SCAN a") == 0;
     case LAST_HEAD: /* one row from the end */

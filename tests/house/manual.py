@@ -55,7 +55,8 @@ def unescape(text):
 
 
 def page(name):
-    return unescape(read("man", name)).splitlines()
+    """Its lines; none of a page that is not there, which is told elsewhere."""
+    return unescape(read("man", name)).splitlines() if os.path.exists(os.path.join(source(), "man", name)) else []
 
 
 def section(lines, title):

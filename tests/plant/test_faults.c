@@ -288,7 +288,7 @@ static const struct {
     {PLANT_LIMITS, "001,EFF,TSS,concentration,daily,max,30,mg/L,,,,,,,,,,nondetct=zero",
      "limits.csv:20:18: no rule 'nondetct'; the nearest is 'nondetect'"},
     {PLANT_LIMITS, "001,EFF,TSS,concentration,daily,max,30,mg/L,,,,,,,,,,zzzzzzz=zero",
-     "limits.csv:20:18: no rule 'zzzzzzz'; weirbook(7) lists the rules"},
+     "limits.csv:20:18: no rule 'zzzzzzz'; weirbook-rules(7) lists the rules"},
     {PLANT_LIMITS, "001,EFF,TSS,concentration,daily,max,30,mg/L,,,,,,,,,,;nondetect=zero",
      "limits.csv:20:18: cannot read the rule ''; write name=value, such as nondetect=half, with ; "
      "between rules"},

@@ -1,0 +1,2 @@
+"$weirbook" formula | head -n 12
+"$weirbook" formula --as csv | head -n 3
