@@ -279,7 +279,7 @@ static void sums_of_parameters_need_all_parts(void **state)
     check_months(cases, NELEM(cases));
 }
 
-static void a_days_value_is_printed_as_a_limit_would(void **state)
+static void a_days_only_reading_keeps_its_digits_and_others_are_rounded(void **state)
 {
     (void)state;
     struct made *m = made_plant("2025-03", "", "", "");
@@ -289,8 +289,8 @@ static void a_days_value_is_printed_as_a_limit_would(void **state)
 
     made_readings(m, "EFF CU ug/L 3=<2 4=14.55 5@08:00=<2 5@09:00=4 6=>50 7=<0.01");
     f = made_frame(m, m->month, month_last(m->month));
-    assert_string_equal(permit_day_text(m->arena, f, eff, cu, m->month + 2, rules, 1), "<2.0");
-    assert_string_equal(permit_day_text(m->arena, f, eff, cu, m->month + 3, rules, 1), "14.6");
+    assert_string_equal(permit_day_text(m->arena, f, eff, cu, m->month + 2, rules, 1), "<2");
+    assert_string_equal(permit_day_text(m->arena, f, eff, cu, m->month + 3, rules, 1), "14.55");
     assert_string_equal(permit_day_text(m->arena, f, eff, cu, m->month + 4, rules, 1), "<2.0");
     assert_string_equal(permit_day_text(m->arena, f, eff, cu, m->month + 5, rules, 0), ">50");
     assert_string_equal(permit_day_text(m->arena, f, eff, cu, m->month + 6, rules, 1), "<0.01");
@@ -308,7 +308,7 @@ int main(void)
         cmocka_unit_test(worst_values_and_their_ties),
         cmocka_unit_test(rounding_ties_digits_and_comparison),
         cmocka_unit_test(sums_of_parameters_need_all_parts),
-        cmocka_unit_test(a_days_value_is_printed_as_a_limit_would),
+        cmocka_unit_test(a_days_only_reading_keeps_its_digits_and_others_are_rounded),
     };
 
     return cmocka_run_group_tests(tests, NULL, NULL);
