@@ -214,6 +214,33 @@ const char *unit_nearest(const char *name);
 const struct fraction *unit_convert(struct arena *a, const struct fraction *value,
                                     const struct unit *from, const struct unit *to);
 
+/* ---- files that people keep ---------------------------------------------------------------
+ * Written under a temporary name beside their own and renamed once whole, so that no half-written
+ * file ever stands in the place of a good one. */
+
+struct beside {
+    const char *path, *temporary;
+    int fd; /* of the temporary file, open for writing; -1 once closed */
+};
+
+/* Makes the temporary file. Faults: the path is something other than a plain file, or its folder
+ * cannot be written. */
+MUST_USE enum status beside_open(struct arena *a, const char *path, struct beside *out,
+                                 struct fault *f);
+/* Writes all of the bytes to the temporary file. */
+MUST_USE enum status beside_add(const struct beside *b, const void *bytes, size_t length,
+                                struct fault *f);
+/* Syncs and renames; on a fault nothing is left. The file at the temporary name may have been
+ * written through another descriptor. */
+MUST_USE enum status beside_keep(struct beside *b, struct fault *f);
+/* Removes the temporary file; harmless after beside_keep. */
+void beside_drop(struct beside *b);
+/* The one fault for a file that could not be written, in the words of `error` (errno). */
+enum status beside_fault(const struct beside *b, int error, struct fault *f);
+/* All of it for what is written to a stream. */
+MUST_USE enum status beside_write(const char *path, void (*write)(FILE *out, const void *context),
+                                  const void *context, struct fault *f);
+
 /* ---- digests ------------------------------------------------------------------------------
  * SHA-256 (FIPS 180-4) by libnettle, for the book's chain and the identity of files. */
 

@@ -4,7 +4,7 @@
 
 #include "intake/intake.h"
 
-#include <stdlib.h>
+#include <errno.h>
 #include <string.h>
 #include <unistd.h>
 
@@ -59,7 +59,8 @@ struct load {
     const struct plant *plant;
     const char *file;
     struct asides asides;
-    FILE *aside_out; /* --set-aside; NULL without */
+    struct beside beside; /* the file of --set-aside */
+    FILE *aside_out;      /* and the stream into it; NULL without */
     struct text line;
     struct book_counts counts;
 };
@@ -299,36 +300,35 @@ static enum status check_options(const struct load_options *o, struct fault *f)
     return OK;
 }
 
-static enum status open_aside(struct load *l, const char *temporary, struct fault *f)
+static enum status open_aside(struct load *l, struct fault *f)
 {
     if (!l->options->set_aside)
         return OK;
-    l->aside_out = fopen(temporary, "w");
+    if (beside_open(l->session->arena, l->options->set_aside, &l->beside, f) != OK)
+        return FAULT;
+    int copy = dup(l->beside.fd);
+    l->aside_out = copy < 0 ? NULL : fdopen(copy, "w");
     if (!l->aside_out)
-        return fault_at(f, &(struct place){.file = l->options->set_aside},
-                        "choose a folder that can be written", "cannot write the file");
+        return beside_fault(&l->beside, errno, f);
     text_clear(&l->line);
     long_heading(&l->line, true);
     fwrite(l->line.at, 1, l->line.length, l->aside_out);
     return OK;
 }
 
-/* The rows set aside are written beside the wanted file and put in its place once whole. */
-static enum status close_aside(struct load *l, const char *temporary, enum status rc,
-                               struct fault *f)
+/* What could be read before a fault is kept as well: those files are in the book. */
+static enum status close_aside(struct load *l, enum status rc, struct fault *f)
 {
     if (!l->aside_out)
         return rc;
-    bool bad =
-        fflush(l->aside_out) != 0 || ferror(l->aside_out) != 0 || fsync(fileno(l->aside_out)) != 0;
+    bool bad = fflush(l->aside_out) != 0 || ferror(l->aside_out) != 0;
+    int error = errno;
     bad = fclose(l->aside_out) != 0 || bad;
-    if (bad || rename(temporary, l->options->set_aside) != 0) {
-        unlink(temporary);
-        return fault_at(f, &(struct place){.file = l->options->set_aside},
-                        "free some room, or choose another folder",
-                        "could not write the rows set aside");
+    if (bad) {
+        beside_drop(&l->beside);
+        return beside_fault(&l->beside, error, f);
     }
-    return rc;
+    return beside_keep(&l->beside, f) == OK ? rc : FAULT;
 }
 
 static enum status load_all(struct load *l, struct table *table, struct fault *f)
@@ -359,19 +359,17 @@ static enum status run(struct session *s, const void *given, struct fault *f)
         return FAULT;
     l.plant = plant;
     text_init(&l.line, 4u << 20);
-    const char *temporary =
-        arena_print(s->arena, "%s.new", l.options->set_aside ? l.options->set_aside : "");
     struct table *table = table_new(s->arena, "", columns, NELEM(columns));
     if (l.options->dry_run) {
         long_heading(&l.line, false);
         fwrite(l.line.at, 1, l.line.length, s->out);
     }
-    enum status rc = open_aside(&l, temporary, f);
+    enum status rc = open_aside(&l, f);
     if (rc == OK)
         rc = load_all(&l, table, f);
     if (l.options->as == AS_CSV || l.options->as == AS_JSON)
         session_print(s, l.options->as, NULL, table);
-    rc = close_aside(&l, temporary, rc, f);
+    rc = close_aside(&l, rc, f);
     text_free(&l.line);
     return rc;
 }

@@ -150,7 +150,7 @@ static enum status run(struct session *s, const void *given, struct fault *f)
     day_write(o->month, iso);
     const char *text = arena_print(s->arena, "%s/permit-%.7s.txt", o->out, iso);
     const char *workbook = arena_print(s->arena, "%s/permit-%.7s.xlsx", o->out, iso);
-    if (report_file(text, write_page, report_month_page(s->arena, &in), f) != OK ||
+    if (beside_write(text, write_page, report_month_page(s->arena, &in), f) != OK ||
         report_month_workbook(s->arena, &in, workbook, f) != OK)
         return FAULT;
     fprintf(s->out, "%s\n%s\n", text, workbook);

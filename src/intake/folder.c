@@ -4,11 +4,8 @@
 #include "intake/intake.h"
 
 #include <errno.h>
-#include <fcntl.h>
-#include <stdlib.h>
 #include <string.h>
 #include <sys/stat.h>
-#include <unistd.h>
 
 #include "base/poison.h"
 
@@ -55,66 +52,17 @@ enum status folder_free(const char *folder, const char *file, struct fault *f)
     return rc;
 }
 
-/* The folder's own entry must reach the disk too. Where a file system cannot do that, the rename
- * still holds against anything but a power cut. */
-static void sync_folder(const char *folder)
-{
-    int fd = open(folder, O_RDONLY | O_DIRECTORY | O_CLOEXEC);
-    if (fd < 0)
-        return;
-    (void)fsync(fd);
-    close(fd);
-}
-
-static bool write_all(int fd, const void *bytes, size_t length)
-{
-    const char *from = bytes;
-    while (length > 0) {
-        ssize_t put = write(fd, from, length);
-        if (put < 0 && errno == EINTR)
-            continue;
-        if (put < 0)
-            return false;
-        from += put;
-        length -= (size_t)put;
-    }
-    return fsync(fd) == 0;
-}
-
-/* 0, or the error that left nothing behind. */
-static int write_beside(char *beside, const char *path, const void *bytes, size_t length)
-{
-    int fd = mkstemp(beside);
-    if (fd < 0)
-        return errno;
-    /* mkstemp keeps the file to its owner; a description is for everyone who may read. */
-    mode_t mask = umask(0);
-    umask(mask);
-    int error = 0;
-    if (fchmod(fd, 0666 & ~mask) != 0 || !write_all(fd, bytes, length))
-        error = errno;
-    if (close(fd) != 0 && error == 0)
-        error = errno;
-    if (error == 0 && rename(beside, path) != 0)
-        error = errno;
-    if (error != 0)
-        unlink(beside);
-    return error;
-}
-
 enum status folder_write(const char *folder, const char *file, const void *bytes, size_t length,
                          struct fault *f)
 {
     struct arena *a = arena_new();
-    char *path = path_in(a, folder, file);
+    struct beside b;
     enum status rc = OK;
-    int error = write_beside(arena_print(a, "%s.XXXXXX", path), path, bytes, length);
-    if (error != 0)
-        rc = fault_at(f, &(struct place){.file = path},
-                      "free some room, or choose a folder that can be written",
-                      "the file cannot be written (%s)", strerror(error));
-    else
-        sync_folder(folder);
+    TRY(beside_open(a, path_in(a, folder, file), &b, f));
+    TRY(beside_add(&b, bytes, length, f));
+    TRY(beside_keep(&b, f));
+done:
+    beside_drop(&b);
     arena_free(a);
     return rc;
 }

@@ -143,9 +143,5 @@ struct page *report_month_page(struct arena *a, const struct month_input *in);
  * Corrections (when there are any), Rules and notes. Written beside `path` and renamed. */
 MUST_USE enum status report_month_workbook(struct arena *a, const struct month_input *in,
                                            const char *path, struct fault *f);
-/* A stream written beside `path` and renamed once whole: for the text report. `path` may be an
- * existing plain file, which is replaced, or nothing yet; on a fault it is as it was. */
-MUST_USE enum status report_file(const char *path, void (*write)(FILE *out, const void *context),
-                                 const void *context, struct fault *f);
 
 #endif

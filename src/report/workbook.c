@@ -1,5 +1,4 @@
 /* workbook: the monthly summary as a workbook, from the same tables and sentences as the page. */
-#include "report/beside.h"
 #include "report/content.h"
 #include "report/workbook_sheet.h"
 

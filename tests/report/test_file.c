@@ -60,8 +60,8 @@ static void a_report_stands_under_its_name_once_whole(void **state)
     (void)state;
     struct place_for_files p = open_place();
     struct fault f = {0};
-    assert_int_equal(report_file(p.path, write_words, "first\n", &f), OK);
-    assert_int_equal(report_file(p.path, write_words, "second\n", &f), OK);
+    assert_int_equal(beside_write(p.path, write_words, "first\n", &f), OK);
+    assert_int_equal(beside_write(p.path, write_words, "second\n", &f), OK);
     size_t length = 0;
     char *bytes = file_bytes(p.path, &length);
     assert_string_equal(bytes, "second\n");
@@ -75,9 +75,9 @@ static void a_full_disk_leaves_the_old_report(void **state)
     (void)state;
     struct place_for_files p = open_place();
     struct fault f = {0};
-    assert_int_equal(report_file(p.path, write_words, "the good one\n", &f), OK);
+    assert_int_equal(beside_write(p.path, write_words, "the good one\n", &f), OK);
     most_bytes(5000);
-    enum status rc = report_file(p.path, write_much, NULL, &f);
+    enum status rc = beside_write(p.path, write_much, NULL, &f);
     most_bytes(RLIM_INFINITY);
     assert_int_equal(rc, FAULT);
     assert_non_null(strstr(f.text, "permit-2025-03.txt: cannot write the file: File too large"));
@@ -94,7 +94,7 @@ static void a_folder_that_is_not_there_is_a_fault(void **state)
 {
     (void)state;
     struct fault f = {0};
-    assert_int_equal(report_file("/nowhere/at/all/x.txt", write_words, "x", &f), FAULT);
+    assert_int_equal(beside_write("/nowhere/at/all/x.txt", write_words, "x", &f), FAULT);
     assert_string_equal(f.text, "/nowhere/at/all/x.txt: cannot write the file: No such file or "
                                 "directory; choose a folder that can be written");
 }
@@ -105,10 +105,10 @@ static void nothing_but_a_file_is_replaced(void **state)
     (void)state;
     struct place_for_files p = open_place();
     struct fault f = {0};
-    assert_int_equal(report_file(p.folder, write_words, "x", &f), FAULT);
+    assert_int_equal(beside_write(p.folder, write_words, "x", &f), FAULT);
     assert_non_null(strstr(f.text, "there is something other than a file"));
     fault_clear(&f);
-    assert_int_equal(report_file("/dev/full", write_words, "x", &f), FAULT);
+    assert_int_equal(beside_write("/dev/full", write_words, "x", &f), FAULT);
     struct stat there;
     assert_int_equal(stat("/dev/full", &there), 0);
     assert_true(S_ISCHR(there.st_mode));
@@ -125,7 +125,7 @@ static void a_name_left_by_a_killed_run_is_passed_over(void **state)
     assert_non_null(file);
     fputs("half", file);
     fclose(file);
-    assert_int_equal(report_file(p.path, write_words, "whole\n", &f), OK);
+    assert_int_equal(beside_write(p.path, write_words, "whole\n", &f), OK);
     size_t length = 0;
     char *bytes = file_bytes(left, &length);
     assert_string_equal(bytes, "half");

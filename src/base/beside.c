@@ -1,6 +1,5 @@
-/* beside: writing under a temporary name and renaming; and report_file, for streams. */
-#include "report/beside.h"
-#include "report/report.h"
+/* beside: files that people keep are written under a temporary name and renamed once whole. */
+#include "base/base.h"
 
 #include <errno.h>
 #include <fcntl.h>
@@ -43,6 +42,21 @@ enum status beside_open(struct arena *a, const char *path, struct beside *out, s
     return beside_fault(out, error, f);
 }
 
+enum status beside_add(const struct beside *b, const void *bytes, size_t length, struct fault *f)
+{
+    const char *from = bytes;
+    while (length > 0) {
+        ssize_t put = write(b->fd, from, length);
+        if (put < 0 && errno == EINTR)
+            continue;
+        if (put < 0)
+            return beside_fault(b, errno, f);
+        from += put;
+        length -= (size_t)put;
+    }
+    return OK;
+}
+
 void beside_drop(struct beside *b)
 {
     if (b->fd >= 0)
@@ -54,7 +68,7 @@ void beside_drop(struct beside *b)
 }
 
 /* Syncs the folder, so that the new name outlives a power cut. A file system that cannot do it is
- * no reason to say the report failed: it stands under its name. */
+ * no reason to say the writing failed: it stands under its name. */
 static void sync_folder(const char *path)
 {
     const char *slash = strrchr(path, '/');
@@ -86,8 +100,8 @@ enum status beside_keep(struct beside *b, struct fault *f)
     return OK;
 }
 
-enum status report_file(const char *path, void (*write)(FILE *out, const void *context),
-                        const void *context, struct fault *f)
+enum status beside_write(const char *path, void (*write)(FILE *out, const void *context),
+                         const void *context, struct fault *f)
 {
     enum status rc = OK;
     struct arena *a = arena_new();
