@@ -111,8 +111,8 @@ static void a_folder_that_may_not_be_written_says_so(void **state)
     become_nobody(false);
     assert_int_equal(rc, FAULT);
     assert_string_equal(f.text, arena_print(s->arena,
-                                            "%s/plant.csv: the file cannot be written "
-                                            "(Permission denied); free some room, or "
+                                            "%s/plant.csv: cannot write the file: "
+                                            "Permission denied; "
                                             "choose a folder that can be written",
                                             folder));
 }
