@@ -461,13 +461,14 @@ def main():
     here = os.path.dirname(os.path.abspath(__file__))
     p = argparse.ArgumentParser(description=__doc__.split("\n", maxsplit=1)[0])
     p.add_argument("--driver", required=True, help="the program built from numbers.c")
-    p.add_argument("--cases", type=int, default=100000)
+    p.add_argument("--cases", type=int, default=1000000 if os.environ.get("WEIRBOOK_ALL") else 100000)
     p.add_argument("--seed", type=int, default=1)
     p.add_argument("--units", default=os.path.join(here, "../../schema/units.csv"))
     o = p.parse_args()
     days = check_days(o.driver)
     cases = check_cases(o.driver, o.cases, o.seed, read_units(o.units))
     print(f"numbers: {cases} cases and {days} days compared, no disagreement (seed {o.seed})")
+    print(f"[==========] {cases + days} test(s) run.")
 
 
 if __name__ == "__main__":
