@@ -3,6 +3,7 @@
  * chain. */
 #include "book/store.h"
 
+#include <stdlib.h>
 #include <string.h>
 
 #include "base/poison.h"
@@ -71,7 +72,7 @@ static enum status cannot_walk(struct check *c, enum part part, const struct fau
 {
     if (c->stopped)
         return FAULT;
-    switch (sqlite3_errcode(c->book->db)) {
+    switch (c->book->last_code) {
     case SQLITE_IOERR:
     case SQLITE_NOMEM:
     case SQLITE_BUSY:
@@ -95,6 +96,18 @@ static const char *escaped(struct check *c, const char *s)
 
 /* ---- what SQLite can prove ---- */
 
+/* SQLite's check takes a page it could not read for a bad one. When it was for want of memory, or
+ * the disk gave no answer, that says nothing of the book. */
+static bool could_not_look(const char *said, int *code)
+{
+    static const char before[] = "error code=";
+    const char *at = strstr(said, before);
+    if (!at)
+        return false;
+    *code = (int)(strtol(at + sizeof before - 1, NULL, 10) & 0xff);
+    return *code == SQLITE_NOMEM || *code == SQLITE_IOERR;
+}
+
 static enum status check_pages(struct check *c, struct fault *f)
 {
     sqlite3_stmt *s = NULL;
@@ -107,6 +120,12 @@ static enum status check_pages(struct check *c, struct fault *f)
         if (!row)
             return OK;
         const char *said = column_text(s, 0);
+        if (could_not_look(said, &c->book->last_code)) {
+            fault_at(f, NULL, "see that the disk is well, and check again", "cannot check '%s': %s",
+                     c->book->path, said);
+            sqlite3_reset(s);
+            return FAULT;
+        }
         if (!text_equal(said, "ok") &&
             tell(c, PAGES, 0, NULL, 0, "%s" GO_BACK, escaped(c, said)) != OK)
             return FAULT;
@@ -568,6 +587,7 @@ enum status book_check(struct book *b, book_finding_sink *sink, void *context, s
     pack_init(&c->pack, a);
     for (size_t i = 0; i < NELEM(parts); i++) {
         struct fault why = {.set = false};
+        b->last_code = SQLITE_OK;
         if (parts[i].run(c, &why) != OK)
             TRY(cannot_walk(c, parts[i].part, &why));
     }

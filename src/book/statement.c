@@ -216,6 +216,7 @@ static enum status read_only(const struct book *b, struct fault *f)
 enum status book_fault(struct book *b, struct fault *f)
 {
     int code = sqlite3_errcode(b->db), number = sqlite3_system_errno(b->db);
+    b->last_code = code;
     b->half_written |= b->mode == BOOK_WRITE && (code == SQLITE_FULL || code == SQLITE_IOERR);
     switch (code) {
     case SQLITE_BUSY:

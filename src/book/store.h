@@ -16,6 +16,7 @@ struct book {
     enum book_mode mode;
     sqlite3_stmt *statement[STATEMENTS];
     struct load *load; /* NULL: none is under way */
+    int last_code;     /* of SQLite, when book_fault last put one into words */
     bool half_written; /* a write failed: pages of it may stand in the file, with a journal beside
                           it */
 };
