@@ -29,6 +29,10 @@ MUST_USE enum status book_create(const char *path, const struct plant_draft *dra
  * back what a killed load left. */
 MUST_USE enum status book_open(struct book **out, const char *path, enum book_mode mode,
                                struct fault *f);
+/* What a person should hear about where the book lies, in one line; NULL mostly. A network drive
+ * may not keep locks, and two writers could then spoil a book (SQLite, "How to corrupt",
+ * section 2.1). */
+const char *book_warning(const struct book *b);
 void book_close(struct book *b); /* accepts NULL; abandons a load that was not ended */
 const char *book_sqlite_version(void);
 int book_format(void); /* the newest format this program writes: user_version */

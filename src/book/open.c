@@ -5,6 +5,7 @@
 #include <errno.h>
 #include <string.h>
 #include <sys/stat.h>
+#include <sys/vfs.h>
 #include <unistd.h>
 
 #include "base/poison.h"
@@ -44,6 +45,40 @@ static enum status refuse_file(const char *path, struct fault *f)
         return fault_at(f, NULL, "keep one name, or work on a copy",
                         "'%s' has %lu names (hard links)", path, (unsigned long)st.st_nlink);
     return OK;
+}
+
+/* statfs(2) lists these numbers. */
+const char *book_network_name(unsigned long type)
+{
+    static const struct {
+        unsigned long type;
+        const char *name;
+    } known[] = {{0x6969, "NFS"},      {0x517b, "SMB"},       {0xff534d42, "SMB"},
+                 {0xfe534d42, "SMB"},  {0x564c, "NetWare"},   {0x5346414f, "AFS"},
+                 {0x73757245, "Coda"}, {0x01021997, "Plan 9"}};
+    for (size_t i = 0; i < NELEM(known); i++)
+        if (known[i].type == type)
+            return known[i].name;
+    return NULL;
+}
+
+static void look_at_drive(struct book *b)
+{
+    struct statfs drive;
+    if (statfs(b->path, &drive) != 0)
+        return;
+    const char *name = book_network_name((unsigned long)drive.f_type & 0xffffffffUL);
+    if (name)
+        b->warning =
+            arena_print(b->arena,
+                        "'%s' lies on a network drive (%s), which may not keep two writers "
+                        "apart; keep the book on a disk of this machine",
+                        b->path, name);
+}
+
+const char *book_warning(const struct book *b)
+{
+    return b->warning;
 }
 
 /* SQLite takes such names for something other than a file. */
@@ -197,6 +232,7 @@ enum status book_open(struct book **out, const char *path, enum book_mode mode, 
     if (mode == BOOK_WRITE)
         TRY(writing_settings(b, f));
     TRY(first_look(b, f));
+    look_at_drive(b);
     *out = b;
 done:
     if (rc != OK)

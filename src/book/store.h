@@ -11,7 +11,8 @@ struct load;
 
 struct book {
     struct arena *arena;
-    const char *path; /* as the person named it */
+    const char *path;    /* as the person named it */
+    const char *warning; /* of book_warning */
     sqlite3 *db;
     enum book_mode mode;
     sqlite3_stmt *statement[STATEMENTS];
@@ -26,6 +27,8 @@ struct book {
 /* How long another program's writing is waited for. */
 #define BOOK_WAIT_MS 5000
 
+/* The name of a network file system by its number (statfs), or NULL. */
+const char *book_network_name(unsigned long type);
 /* sqlite3_open_v2, with what must be set before the first of them. */
 int book_connect(const char *name, int flags, sqlite3 **out);
 /* Settings of a connection, before anything is read or written. */

@@ -51,8 +51,7 @@ static enum status run(struct session *s, const void *given, struct fault *f)
     const struct check_options *o = given;
     struct checking c = {.arena = s->arena,
                          .table = table_new(s->arena, "", columns, NELEM(columns))};
-    if (session_book_path(s, f) != OK || book_open(&s->book, s->book_path, BOOK_READ, f) != OK ||
-        book_check(s->book, take, &c, f) != OK)
+    if (session_open(s, BOOK_READ, f) != OK || book_check(s->book, take, &c, f) != OK)
         return FAULT;
     struct page *page = page_new(s->arena);
     page_line(

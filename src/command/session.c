@@ -48,7 +48,7 @@ static enum status find_book(struct session *s, struct fault *f)
                        count ? "this folder holds several books" : "this folder holds no book");
 }
 
-enum status session_book_path(struct session *s, struct fault *f)
+static enum status find_path(struct session *s, struct fault *f)
 {
     if (!s->book_path) {
         const char *said = getenv("WEIRBOOK");
@@ -58,11 +58,20 @@ enum status session_book_path(struct session *s, struct fault *f)
     return s->book_path ? OK : find_book(s, f);
 }
 
+enum status session_open(struct session *s, enum book_mode mode, struct fault *f)
+{
+    if (find_path(s, f) != OK || book_open(&s->book, s->book_path, mode, f) != OK)
+        return FAULT;
+    if (book_warning(s->book))
+        fprintf(stderr, "weirbook: %s\n", book_warning(s->book));
+    return OK;
+}
+
 enum status session_book(struct session *s, enum book_mode mode, struct plant_draft **draft,
                          struct plant **plant, struct fault *f)
 {
     struct plant_draft *own = NULL;
-    if (session_book_path(s, f) != OK || book_open(&s->book, s->book_path, mode, f) != OK)
+    if (session_open(s, mode, f) != OK)
         return FAULT;
     return book_plant(s->book, s->arena, draft ? draft : &own, plant, f);
 }

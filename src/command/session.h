@@ -36,8 +36,8 @@ struct session {
 MUST_USE enum status session_book(struct session *s, enum book_mode mode,
                                   struct plant_draft **draft, struct plant **plant,
                                   struct fault *f);
-/* The path of that book, without opening it. */
-MUST_USE enum status session_book_path(struct session *s, struct fault *f);
+/* The same without its plant. */
+MUST_USE enum status session_open(struct session *s, enum book_mode mode, struct fault *f);
 /* Who is at work and when, for the record. A name with control bytes is refused. */
 MUST_USE enum status session_author(struct session *s, const char *by, struct author *out,
                                     struct fault *f);

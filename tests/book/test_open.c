@@ -416,6 +416,21 @@ static void a_reader_sees_one_state(void **state)
     book_close(reader);
 }
 
+/* The numbers are those of statfs(2) and linux/magic.h. A book on this machine's own disk has no
+ * warning. */
+static void network_drives_are_known_by_their_numbers(void **state)
+{
+    struct shelf *s = THIS;
+    assert_string_equal(book_network_name(0x6969), "NFS");
+    assert_string_equal(book_network_name(0xff534d42), "SMB");
+    assert_string_equal(book_network_name(0xfe534d42), "SMB");
+    assert_null(book_network_name(0xef53));     /* ext4 */
+    assert_null(book_network_name(0x01021994)); /* tmpfs */
+    struct book *book = shelf_open(s, BOOK_READ);
+    assert_null(book_warning(book));
+    book_close(book);
+}
+
 int main(void)
 {
 #define SHELVED(test) cmocka_unit_test_setup_teardown(test, shelf_setup, shelf_teardown)
@@ -432,6 +447,7 @@ int main(void)
         SHELVED(a_book_being_written_is_waited_for_and_then_named),
         SHELVED(a_book_being_read_is_waited_for_and_stays_as_it_was),
         SHELVED(a_reader_sees_one_state),
+        SHELVED(network_drives_are_known_by_their_numbers),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
