@@ -81,37 +81,47 @@ static enum basis basis_of_unit(const struct parameter *p, const struct unit *un
     return BASIS_CONCENTRATION;
 }
 
-/* R37: the figure follows the plant's and the parameter's rules, with the basis of its unit. */
-void condition_limit(const struct plant *plant, const struct limit *l, struct limit *out)
+/* A row that only reports, under the parameter's own rules. */
+static struct limit plain_limit(const struct plant *plant, int point, int parameter,
+                                enum statistic statistic, const struct unit *unit)
 {
-    const struct condition *c = &l->when;
-    const struct parameter *p = &plant->parameters[c->parameter];
-
-    *out = (struct limit){
-        .line = l->line,
-        .outfall = l->outfall,
-        .point = {c->point},
+    const struct parameter *p = &plant->parameters[parameter];
+    struct limit l = {
+        .outfall = plant->points[point].outfall,
+        .point = {point},
         .points = 1,
-        .parameter = {c->parameter},
+        .parameter = {parameter},
         .parameters = 1,
-        .point_text = plant->points[c->point].id,
+        .point_text = plant->points[point].id,
         .parameter_text = p->id,
-        .basis = basis_of_unit(p, c->unit),
-        .statistic = c->statistic,
-        .percentile = c->percentile,
-        .statistic_text = statistic_words[c->statistic],
+        .basis = basis_of_unit(p, unit),
+        .statistic = statistic,
+        .statistic_text = statistic_words[statistic],
         .bound = BOUND_REPORT,
         .limit_text = "",
-        .unit = c->unit,
-        .unit_text = c->unit->name,
+        .unit = unit,
+        .unit_text = unit->name,
         .from = DAY_NONE,
         .to = DAY_NONE,
         .group = "",
         .rules = p->rules,
         .note = "",
     };
+
     for (size_t i = 0; i < RULES; i++)
-        out->rules.own[i] = false;
+        l.rules.own[i] = false;
+    return l;
+}
+
+/* R37: the figure follows the plant's and the parameter's rules, with the basis of its unit. */
+void condition_limit(const struct plant *plant, const struct limit *l, struct limit *out)
+{
+    const struct condition *c = &l->when;
+
+    *out = plain_limit(plant, c->point, c->parameter, c->statistic, c->unit);
+    out->line = l->line;
+    out->outfall = l->outfall;
+    out->percentile = c->percentile;
 }
 
 static bool compares(const struct condition *c, int order)
@@ -302,22 +312,17 @@ static const char *as_given(struct arena *a, const struct frame *frame, int poin
 const char *permit_day_text(struct arena *a, const struct frame *frame, int point, int parameter,
                             day_t day, const struct rules *rules, int decimals)
 {
-    const struct parameter *p = &frame_plant(frame)->parameters[parameter];
-    struct limit l = {.parameter = {parameter},
-                      .parameters = 1,
-                      .points = 1,
-                      .point = {point},
-                      .bound = BOUND_REPORT,
-                      .unit = p->unit,
-                      .rules = *rules};
-    struct work w = {.arena = a, .frame = frame, .plant = frame_plant(frame), .limit = &l};
+    const struct plant *plant = frame_plant(frame);
+    struct limit l =
+        plain_limit(plant, point, parameter, STAT_DAILY, plant->parameters[parameter].unit);
+    struct work w = {.arena = a, .frame = frame, .plant = plant, .limit = &l, .rules = &l.rules};
     struct day_value v;
     struct value value;
     struct figure x;
     const char *given;
 
+    l.rules = *rules;
     l.rules.word[RULE_DIGITS] = DIGITS_NUMBER;
-    w.rules = &l.rules;
     w.kind = statistic_kind(STAT_DAILY);
     frame_day(frame, point, parameter, day, rules, NULL, &v);
     if (!v.amount.number)
@@ -327,4 +332,35 @@ const char *permit_day_text(struct arena *a, const struct frame *frame, int poin
     value = (struct value){.day = day, .amount = v.amount, .readings = v.readings, .sample = true};
     figure_of_value(&w, &value, &x);
     return figure_text(&w, &x, decimals);
+}
+
+bool permit_day_beyond(struct arena *a, const struct frame *frame, const struct limit *l, day_t day)
+{
+    const struct period period = {day, day};
+    struct work w = work_on(a, frame, l, &period, day);
+    struct series series;
+    struct figure x;
+
+    assert(l->statistic == STAT_DAILY || l->statistic == STAT_INSTANTANEOUS);
+    amounts_of(&w, &series);
+    figure_of(&w, &series, &x);
+    return x.times > 0;
+}
+
+const char *permit_month_mean(struct arena *a, const struct frame *frame, int point, int parameter,
+                              day_t month, day_t on)
+{
+    const struct plant *plant = frame_plant(frame);
+    const struct parameter *p = &plant->parameters[parameter];
+    const struct period period = {month, month_last(month)};
+    struct limit l = plain_limit(
+        plant, point, parameter,
+        p->average == AVERAGE_GEOMETRIC ? STAT_MONTHLY_GEOMEAN : STAT_MONTHLY_AVERAGE, p->unit);
+    struct work w = work_on(a, frame, &l, &period, on);
+    struct series series;
+    struct figure x;
+
+    amounts_of(&w, &series);
+    figure_of(&w, &series, &x);
+    return x.exact.number ? figure_text(&w, &x, figure_decimals(&w, &x.exact)) : "";
 }

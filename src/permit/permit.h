@@ -70,6 +70,16 @@ bool permit_shortfall(const struct permit_row *row, day_t on);
 const char *permit_day_text(struct arena *a, const struct frame *frame, int point, int parameter,
                             day_t day, const struct rules *rules, int decimals);
 
+/* Whether a daily or instantaneous limit is passed on a day, by the day's value or any of its
+ * readings. Season, dates and condition are the caller's to look at. */
+bool permit_day_beyond(struct arena *a, const struct frame *frame, const struct limit *l,
+                       day_t day);
+
+/* A parameter's mean over a month (geometric where its `average` says so) as a row without a limit
+ * would report it, from readings up to the day `on`; "" without data. */
+const char *permit_month_mean(struct arena *a, const struct frame *frame, int point, int parameter,
+                              day_t month, day_t on);
+
 /* Weeks, by the rules week_starts and week_counts_in: those that count in a month, in order.
  * Returns how many (at most 6); from and to are the week's real days, or the stub's under `split`.
  */

@@ -1,7 +1,6 @@
 /* daily: the month's daily values, a column for each point and parameter that has a reading, with
- * the month's mean and extremes below. Numbers come from the day frame and the permit rows; what is
- * worked here (a mean where no limit asks for one, the mark beside a value) follows the same rules:
- * weirbook-rules(7). */
+ * the month's mean and extremes below. Numbers come from the day frame and the permit room; nothing
+ * is worked here. */
 #include "report/content.h"
 
 #include <assert.h>
@@ -24,29 +23,6 @@ static bool is_ph(const struct parameter *p)
 /* ---- values beyond a limit ---------------------------------------------------------------------
  */
 
-/* R12: the exact value rounded to the limit's decimals, or as it is. */
-static bool is_beyond(struct arena *a, const struct limit *l, const struct fraction *value)
-{
-    const struct fraction *limit = fraction_from_decimal(a, l->limit.value);
-    if (l->rules.word[RULE_COMPARE] == COMPARE_ROUNDED)
-        value = fraction_round(a, value, l->limit.value.scale,
-                               (enum rounding)l->rules.word[RULE_ROUNDING]);
-    int order = fraction_compare(value, limit);
-    switch (l->bound) {
-    case BOUND_MAX:
-    case BOUND_TARGET:
-        return order > 0;
-    case BOUND_BELOW:
-        return order >= 0;
-    case BOUND_MIN:
-        return order < 0;
-    case BOUND_ABOVE:
-        return order <= 0;
-    default:
-        return false;
-    }
-}
-
 static bool judges_days(const struct limit *l, int point, int parameter)
 {
     bool daily = l->statistic == STAT_DAILY || l->statistic == STAT_INSTANTANEOUS;
@@ -56,26 +32,6 @@ static bool judges_days(const struct limit *l, int point, int parameter)
            l->parameters == 1 && l->point[0] == point && l->parameter[0] == parameter;
 }
 
-static bool day_beyond(struct arena *a, const struct frame *frame, const struct limit *l, day_t day)
-{
-    int point = l->point[0];
-    int parameter = l->parameter[0];
-    if (l->statistic == STAT_DAILY) {
-        struct day_value v;
-        frame_day(frame, point, parameter, day, &l->rules, l->unit, &v);
-        return v.amount.number != NULL && v.state == DAY_VALUED && is_beyond(a, l, v.amount.number);
-    }
-    size_t count = 0;
-    const struct reading *const *r = frame_readings(frame, point, parameter, day, &count);
-    for (size_t i = 0; i < count; i++) {
-        struct amount amount;
-        if (frame_amount(frame, r[i], &l->rules, l->unit, &amount) && amount.number != NULL &&
-            is_beyond(a, l, amount.number))
-            return true;
-    }
-    return false;
-}
-
 /* Only limits that have a row in the month: its tier, season and dates hold. */
 static bool any_beyond(struct arena *a, const struct month_input *in, int point, int parameter,
                        day_t day)
@@ -83,7 +39,7 @@ static bool any_beyond(struct arena *a, const struct month_input *in, int point,
     for (size_t i = 0; i < in->permit->count; i++) {
         const struct permit_row *row = &in->permit->rows[i];
         if (judges_days(row->limit, point, parameter) && day >= row->from && day <= row->to &&
-            limit_in_force(row->limit, day) && day_beyond(a, in->frame, row->limit, day))
+            limit_in_force(row->limit, day) && permit_day_beyond(a, in->frame, row->limit, day))
             return true;
     }
     return false;
@@ -94,30 +50,14 @@ static bool any_beyond(struct arena *a, const struct month_input *in, int point,
 
 /* What is gathered of a column on the way down. */
 struct gathered {
-    const struct fraction *sum, *product, *most_less;
     unsigned count;
-    bool any_less, all_less, any_greater, all_greater;
     day_t least_day, most_day;
     const struct fraction *least, *most;
 };
 
 /* R32: of equal values the earliest day stands. */
-static void gather(struct arena *a, const struct rules *rules, day_t day,
-                   const struct amount *amount, struct gathered *g)
+static void gather(day_t day, const struct fraction *n, struct gathered *g)
 {
-    const struct fraction *n = amount->number;
-    const struct fraction *factor = n;
-    if (fraction_sign(n) == 0) /* R16 */
-        factor = fraction_from_decimal(a, rules->number[RULE_GEOMEAN_ZERO]);
-    g->sum = g->count == 0 ? n : fraction_add(a, g->sum, n);
-    g->product = g->count == 0 ? factor : fraction_multiply(a, g->product, factor);
-    g->all_less = (g->count == 0 || g->all_less) && amount->all_less;
-    g->any_less = g->any_less || amount->part_less;
-    g->any_greater = g->any_greater || amount->part_greater;
-    g->all_greater = (g->count == 0 || g->all_greater) && amount->all_greater;
-    if (amount->less != NULL &&
-        (g->most_less == NULL || fraction_compare(amount->less, g->most_less) > 0))
-        g->most_less = amount->less;
     if (g->count == 0 || fraction_compare(n, g->least) < 0) {
         g->least = n;
         g->least_day = day;
@@ -127,39 +67,6 @@ static void gather(struct arena *a, const struct rules *rules, day_t day,
         g->most_day = day;
     }
     g->count++;
-}
-
-/* The mean's sign under `sign` (R13, R15): ">" wins over "<". */
-static const char *mean_sign(const struct rules *rules, const struct gathered *g)
-{
-    int sign = rules->word[RULE_SIGN];
-    if (sign == SIGN_NEVER)
-        return "";
-    if (g->all_greater || (g->any_greater && sign == SIGN_ANY))
-        return ">";
-    if (g->all_less || (g->any_less && sign == SIGN_ANY))
-        return "<";
-    return "";
-}
-
-/* R13: when nothing but less-thans stands there, the figure is the largest of their numbers. */
-static const char *mean_text(struct arena *a, const struct parameter *p, const struct gathered *g)
-{
-    const struct rules *rules = &p->rules;
-    enum rounding rounding = (enum rounding)rules->word[RULE_ROUNDING];
-    int decimals = decimals_of(p);
-    const char *sign = mean_sign(rules, g);
-    const struct fraction *mean = NULL;
-    bool full = rules->word[RULE_NONDETECT] == NONDETECT_FULL;
-    if (g->all_less && *sign != '\0' && !full && g->most_less != NULL)
-        mean = g->most_less;
-    else if (rules->word[RULE_NONDETECT] == NONDETECT_MEDIAN && g->any_less)
-        return ""; /* the mean gives way to a median, which only a limit's row works */
-    else if (p->average == AVERAGE_GEOMETRIC)
-        mean = root_round(a, g->product, g->count, decimals, rounding);
-    else
-        mean = fraction_divide(a, g->sum, fraction_from_int(a, g->count));
-    return arena_print(a, "%s%s", sign, fraction_print(a, mean, decimals, rounding));
 }
 
 /* The figure of the permit's own row where there is one, so that the two pages never differ. */
@@ -197,7 +104,9 @@ static void summarise(struct arena *a, const struct month_input *in, struct dail
     if (is_ph(p)) /* logarithmic: its extremes are reported, never a mean */
         return;
     const char *of_row = mean_of_row(in, c, p);
-    c->mean = of_row != NULL ? of_row : mean_text(a, p, g);
+    c->mean = of_row != NULL
+                  ? of_row
+                  : permit_month_mean(a, in->frame, c->point, c->parameter, first, in->permit->on);
 }
 
 /* ---- the columns
@@ -244,7 +153,7 @@ static void fill_day(struct arena *a, const struct month_input *in, struct daily
     d->any_beyond = d->any_beyond || c->beyond[i];
     d->any_less = d->any_less || c->value[i][0] == '<';
     if (v.amount.number != NULL && (v.state == DAY_VALUED || v.state == DAY_NO_DISCHARGE))
-        gather(a, &p->rules, day, &v.amount, g);
+        gather(day, v.amount.number, g);
 }
 
 static bool has_readings(const struct frame *frame, int point, int parameter, day_t first,

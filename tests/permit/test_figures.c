@@ -298,6 +298,62 @@ static void a_days_only_reading_keeps_its_digits_and_others_are_rounded(void **s
     made_free(m);
 }
 
+/* R10, R13: the mean of a column without a limit follows the same rules as a row. */
+static void a_months_mean_without_a_limit_follows_the_parameters_rules(void **state)
+{
+    (void)state;
+    struct made *m = made_plant("2025-03", "nondetect,median", "", "");
+    int eff = plant_point(m->plant, "EFF");
+    struct frame *f;
+
+    made_readings(m, "EFF CU ug/L 3=<2 4=4 5=9\nEFF ECOLI MPN/100mL 3=12 4=28 5=37 6=25\n"
+                     "EFF TSS mg/L 1=10 2=11\n");
+    f = made_frame(m, m->month, month_last(m->month));
+    /* California order R2-2012-0012: the median gives way for a mean with less-thans. */
+    assert_string_equal(permit_month_mean(m->arena, f, eff, plant_parameter(m->plant, "CU"),
+                                          m->month, month_last(m->month)),
+                        "4.0");
+    /* Spellman, operators' mathematics: the geometric mean of 12, 28, 37, 25 is 23.6. */
+    m->plant->parameters[plant_parameter(m->plant, "ECOLI")].average = AVERAGE_GEOMETRIC;
+    assert_string_equal(permit_month_mean(m->arena, f, eff, plant_parameter(m->plant, "ECOLI"),
+                                          m->month, month_last(m->month)),
+                        "24");
+    assert_string_equal(permit_month_mean(m->arena, f, eff, plant_parameter(m->plant, "TSS"),
+                                          m->month, month_last(m->month)),
+                        "10.5");
+    /* On the first day only one is known. */
+    assert_string_equal(
+        permit_month_mean(m->arena, f, eff, plant_parameter(m->plant, "TSS"), m->month, m->month),
+        "10.0");
+    assert_string_equal(permit_month_mean(m->arena, f, eff, plant_parameter(m->plant, "PH"),
+                                          m->month, month_last(m->month)),
+                        "");
+    made_free(m);
+}
+
+/* 40 CFR 133.102(c): pH 6.0 to 9.0; each reading is judged, not the day's mean. */
+static void a_day_is_beyond_when_one_of_its_readings_is(void **state)
+{
+    (void)state;
+    struct made *m = made_plant("2025-03", "",
+                                "001,EFF,PH,concentration,instantaneous,max,9.0,pH\n"
+                                "001,EFF,PH,concentration,daily,max,9.0,pH\n",
+                                "");
+    struct frame *f;
+
+    made_readings(m, "EFF PH pH 1@08:00=9.2 1@15:00=7.0 2=9.04 3=9.1\n");
+    f = made_frame(m, m->month, month_last(m->month));
+    static const bool readings[] = {true, false, true}, days[] = {false, false, true};
+    for (int i = 0; i < 4; i++) {
+        day_t day = m->month + i;
+        assert_int_equal(permit_day_beyond(m->arena, f, &m->plant->limits[0], day),
+                         i < 3 && readings[i]);
+        assert_int_equal(permit_day_beyond(m->arena, f, &m->plant->limits[1], day),
+                         i < 3 && days[i]);
+    }
+    made_free(m);
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
@@ -308,6 +364,8 @@ int main(void)
         cmocka_unit_test(worst_values_and_their_ties),
         cmocka_unit_test(rounding_ties_digits_and_comparison),
         cmocka_unit_test(sums_of_parameters_need_all_parts),
+        cmocka_unit_test(a_months_mean_without_a_limit_follows_the_parameters_rules),
+        cmocka_unit_test(a_day_is_beyond_when_one_of_its_readings_is),
         cmocka_unit_test(a_days_only_reading_keeps_its_digits_and_others_are_rounded),
     };
 
