@@ -37,8 +37,7 @@ void book_close(struct book *b); /* accepts NULL; abandons a load that was not e
 const char *book_sqlite_version(void);
 int book_format(void); /* the newest format this program writes: user_version */
 
-/* ---- description
- * --------------------------------------------------------------------------------- */
+/* ---- description ---- */
 
 /* The description in force as a draft (its rows as written) and, finished, as a plant. */
 MUST_USE enum status book_plant(struct book *b, struct arena *a, struct plant_draft **draft,
@@ -49,8 +48,7 @@ MUST_USE enum status book_apply(struct book *b, const struct plant_draft *draft,
                                 const struct author *author, const char *reason, bool *changed,
                                 struct fault *f);
 
-/* ---- loading: one transaction for one file
- * ---------------------------------------------------------- */
+/* ---- loading: one transaction for one file ---- */
 
 struct book_counts {
     long rows, accepted, present, revised, aside;
@@ -93,8 +91,7 @@ MUST_USE enum status book_load_end(struct book *b, const struct book_source *sou
                                    struct book_counts *counts, int64_t *batch, struct fault *f);
 void book_load_abandon(struct book *b); /* rolls back: a dry run, a fault */
 
-/* ---- reading
- * ------------------------------------------------------------------------------------------ */
+/* ---- reading ---- */
 
 /* Adds the readings of the spans to a frame (all versions; the frame keeps the newest), and for a
  * totalizer's column the last reading before the span. Touches only those rows (by index). Texts
@@ -152,8 +149,7 @@ MUST_USE enum status book_batches(struct book *b, book_batch_sink *sink, void *c
 /* The newest head of the hash chain, as hex. */
 MUST_USE enum status book_head(struct book *b, char out[2 * DIGEST_BYTES + 1], struct fault *f);
 
-/* ---- proving the book sound
- * ------------------------------------------------------------------------------- */
+/* ---- proving the book sound ---- */
 
 struct book_finding {
     const char *what; /* "pages", "foreign keys", "schema", "chain", "batch", "reading",

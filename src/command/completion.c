@@ -62,8 +62,7 @@ static const struct {
     const char *shell, *script;
 } scripts[] = {{"bash", bash_script}, {"zsh", zsh_script}, {"fish", fish_script}};
 
-/* ---- answers
- * ------------------------------------------------------------------------------------------ */
+/* ---- answers ---- */
 
 static void offer(struct session *s, const char *word, const char *prefix)
 {

@@ -65,8 +65,7 @@ struct load {
     struct book_counts counts;
 };
 
-/* ---- where rows go
- * ------------------------------------------------------------------------------- */
+/* ---- where rows go ---- */
 
 static enum status set_aside(struct load *l, const struct row_text *row, enum reason reason,
                              const char *explanation, struct fault *f)
@@ -126,8 +125,7 @@ static enum status take_reading(void *context, const struct reading *r, const st
     return OK;
 }
 
-/* ---- progress: on a terminal, after a second
- * ----------------------------------------------------------- */
+/* ---- progress: on a terminal, after a second ---- */
 
 struct progress {
     double began;
@@ -150,8 +148,7 @@ static void end_progress(const struct progress *p)
         fputs("\r\033[K", stderr);
 }
 
-/* ---- one file
- * -------------------------------------------------------------------------------------------- */
+/* ---- one file ---- */
 
 /* A file whose every row is in the book already, or was set aside before, changes nothing. */
 static bool changes_nothing(const struct load *l, bool known)
@@ -239,8 +236,7 @@ static enum status load_file(struct load *l, const char **told, struct fault *f)
     return load_rows(l, known, told, f);
 }
 
-/* ---- what is told
- * ------------------------------------------------------------------------------------------ */
+/* ---- what is told ---- */
 
 static void tell_asides(FILE *out, const struct asides *a)
 {
@@ -285,8 +281,7 @@ static void add_row(struct table *t, struct arena *a, const struct load *l)
         cell[1 + i] = cell_count(a, counts[i]);
 }
 
-/* ---- the command
- * -------------------------------------------------------------------------------------------- */
+/* ---- the command ---- */
 
 static enum status check_options(const struct load_options *o, struct fault *f)
 {

@@ -75,8 +75,7 @@ static enum status example(struct session *s, const struct plant_options *o, str
     return OK;
 }
 
-/* ---- the plant as a page
- * --------------------------------------------------------------------------- */
+/* ---- the plant as a page ---- */
 
 /* For csv and json: the description's rows, one cell a line, so that nothing of them is lost. */
 static const struct column cell_columns[] = {

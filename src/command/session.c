@@ -22,8 +22,7 @@ enum {
     WIDTH_LEAST = 80
 };
 
-/* ---- the book
- * ------------------------------------------------------------------------------------ */
+/* ---- the book ---- */
 
 /* The only *.book of the current folder. */
 static enum status find_book(struct session *s, struct fault *f)
@@ -118,8 +117,7 @@ enum status session_frame_all(struct session *s, const struct plant *plant, day_
     return session_frame(s, plant, spans, count, first, last, out, f);
 }
 
-/* ---- printing
- * -------------------------------------------------------------------------------------- */
+/* ---- printing ---- */
 
 void session_print(struct session *s, int as, const struct page *page, const struct table *table)
 {
@@ -173,8 +171,7 @@ static int exit_status(const struct session *s, const struct fault *f, enum stat
     return s->found ? EXIT_FOUND : EXIT_DONE;
 }
 
-/* ---- from words to a command
- * -------------------------------------------------------------------------- */
+/* ---- from words to a command ---- */
 
 static void print_version(struct session *s)
 {

@@ -6,7 +6,7 @@
 #include "base/base.h"
 #include "plant/plant.h"
 
-/* ---- a reading ------------------------------------------------------------------------------ */
+/* ---- a reading ---- */
 
 enum qualifier {
     QUALIFIER_PLAIN,     /* 12.5 */
@@ -132,7 +132,7 @@ struct frame_span {
     day_t first, last;
 };
 
-/* ---- the frame ------------------------------------------------------------------------------ */
+/* ---- the frame ---- */
 
 struct frame;
 

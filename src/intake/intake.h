@@ -8,7 +8,7 @@
 
 /* Limits with clear faults: a cell 64 kB, a row 1 MB, a file 1 GB, 2000 columns. */
 
-/* ---- plant descriptions ---------------------------------------------------------------------- */
+/* ---- plant descriptions ---- */
 
 /* Adds the built-in parameter catalogue (schema/parameters.csv, compiled in) to a draft. */
 void intake_catalogue(struct plant_draft *draft);
@@ -72,8 +72,7 @@ MUST_USE enum status intake_readings(struct arena *a, const char *path, const st
 enum reason intake_value(struct reading *r, const struct parameter *p, const char *text,
                          bool comma);
 
-/* ---- small CSV tables (maps, and later claims): whole in memory
- * ------------------------------------ */
+/* ---- small CSV tables (maps, and later claims): whole in memory ---- */
 
 struct intake_table {
     size_t rows, columns;

@@ -6,7 +6,7 @@
 
 #include "base/base.h"
 
-/* ---- the files of a description ------------------------------------------------------------ */
+/* ---- the files of a description ---- */
 
 enum plant_file {
     PLANT_FIELDS,     /* plant.csv */
@@ -33,7 +33,7 @@ const struct plant_layout *plant_layout(enum plant_file file);
 /* The index of a column, or -1; `nearest` (may be NULL) gets the nearest known name. */
 int plant_column(enum plant_file file, const char *name, const char **nearest);
 
-/* ---- rules: conventions that permits differ in ---------------------------------------------- */
+/* ---- rules: conventions that permits differ in ---- */
 
 enum rule {
     RULE_NONDETECT,

@@ -45,8 +45,7 @@ static bool any_beyond(struct arena *a, const struct month_input *in, int point,
     return false;
 }
 
-/* ---- below the days
- * ------------------------------------------------------------------------------ */
+/* ---- below the days ---- */
 
 /* What is gathered of a column on the way down. */
 struct gathered {
@@ -109,8 +108,7 @@ static void summarise(struct arena *a, const struct month_input *in, struct dail
                   : permit_month_mean(a, in->frame, c->point, c->parameter, first, in->permit->on);
 }
 
-/* ---- the columns
- * ----------------------------------------------------------------------------------- */
+/* ---- the columns ---- */
 
 /* The letter of the day's first no-data code, where no value stands. */
 static const char *code_letter(struct arena *a, const struct frame *frame, int point, int parameter,
@@ -200,8 +198,7 @@ void daily_make(struct arena *a, const struct month_input *in, struct daily *out
                 add_column(a, in, out, (int)point, (int)parameter);
 }
 
-/* ---- as a table
- * ------------------------------------------------------------------------------------ */
+/* ---- as a table ---- */
 
 /* A value as the workbook wants it: a number where it is one. */
 static struct cell value_cell(const char *value)

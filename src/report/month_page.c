@@ -14,8 +14,7 @@ static void list(struct page *p, const struct sentences *s)
         page_space(p);
 }
 
-/* ---- daily values
- * ----------------------------------------------------------------------------------- */
+/* ---- daily values ---- */
 
 static void daily_notes(struct page *p, const struct daily *d)
 {
@@ -51,8 +50,7 @@ static void daily_blocks(struct page *p, const struct month_input *in)
     page_space(p);
 }
 
-/* ---- the other parts
- * --------------------------------------------------------------------------------- */
+/* ---- the other parts ---- */
 
 static void table_block(struct page *p, enum word heading, const struct table *t)
 {

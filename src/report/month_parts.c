@@ -31,8 +31,7 @@ static day_t last_day(const struct month_input *in)
     return in->permit->on < last ? in->permit->on : last;
 }
 
-/* ---- rows set aside, corrections, codes
- * ----------------------------------------------------------- */
+/* ---- rows set aside, corrections, codes ---- */
 
 struct table *aside_table(struct arena *a, const struct month_input *in)
 {
@@ -114,8 +113,7 @@ struct table *code_table(struct arena *a, const struct month_input *in)
     return t;
 }
 
-/* ---- process figures
- * ------------------------------------------------------------------------------- */
+/* ---- process figures ---- */
 
 /* For steering the plant, not for the regulator: four significant figures, whole units kept. */
 static const char *process_number(struct arena *a, const struct fraction *value)
@@ -240,8 +238,7 @@ struct table *process_by_day(struct arena *a, const struct month_input *in)
     return t;
 }
 
-/* ---- rules
- * ------------------------------------------------------------------------------------------- */
+/* ---- rules ---- */
 
 void rules_sentences(struct arena *a, const struct month_input *in, struct sentences *out)
 {
@@ -292,8 +289,7 @@ void rules_exceptions(struct arena *a, const struct month_input *in, struct sent
     }
 }
 
-/* ---- flows, loads, methods
- * ---------------------------------------------------------------------------- */
+/* ---- flows, loads, methods ---- */
 
 static void say_flow(struct arena *a, const struct month_input *in, const struct limit *l,
                      struct sentences *out)
@@ -364,8 +360,7 @@ void method_sentences(struct arena *a, const struct month_input *in, struct sent
                 say_methods(a, in, (int)point, (int)parameter, out);
 }
 
-/* ---- cautions and the foot
- * ------------------------------------------------------------------------------ */
+/* ---- cautions and the foot ---- */
 
 void caution_sentences(struct arena *a, struct sentences *out)
 {

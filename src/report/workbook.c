@@ -10,8 +10,7 @@
 
 #include "base/poison.h"
 
-/* ---- lines on sheets of text
- * ------------------------------------------------------------------------- */
+/* ---- lines on sheets of text ---- */
 
 /* Where the next line goes. */
 struct next_line {
@@ -37,8 +36,7 @@ static void lines_of(struct next_line *at, enum word heading, const struct sente
         line(at, s->at[i], (struct look){.kind = LOOK_TEXT, .wraps = true});
 }
 
-/* ---- sheets
- * -------------------------------------------------------------------------------------------- */
+/* ---- sheets ---- */
 
 static const char *finding_line(struct arena *a, const struct permit_row *row)
 {
@@ -200,8 +198,7 @@ static void all_sheets(struct sheets *s, const struct month_input *in)
     rules_sheet(s, in);
 }
 
-/* ---- the file
- * -------------------------------------------------------------------------------------------- */
+/* ---- the file ---- */
 
 /* The library's properties are not const. Noon of the printed day is the time of making: without
  * one the library would take now. */

@@ -28,8 +28,7 @@ static void check(struct sheets *s, lxw_error error)
         s->error = (int)error;
 }
 
-/* ---- looks
- * ------------------------------------------------------------------------------------------- */
+/* ---- looks ---- */
 
 /* Bold, a border and a pale fill show on paper without colour; the word stands beside them. */
 static void flag_look(lxw_format *f, enum flag flag)
@@ -107,8 +106,7 @@ static lxw_format *format_of(struct sheets *s, struct look look)
     return made->format;
 }
 
-/* ---- cells
- * ------------------------------------------------------------------------------------------- */
+/* ---- cells ---- */
 
 /* At most so many characters from the start of a text. */
 static const char *first_characters(struct arena *a, const char *text, size_t most)
@@ -183,8 +181,7 @@ static void write_cell(struct sheets *s, struct lxw_worksheet *sheet, uint32_t r
         sheet_text(s, sheet, row, column, c->text, look);
 }
 
-/* ---- sheets
- * -------------------------------------------------------------------------------------------- */
+/* ---- sheets ---- */
 
 /* Text for a header or footer, where & starts a code. */
 static const char *print_text(struct arena *a, const char *text, size_t most)
