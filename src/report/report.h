@@ -83,9 +83,8 @@ void page_table(struct page *p, const struct table *t);
 void page_space(struct page *p);
 void page_break(struct page *p); /* a form feed on paper */
 
-/* ---- writers
- * ------------------------------------------------------------------------------------- To a
- * stream; the caller flushes and checks it once at the end (a full device is a failure). */
+/* ---- writers ----
+ * To a stream; the caller flushes and checks it once at the end (a full device is a failure). */
 
 struct text_style {
     int width;   /* columns: 100, or less on a narrow terminal */
