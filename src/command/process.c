@@ -1,4 +1,5 @@
 /* process: the process table: loads, SVI, F:M, SRT and the rest, by day or longer. */
+#include "command/chart.h"
 #include "command/figures.h"
 #include "command/session.h"
 
@@ -6,8 +7,9 @@
 
 struct process_given {
     day_t from, to;
-    int by, as;
+    int by, over, as;
     long smooth;
+    bool chart;
 };
 
 static const struct option_spec options[] = {
@@ -17,6 +19,10 @@ static const struct option_spec options[] = {
      "a row for each of these (default: day)", false},
     {"smooth", OPTION_COUNT, offsetof(struct process_given, smooth), "DAYS",
      "days of the moving average behind the solids retention times (default 1)", false},
+    {"over", OPTION_ONE_OF, offsetof(struct process_given, over), "weekday|month",
+     "gather all days by weekday or by month of the year, with percentiles", false},
+    {"chart", OPTION_FLAG, offsetof(struct process_given, chart), NULL,
+     "draw each figure over time as a small chart in plain text", false},
     AS_OPTION(struct process_given),
 };
 
@@ -26,6 +32,10 @@ static const struct example examples[] = {
      "means, lowest and highest by month"},
     {"weirbook process --from 2025-03-01 --to 2025-03-31 --smooth 7 --as csv",
      "daily figures as CSV, retention times smoothed over a week"},
+    {"weirbook process --from 2025-01-01 --to 2025-12-31 --over weekday",
+     "count, mean, lowest, highest and percentiles of each weekday"},
+    {"weirbook process --from 2025-01-01 --to 2025-12-31 --chart",
+     "each figure of the year as a small chart"},
 };
 
 static const struct column day_columns[] = {
@@ -42,6 +52,33 @@ static const struct column step_columns[] = {
     {"mean", "mean", ALIGN_POINT, false, 0},   {"min", "lowest", ALIGN_POINT, false, 0},
     {"max", "highest", ALIGN_POINT, false, 0}, {"unit", "unit", ALIGN_LEFT, false, 0},
 };
+
+/* In a file the columns of a longer step come first, so that one reader takes both. */
+static const struct column over_columns[] = {
+    {"from", "from", ALIGN_LEFT, false, 0},    {"to", "to", ALIGN_LEFT, false, 0},
+    {"name", "figure", ALIGN_LEFT, false, 0},  {"at", "at", ALIGN_LEFT, false, 0},
+    {"parameter", "of", ALIGN_LEFT, false, 0}, {"count", "days", ALIGN_RIGHT, false, 0},
+    {"mean", "mean", ALIGN_POINT, false, 0},   {"min", "lowest", ALIGN_POINT, false, 0},
+    {"max", "highest", ALIGN_POINT, false, 0}, {"unit", "unit", ALIGN_LEFT, false, 0},
+    {"over", "over", ALIGN_LEFT, false, 0},    {"p10", "10 %", ALIGN_POINT, false, 0},
+    {"p50", "50 %", ALIGN_POINT, false, 0},    {"p90", "90 %", ALIGN_POINT, false, 0},
+};
+
+/* On a page each figure has a table of its own. */
+static const struct column over_page_columns[] = {
+    {NULL, "over", ALIGN_LEFT, false, 0},  {NULL, "days", ALIGN_RIGHT, false, 0},
+    {NULL, "mean", ALIGN_POINT, false, 0}, {NULL, "lowest", ALIGN_POINT, false, 0},
+    {NULL, "10 %", ALIGN_POINT, false, 0}, {NULL, "50 %", ALIGN_POINT, false, 0},
+    {NULL, "90 %", ALIGN_POINT, false, 0}, {NULL, "highest", ALIGN_POINT, false, 0},
+};
+
+static const char *group_word(enum process_group by, int group)
+{
+    static const char *const days[] = {"Sun", "Mon", "Tue", "Wed", "Thu", "Fri", "Sat"};
+    static const char *const months[] = {"Jan", "Feb", "Mar", "Apr", "May", "Jun",
+                                         "Jul", "Aug", "Sep", "Oct", "Nov", "Dec"};
+    return by == GROUP_WEEKDAY ? days[group] : months[group - 1];
+}
 
 static void add_day(struct arena *a, struct table *t, const struct process_figure *g, int figures)
 {
@@ -70,6 +107,128 @@ static void add_step(struct arena *a, struct table *t, const struct process_figu
     c[9] = cell_text(g->unit);
 }
 
+static void add_over(struct arena *a, struct table *t, const struct process_summary *g,
+                     const struct process_given *o)
+{
+    struct cell *c = table_row(t);
+    c[0] = cell_day(a, o->from);
+    c[1] = cell_day(a, o->to);
+    c[2] = cell_text(g->figure->name);
+    c[3] = cell_text(g->figure->at);
+    c[4] = cell_text(g->figure->parameter);
+    c[5] = cell_count(a, g->count);
+    c[6] = cell_number(figure_print(a, g->mean, FIGURES_FILE));
+    c[7] = cell_number(figure_print(a, g->least, FIGURES_FILE));
+    c[8] = cell_number(figure_print(a, g->most, FIGURES_FILE));
+    c[9] = cell_text(g->figure->unit);
+    c[10] = cell_text(group_word((enum process_group)o->over, g->group));
+    for (size_t i = 0; i < PROCESS_PERCENTILES; i++)
+        c[11 + i] = cell_number(figure_print(a, g->percentile[i], FIGURES_FILE));
+}
+
+static void add_over_page(struct arena *a, struct table *t, const struct process_summary *g,
+                          const struct process_given *o)
+{
+    struct cell *c = table_row(t);
+    c[0] = cell_text(group_word((enum process_group)o->over, g->group));
+    c[1] = cell_count(a, g->count);
+    c[2] = cell_number(figure_print(a, g->mean, FIGURES_TEXT));
+    c[3] = cell_number(figure_print(a, g->least, FIGURES_TEXT));
+    for (size_t i = 0; i < PROCESS_PERCENTILES; i++)
+        c[4 + i] = cell_number(figure_print(a, g->percentile[i], FIGURES_TEXT));
+    c[7] = cell_number(figure_print(a, g->most, FIGURES_TEXT));
+}
+
+static bool same_figure(const struct process_figure *x, const struct process_figure *y)
+{
+    return text_equal(x->name, y->name) && text_equal(x->at, y->at) &&
+           text_equal(x->parameter, y->parameter);
+}
+
+static void show_over(struct session *s, struct page *page, const struct process_summary *sum,
+                      size_t sums, const struct process_given *o)
+{
+    for (size_t i = 0; i < sums;) {
+        const struct process_figure *g = sum[i].figure;
+        const char *unit = text_equal(g->unit, "1") ? "no unit" : g->unit;
+        const char *title = arena_print(s->arena, "%s at %s%s%s, %s", g->name, g->at,
+                                        *g->parameter ? " of " : "", g->parameter, unit);
+        struct table *t = table_new(s->arena, title, over_page_columns, NELEM(over_page_columns));
+        for (; i < sums && same_figure(sum[i].figure, g); i++)
+            add_over_page(s->arena, t, &sum[i], o);
+        page_space(page);
+        page_table(page, t);
+    }
+}
+
+/* Only the columns that the table can use are read from the book. */
+static enum status read_frame(struct session *s, const struct plant *plant,
+                              const struct process_options *how, struct frame **frame,
+                              struct fault *f)
+{
+    struct frame_span *span = NULL;
+    size_t count = 0;
+    day_t first = process_reach(how);
+    if (book_spans(s->book, s->arena, plant, first, how->to, &span, &count, f) != OK)
+        return FAULT;
+    struct frame_span *read = arena_alloc(s->arena, (count + 1) * sizeof *read);
+    size_t reads = process_reads(plant, span, count, read);
+    return session_frame(s, plant, read, reads, first, how->to, frame, f);
+}
+
+static enum status look_at(const struct process_given *o, struct fault *f)
+{
+    if (o->from > o->to)
+        return fault_usage(f, "put the earlier date in --from", "--from is after --to");
+    if (o->over >= 0 && o->by > STEP_DAY)
+        return fault_usage(f, "leave out one of them", "--over gathers days, not a longer --step");
+    if (o->chart && o->over >= 0)
+        return fault_usage(f, "leave out one of them", "--chart draws time, which --over gathers");
+    if (o->chart && (o->as == AS_CSV || o->as == AS_JSON))
+        return fault_usage(f, "leave out one of them", "--chart draws text, not csv or json");
+    return OK;
+}
+
+static struct page *new_page(struct session *s, const struct plant *plant, size_t count)
+{
+    struct page *page = page_new(s->arena);
+    page_heading(page, plant->name);
+    if (count == 0)
+        page_line(page, FLAG_WATCH,
+                  "no figures: nothing of what they are made of was measured in these days");
+    return page;
+}
+
+static void print_over(struct session *s, const struct plant *plant, const struct process_given *o,
+                       const struct process_figure *figure, size_t count)
+{
+    struct process_summary *sum = NULL;
+    size_t sums = 0;
+    struct page *page = new_page(s, plant, count);
+    struct table *table = table_new(s->arena, "", over_columns, NELEM(over_columns));
+    process_summarize(s->arena, figure, count, (enum process_group)o->over,
+                      plant->rules.word[RULE_PERCENTILE], &sum, &sums);
+    for (size_t i = 0; i < sums; i++)
+        add_over(s->arena, table, &sum[i], o);
+    page_line(page, FLAG_NONE, "%s", rule_sentence(s->arena, &plant->rules, RULE_PERCENTILE));
+    show_over(s, page, sum, sums, o);
+    session_print(s, o->as, page, table);
+}
+
+static void print_table(struct session *s, const struct plant *plant, const struct process_given *o,
+                        const struct process_figure *figure, size_t count)
+{
+    bool daily = o->by <= STEP_DAY;
+    int figures = o->as == AS_CSV || o->as == AS_JSON ? FIGURES_FILE : FIGURES_TEXT;
+    struct table *table = daily ? table_new(s->arena, "", day_columns, NELEM(day_columns))
+                                : table_new(s->arena, "", step_columns, NELEM(step_columns));
+    for (size_t i = 0; i < count; i++)
+        (daily ? add_day : add_step)(s->arena, table, &figure[i], figures);
+    struct page *page = new_page(s, plant, count);
+    page_table(page, table);
+    session_print(s, o->as, page, table);
+}
+
 static enum status run(struct session *s, const void *given, struct fault *f)
 {
     const struct process_given *o = given;
@@ -77,29 +236,22 @@ static enum status run(struct session *s, const void *given, struct fault *f)
     struct frame *frame = NULL;
     struct process_figure *figure = NULL;
     size_t count = 0;
-    if (o->from > o->to)
-        return fault_usage(f, "put the earlier date in --from", "--from is after --to");
     const struct process_options how = {.from = o->from,
                                         .to = o->to,
                                         .step = o->by < 0 ? STEP_DAY : (enum process_step)o->by,
                                         .smooth = o->smooth ? (int)o->smooth : 1};
-    if (session_book(s, BOOK_READ, NULL, &plant, f) != OK ||
-        session_frame_all(s, plant, process_reach(&how), o->to, &frame, f) != OK ||
+    if (look_at(o, f) != OK || session_book(s, BOOK_READ, NULL, &plant, f) != OK ||
+        read_frame(s, plant, &how, &frame, f) != OK ||
         process_table(s->arena, frame, &how, &figure, &count, f) != OK)
         return FAULT;
-    bool daily = how.step == STEP_DAY;
-    int figures = o->as == AS_CSV || o->as == AS_JSON ? FIGURES_FILE : FIGURES_TEXT;
-    struct table *table = daily ? table_new(s->arena, "", day_columns, NELEM(day_columns))
-                                : table_new(s->arena, "", step_columns, NELEM(step_columns));
-    for (size_t i = 0; i < count; i++)
-        (daily ? add_day : add_step)(s->arena, table, &figure[i], figures);
-    struct page *page = page_new(s->arena);
-    page_heading(page, plant->name);
-    if (count == 0)
-        page_line(page, FLAG_WATCH,
-                  "no figures: nothing of what they are made of was measured in these days");
-    page_table(page, table);
-    session_print(s, o->as, page, table);
+    if (o->over >= 0) {
+        print_over(s, plant, o, figure, count);
+    } else if (o->chart) {
+        session_print(s, AS_TEXT, new_page(s, plant, count), NULL);
+        charts_write(s->out, s->arena, figure, count, o->from, o->to);
+    } else {
+        print_table(s, plant, o, figure, count);
+    }
     return OK;
 }
 

@@ -10,7 +10,9 @@ enum side { AMOUNT, STRENGTH };
 
 /* How one argument gets its number on a day. */
 struct input {
-    struct stream *stream; /* NULL: the formula's default */
+    struct stream *stream;     /* NULL: a figure, or the formula's default */
+    const struct line *figure; /* what another formula gives on the day, in its own unit */
+    const struct line *share;  /* a percentage of that figure is what is taken; NULL: all */
     enum side side;
     bool shared;                            /* an even part for each basin of the line's kind */
     const struct fraction *factor, *offset; /* into the argument's unit; NULL: it is in that unit */
@@ -38,6 +40,7 @@ void lines_find(struct supplies *s, struct lines *out);
 /* The rows of process.csv, which must have passed process_check. */
 void lines_own(struct supplies *s, struct lines *out);
 
+/* An empty line of the formula. */
 struct line *lines_add(struct supplies *s, struct lines *lines, const char *formula);
 /* Numbers of `from` are turned into the argument's unit, or into `to`. */
 void line_feed(struct supplies *s, struct line *line, const char *argument, struct stream *stream,

@@ -98,7 +98,111 @@ day_t process_reach(const struct process_options *o);
 MUST_USE enum status process_table(struct arena *a, const struct frame *frame,
                                    const struct process_options *o, struct process_figure **out,
                                    size_t *count, struct fault *f);
+/* Of all columns that have readings, those the table can use: the others need not be in its frame.
+ * `out` has room for `count`; gives how many are in it. */
+size_t process_reads(const struct plant *plant, const struct frame_span *spans, size_t count,
+                     struct frame_span *out);
+
+/* Days of a table gathered by weekday or by month of the year. */
+enum process_group { GROUP_WEEKDAY, GROUP_MONTH };
+#define PROCESS_PERCENTILES 3 /* the 10th, 50th, 90th */
+struct process_summary {
+    int group;                           /* enum weekday, or a month, 1 to 12 */
+    const struct process_figure *figure; /* one of them: its name, place, parameter and unit */
+    long count;                          /* days that have the figure */
+    const struct fraction *mean, *least, *most, *percentile[PROCESS_PERCENTILES];
+};
+/* `figures`: of days. In order of the figures' first appearance, then of the group; groups without
+ * a figure are left out. `rule`: a word of RULE_PERCENTILE, as process_percentile. */
+void process_summarize(struct arena *a, const struct process_figure *figures, size_t count,
+                       enum process_group by, int rule, struct process_summary **out,
+                       size_t *out_count);
+/* A percentile of `count` numbers, 1 or more, that stand lowest first. Common practice, no source:
+ * nearest rank ceil(pn); linear between ranks 1 + p(n - 1); Weibull p(n + 1), held inside the ranks
+ * there are. */
+const struct fraction *process_percentile(struct arena *a, const struct fraction *const *ranked,
+                                          size_t count, int percent, int rule);
 /* Checks process.csv against the catalogue (formula, arguments, units); faults name its lines. */
 MUST_USE enum status process_check(const struct plant *plant, struct fault *f);
+
+/* ---- wasting ----------------------------------------------------------------------------------
+ * How much sludge to waste on a day. Aeration basins in service are taken as one, in a unit of the
+ * plant: lb, lb/d, MGD, or kg, kg/d, m3/d. */
+
+enum waste_aim { WASTE_FOR_SRT, WASTE_FOR_FM, WASTE_FOR_MLSS, WASTE_AIMS };
+
+#define WASTE_LOOK_BACK 30 /* days; readings older than these take no part */
+
+struct waste_options {
+    enum waste_aim aim;
+    const struct fraction *target; /* d, 1/d of volatile solids, or mg/L; above 0 */
+    day_t on;                      /* no later reading takes part */
+    int smooth; /* means are of so many of the last days with readings, 1 or more */
+    int old;    /* days after which a reading is called old */
+    int days;   /* to look ahead; 0: none */
+    const struct fraction *step; /* most change from the day before, percent; 0 or more */
+};
+
+/* What the answer is worked from. */
+struct waste_part {
+    const char *name;
+    const struct fraction *value;
+    const char *unit;
+    int days;             /* with readings; 0: no mean of days */
+    day_t oldest, newest; /* of these readings; DAY_NONE where days is 0 */
+    const char *note;     /* "" where nothing is to be said */
+};
+
+enum waste_limit {
+    WASTE_AS_ASKED,
+    WASTE_BY_STEP, /* the step from the day before holds it */
+    WASTE_BY_ZERO  /* the target asks for less than nothing */
+};
+
+/* The end of a day to come. NULL figures: `note` says why. */
+struct waste_day {
+    day_t on;
+    const struct fraction *inventory, *mlss, *srt;
+    const char *note;
+};
+
+struct waste_plan {
+    const struct fraction *solids, *flow;             /* what to waste in the day */
+    const struct fraction *asked_solids, *asked_flow; /* the same before the step limit */
+    enum waste_limit limited_by;
+    const char *mass_unit, *solids_unit, *flow_unit; /* lb, lb/d, MGD */
+    struct waste_part *part;
+    size_t parts, part_room;
+    const char **warning; /* sentences, the weightiest first */
+    size_t warnings, warning_room;
+    const struct fraction *yield; /* observed; NULL: no_yield says why, and there are no days */
+    const char *no_yield;
+    struct waste_day *day;
+    size_t days;
+};
+
+/* The first day a frame for it must hold. */
+day_t process_waste_reach(const struct waste_options *o);
+/* Works the plan from readings of the look-back alone. Means are of the last `smooth` days with
+ * readings. For an SRT: inventory / SRT less what the effluent carries, in a day. For F:M and MLSS:
+ * the solids on hand above the target, taken off in one day; what the effluent carried is no longer
+ * in the measured inventory. Floored at 0, then held within `step` percent of the newest waste flow
+ * before `on`, unless that was 0. Formulas of the catalogue, with their sources:
+ * waste-mass-for-srt, waste-flow-for-srt, waste-mass-for-food-to-microorganism,
+ * waste-mass-for-mlss, waste-flow-from-mass, waste-flow-with-step-limit, solids-inventory.
+ *
+ * The days to come are a balance: inventory + observed yield x BOD removed - wasted - lost with the
+ * effluent, where the load, the loss and the strength of the waste stay as they are. The yield
+ * (observed-sludge-yield) is of the 30 days to `on`: wasted + lost + what the inventory gained by
+ * its least-squares line, over BOD removed, each a mean of its own days with readings.
+ *
+ * Warnings (the bounds are common practice, no source): the target asks for less than nothing;
+ * inventory falls by its least-squares line by more than 5 % within the days of its mean; a reading
+ * is older than `old` days; nothing was wasted the day before, so that no step holds; the volume in
+ * service changed. Faults: a part that no reading gives, named; what the catalogue's domains
+ * refuse. */
+MUST_USE enum status process_waste(struct arena *a, const struct frame *frame,
+                                   const struct waste_options *o, struct waste_plan *out,
+                                   struct fault *f);
 
 #endif

@@ -179,19 +179,19 @@ struct stream *roles_entering(struct supplies *s, const struct roles *r, const c
     return stream;
 }
 
-/* Suspended solids of the effluent, or of the only secondary effluent where it has none. */
-static struct stream *find_out_solids(struct supplies *s, const struct roles *r)
+struct stream *roles_leaving(struct supplies *s, const struct roles *r, const char *parameter)
 {
     const struct plant *p = s->plant;
-    const struct series *before = strength_of(s, roles_only(p, ROLE_SECONDARY_EFFLUENT), SUSPENDED);
+    const struct series *before = strength_of(s, roles_only(p, ROLE_SECONDARY_EFFLUENT), parameter);
     if (!has_role(p, ROLE_EFFLUENT))
         return NULL;
     struct stream *stream = stream_new(s);
     for (size_t i = 0; i < p->point_count; i++) {
         const char *at;
-        const struct series *solids = strength_of(s, (int)i, SUSPENDED);
+        const struct series *strength = strength_of(s, (int)i, parameter);
         if (p->points[i].role == ROLE_EFFLUENT &&
-            !add_carrying(s, stream, roles_flow_past(s, r, (int)i, &at), solids ? solids : before))
+            !add_carrying(s, stream, roles_flow_past(s, r, (int)i, &at),
+                          strength ? strength : before))
             return NULL;
     }
     return stream;
@@ -299,7 +299,29 @@ static struct stream *find_mixed_liquor(struct supplies *s, const struct roles *
     return stream->parts > 0 ? stream : NULL;
 }
 
-/* ---- chlorine ---- */
+/* The only basin that stands at a point has what its meter counts. */
+static bool alone_at(const struct plant *p, const char *basin, int point)
+{
+    for (size_t i = 0; i < p->basin_count; i++)
+        if (p->basins[i].point == point && !text_equal(p->basins[i].id, basin))
+            return false;
+    return true;
+}
+
+struct stream *roles_through(struct supplies *s, const struct roles *r, const char *basin,
+                             int point, bool *shared)
+{
+    struct series *meter = NULL;
+    if (point >= 0 && s->plant->points[point].role == ROLE_OTHER &&
+        alone_at(s->plant, basin, point))
+        meter = own_flow(s, point);
+    *shared = meter == NULL;
+    return meter ? stream_of(s, meter) : r->out_flow;
+}
+
+/* ---- chemicals ---- */
+
+enum { WORDS_MOST = 5 };
 
 static bool mentions(const char *text, const char *word)
 {
@@ -314,34 +336,92 @@ static bool mentions(const char *text, const char *word)
     return false;
 }
 
-/* Points of chemicals do not say which chemical: their names do. */
-static bool is_chlorine(const struct point *p)
+static bool named(const struct point *p, const char *const words[WORDS_MOST])
 {
-    static const char *const words[] = {"chlor", "hypo", "cl2", "naocl"};
-    if (p->role != ROLE_CHEMICAL || mentions(p->id, "dechlor") || mentions(p->name, "dechlor") ||
-        mentions(p->id, "chloride") || mentions(p->name, "chloride"))
-        return false;
-    for (size_t i = 0; i < NELEM(words); i++)
+    for (size_t i = 0; i < WORDS_MOST && words[i]; i++)
         if (mentions(p->id, words[i]) || mentions(p->name, words[i]))
             return true;
     return false;
 }
 
-static struct stream *find_chlorine(struct supplies *s)
+/* Points of chemicals do not say which chemical: their names do. */
+static bool is_chlorine(const struct point *p)
 {
-    int feed = plant_parameter(s->plant, CHEMICAL_FEED);
-    const struct unit *lb_per_d = unit_find("lb/d");
+    static const char *const words[WORDS_MOST] = {"chlor", "hypo", "cl2", "naocl"};
+    static const char *const others[WORDS_MOST] = {"dechlor", "chloride"};
+    return p->role == ROLE_CHEMICAL && named(p, words) && !named(p, others);
+}
+
+static bool is_polymer(const struct point *p)
+{
+    static const char *const words[WORDS_MOST] = {"poly", "flocculant"};
+    static const char *const others[WORDS_MOST] = {"polyalum", "polyphos"};
+    return p->role == ROLE_CHEMICAL && named(p, words) && !named(p, others);
+}
+
+static bool is_aeration(const struct point *p)
+{
+    return p->role == ROLE_AERATION;
+}
+
+static bool is_digester(const struct point *p)
+{
+    return p->role == ROLE_DIGESTER;
+}
+
+bool roles_has_chemical(const struct plant *p, enum chemical chemical)
+{
+    static const char *const bisulfite[WORDS_MOST] = {"bisulf", "metabisulf", "sbs", "nahso3"};
+    static const char *const dioxide[WORDS_MOST] = {"sulfur dioxide", "sulphur dioxide", "so2"};
+    for (size_t i = 0; i < p->point_count; i++)
+        if (p->points[i].role == ROLE_CHEMICAL &&
+            named(&p->points[i], chemical == CHEMICAL_BISULFITE ? bisulfite : dioxide))
+            return true;
+    return chemical == CHEMICAL_ANY;
+}
+
+int roles_filtrate(const struct plant *p)
+{
+    static const char *const words[WORDS_MOST] = {"filtrate", "centrate", "pressate"};
+    int found = -1;
+    for (size_t i = 0; i < p->point_count; i++) {
+        if (p->points[i].role != ROLE_OTHER || !named(&p->points[i], words))
+            continue;
+        if (found >= 0)
+            return -1;
+        found = (int)i;
+    }
+    return found;
+}
+
+/* What is read of the parameter at all such points together; NULL where nowhere. */
+static struct stream *sum_at(struct supplies *s, bool (*is_such)(const struct point *p),
+                             const char *parameter, const char *unit_name)
+{
+    int index = plant_parameter(s->plant, parameter);
+    const struct unit *unit = unit_find(unit_name);
     struct stream *stream = stream_new(s);
-    if (feed < 0 || !unit_same_kind(s->plant->parameters[feed].unit, lb_per_d))
+    if (index < 0 || !unit_same_kind(s->plant->parameters[index].unit, unit))
         return NULL;
     for (size_t i = 0; i < s->plant->point_count; i++) {
-        const struct series *fed = NULL;
-        if (is_chlorine(&s->plant->points[i]))
-            fed = series_of(s, (int)i, feed, lb_per_d);
-        if (fed != NULL)
-            stream_add(s, stream, (struct part){.reading = fed});
+        const struct series *read = NULL;
+        if (is_such(&s->plant->points[i]))
+            read = series_of(s, (int)i, index, unit);
+        if (read != NULL)
+            stream_add(s, stream, (struct part){.reading = read});
     }
     return stream->parts > 0 ? stream : NULL;
+}
+
+static struct stream *find_return_solids(struct supplies *s)
+{
+    const struct series *solids = sludge_solids(s, roles_only(s->plant, ROLE_RETURN_SLUDGE));
+    if (solids == NULL)
+        return NULL;
+    struct stream *stream = stream_new(s);
+    stream_add(s, stream,
+               (struct part){.number = fraction_from_int(s->arena, 1), .strength = solids});
+    return stream;
 }
 
 /* ---- all of them ---- */
@@ -365,12 +445,17 @@ void roles_find(struct supplies *s, struct roles *r)
     r->out_flow = main_flow(s, ROLE_EFFLUENT, ROLE_INFLUENT, &r->out_flow_at);
     r->return_flow = flow_of_role(s, ROLE_RETURN_SLUDGE, &at);
     r->waste = find_waste(s);
-    r->out_solids = find_out_solids(s, r);
+    r->out_solids = roles_leaving(s, r, SUSPENDED);
     r->entering = roles_entering(s, r, SUSPENDED);
     r->aeration = basins_of_kind(s, BASIN_AERATION, MIXED_LIQUOR);
     r->volatile_solids = basins_of_kind(s, BASIN_AERATION, VOLATILE);
     r->mixed_liquor = find_mixed_liquor(s, r);
     r->clarifiers = basins_of_kind(s, BASIN_SECONDARY_CLARIFIER, NULL);
-    r->chlorine = find_chlorine(s);
+    r->return_solids = find_return_solids(s);
+    r->digesters = basins_of_kind(s, BASIN_DIGESTER, NULL);
+    r->chlorine = sum_at(s, is_chlorine, CHEMICAL_FEED, "lb/d");
+    r->polymer = sum_at(s, is_polymer, CHEMICAL_FEED, "lb/d");
+    r->air = sum_at(s, is_aeration, "AIR", "ft3/d");
+    r->gas = sum_at(s, is_digester, "GAS", "ft3/d");
     r->load_factor = roles_load_factor(s);
 }

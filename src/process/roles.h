@@ -3,6 +3,7 @@
 #ifndef WEIRBOOK_PROCESS_ROLES_H
 #define WEIRBOOK_PROCESS_ROLES_H
 
+#include "process/plans.h"
 #include "process/supply.h"
 
 /* A stream is NULL where the plant does not measure what it takes. Flows are in MGD, volumes in MG,
@@ -18,7 +19,11 @@ struct roles {
     struct stream *volatile_solids; /* volume in service and volatile mixed liquor solids */
     struct stream *mixed_liquor;    /* strength alone is used: solids that go to the clarifiers */
     struct stream *clarifiers;      /* volume of the secondary clarifiers in service */
+    struct stream *return_solids;   /* strength alone is used: of the only return */
+    struct stream *digesters;       /* volume of the digesters in service */
     struct stream *chlorine;        /* chemical fed, lb/d */
+    struct stream *polymer;         /* chemical fed, lb/d */
+    struct stream *air, *gas;       /* ft3/d, of all aeration points and all digesters */
     struct stream *load_factor;
     const char *plant_flow_at, *out_flow_at; /* where they are measured, "" where at several */
 };
@@ -27,6 +32,17 @@ void roles_find(struct supplies *s, struct roles *out);
 
 /* Flow to aeration with a strength of the parameter; NULL where it is not measured. */
 struct stream *roles_entering(struct supplies *s, const struct roles *r, const char *parameter);
+/* The effluents' flow with a strength of the parameter; of the only secondary effluent where an
+ * effluent has none. NULL where neither is measured. */
+struct stream *roles_leaving(struct supplies *s, const struct roles *r, const char *parameter);
+/* The flow through a basin: of its point's meter where no other basin stands there, else the flow
+ * out, of which each basin in service has an even part (`shared`). */
+struct stream *roles_through(struct supplies *s, const struct roles *r, const char *basin,
+                             int point, bool *shared);
+/* Whether a chemical point is named for the chemical; true for any chemical. */
+bool roles_has_chemical(const struct plant *p, enum chemical chemical);
+/* The only point named for the liquor of dewatering, or -1. */
+int roles_filtrate(const struct plant *p);
 /* The flow that passes a point; NULL where none is known. `measured_at`: where it is measured. */
 struct stream *roles_flow_past(struct supplies *s, const struct roles *r, int point,
                                const char **measured_at);

@@ -163,7 +163,10 @@ static struct carried work_day(struct supplies *s, const struct stream *stream, 
             out.no_product = out.no_amount;
             return out;
         }
-        out.amount = out.idle ? amount : fraction_add(s->arena, out.amount, amount);
+        if (part->minus)
+            out.amount = fraction_subtract(s->arena, out.amount, amount);
+        else
+            out.amount = out.idle ? amount : fraction_add(s->arena, out.amount, amount);
         out.idle = false;
         part_product(s, part, day, amount, &out);
     }

@@ -38,6 +38,7 @@ struct part {
     const struct basin *basin; /* the number counts while this one is in service */
     struct stream *stream;
     const struct series *strength; /* NULL: none */
+    bool minus;                    /* the amount is taken off */
 };
 
 /* What a stream carries on a day. */

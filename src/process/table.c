@@ -60,10 +60,43 @@ static const struct fraction *strength(struct arena *a, const struct carried *c)
     return fraction_divide(a, c->product, c->amount);
 }
 
+static void work_figure(struct table *t, const struct line *line, day_t day,
+                        struct day_figure *out);
+
+/* What another formula gives, in that formula's own unit; what must be known of it is passed on. */
+static const struct fraction *part_number(struct table *t, const struct line *part, day_t day,
+                                          struct day_figure *out)
+{
+    struct day_figure d;
+    work_figure(t, part, day, &d);
+    out->absent = out->absent || d.absent;
+    if (d.value == NULL) {
+        out->note = d.note;
+        return NULL;
+    }
+    out->less = out->less || d.less;
+    out->greater = out->greater || d.greater;
+    out->split = d.split > out->split ? d.split : out->split;
+    return d.value;
+}
+
+static const struct fraction *figure_number(struct table *t, const struct input *in, day_t day,
+                                            struct day_figure *out)
+{
+    struct arena *a = t->s.passing;
+    const struct fraction *x = part_number(t, in->figure, day, out);
+    if (x == NULL || in->share == NULL)
+        return x;
+    const struct fraction *percent = part_number(t, in->share, day, out);
+    if (percent == NULL)
+        return NULL;
+    return fraction_divide(a, fraction_multiply(a, x, percent), fraction_from_int(a, 100));
+}
+
 /* NULL when the input has no number on the day; the figure then has its note. */
-static const struct fraction *input_number(struct table *t, const struct line *line,
-                                           const struct input *in, day_t day,
-                                           struct day_figure *out)
+static const struct fraction *stream_number(struct table *t, const struct line *line,
+                                            const struct input *in, day_t day,
+                                            struct day_figure *out)
 {
     struct arena *a = t->s.passing;
     struct carried c = line->smoothed ? stream_smoothed(&t->s, in->stream, day)
@@ -84,7 +117,17 @@ static const struct fraction *input_number(struct table *t, const struct line *l
         assert(out->split > 0);
         x = fraction_divide(a, x, fraction_from_int(a, out->split));
     }
-    if (in->factor)
+    return x;
+}
+
+static const struct fraction *input_number(struct table *t, const struct line *line,
+                                           const struct input *in, day_t day,
+                                           struct day_figure *out)
+{
+    struct arena *a = t->s.passing;
+    const struct fraction *x =
+        in->figure ? figure_number(t, in, day, out) : stream_number(t, line, in, day, out);
+    if (x != NULL && in->factor)
         x = fraction_add(a, fraction_multiply(a, x, in->factor), in->offset);
     return x;
 }
@@ -99,7 +142,7 @@ static void work_figure(struct table *t, const struct line *line, day_t day, str
     *out = (struct day_figure){.note = ""};
     out->absent = line->basin && !basin_runs(t->s.plant, line, day);
     for (size_t i = 0; i < formula->arguments && !out->absent; i++) {
-        if (line->input[i].stream == NULL)
+        if (line->input[i].stream == NULL && line->input[i].figure == NULL)
             continue;
         number[i] = input_number(t, line, &line->input[i], day, out);
         if (number[i] == NULL)
@@ -113,7 +156,14 @@ static void work_figure(struct table *t, const struct line *line, day_t day, str
         out->note = arena_text(t->s.arena, fault.text);
         return;
     }
-    if (line->factor)
+}
+
+/* In the plant's unit. */
+static void work_line(struct table *t, const struct line *line, day_t day, struct day_figure *out)
+{
+    struct arena *a = t->s.passing;
+    work_figure(t, line, day, out);
+    if (out->value != NULL && line->factor)
         out->value = fraction_add(a, fraction_multiply(a, out->value, line->factor), line->offset);
 }
 
@@ -177,7 +227,7 @@ static struct process_figure *figure_new(struct table *t, const struct line *lin
 static void add_day(struct table *t, const struct line *line, day_t day)
 {
     struct day_figure d;
-    work_figure(t, line, day, &d);
+    work_line(t, line, day, &d);
     if (d.absent)
         return;
     struct process_figure *f = figure_new(t, line, day, day);
@@ -233,7 +283,7 @@ struct gathered {
 static void gather(struct table *t, const struct line *line, day_t day, struct gathered *g)
 {
     struct day_figure d;
-    work_figure(t, line, day, &d);
+    work_line(t, line, day, &d);
     if (d.absent)
         return;
     g->present++;
