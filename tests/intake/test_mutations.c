@@ -16,13 +16,13 @@
 enum { MUTATIONS = 1000, CHANGES_MOST = 6 };
 
 static const char *const sound[] = {
-    "date,time,point,parameter,value,unit,sample,mdl,rl,note\n"
-    "2025-03-04,08:00,EFF,TSS,<9.6,mg/L,composite,0.1,1.0,\"a, \"\"b\"\"\nc\"\n"
-    "3/14/2025,7:30 PM,EFF,CU,ND,ug/L,,,,\n14/3/2025,,INF,FLOW,650621,kgal,,,,=x\n"
-    "2025-03-05T07:30,,EFF,ECOLI,TNTC,MPN/100mL,,,2420,\n2025-03-06,,EFF,TSS,code 9,,,,,\n",
-    "Datum;EFF TSS [mg/L];EFF FLOW;EFF CU\n04.03.2025;3,14;28.209,00;DNQ 0,5\n"
-    "05.03.2025 07:30;<5,0;1.234;\xb5\n06.03.2025;;;E 3\n",
-    "date\tEFF TSS\tEFF PH\r\n03/14/2025\t1,234\t7.1\r\n03/15/2025\t\"1,234.5\"\t\r\n",
+    ("date,time,point,parameter,value,unit,sample,mdl,rl,note\n"
+     "2025-03-04,08:00,EFF,TSS,<9.6,mg/L,composite,0.1,1.0,\"a, \"\"b\"\"\nc\"\n"
+     "3/14/2025,7:30 PM,EFF,CU,ND,ug/L,,,,\n14/3/2025,,INF,FLOW,650621,kgal,,,,=x\n"
+     "2025-03-05T07:30,,EFF,ECOLI,TNTC,MPN/100mL,,,2420,\n2025-03-06,,EFF,TSS,code 9,,,,,\n"),
+    ("Datum;EFF TSS [mg/L];EFF FLOW;EFF CU\n04.03.2025;3,14;28.209,00;DNQ 0,5\n"
+     "05.03.2025 07:30;<5,0;1.234;\xb5\n06.03.2025;;;E 3\n"),
+    ("date\tEFF TSS\tEFF PH\r\n03/14/2025\t1,234\t7.1\r\n03/15/2025\t\"1,234.5\"\t\r\n"),
 };
 
 /* What does most harm to a reader of CSV, and a few bytes of anything. */
