@@ -17,7 +17,7 @@ enum option_kind {
     OPTION_ONE_OF, /* int: index of the word in `argument`, "text|csv|json"; -1 until given */
     OPTION_DAY,    /* day_t: YYYY-MM-DD; DAY_NONE until given */
     OPTION_MONTH,  /* day_t: YYYY-MM, its first day; DAY_NONE until given */
-    OPTION_COUNT   /* long: a whole number above 0; 0 until given */
+    OPTION_COUNT   /* long: a whole number from 1 to 10000; 0 until given */
 };
 
 struct option_spec {

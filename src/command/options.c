@@ -6,6 +6,8 @@
 
 #include "base/poison.h"
 
+/* So many days before 1900 are still days. */
+enum { COUNT_MOST = 10000 };
 enum { BY_BOOK = 'b', BY_HELP = 'h', BY_TABLE = 256 };
 
 static void *slot(void *options, const struct option_spec *o)
@@ -44,9 +46,9 @@ static enum status read_count(const struct option_spec *o, const char *value, lo
 {
     struct decimal d;
     if (decimal_parse(value, strlen(value), &d) != DECIMAL_FINE || d.scale != 0 ||
-        d.coefficient < 1 || d.coefficient > 1000000)
-        return fault_usage(f, "write a whole number above 0", "--%s cannot be '%s'", o->name,
-                           value);
+        d.coefficient < 1 || d.coefficient > COUNT_MOST)
+        return fault_usage(f, "write a whole number from 1 to 10000", "--%s cannot be '%s'",
+                           o->name, value);
     *out = (long)d.coefficient;
     return OK;
 }

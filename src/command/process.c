@@ -225,7 +225,8 @@ static void print_table(struct session *s, const struct plant *plant, const stru
     for (size_t i = 0; i < count; i++)
         (daily ? add_day : add_step)(s->arena, table, &figure[i], figures);
     struct page *page = new_page(s, plant, count);
-    page_table(page, table);
+    if (count > 0)
+        page_table(page, table);
     session_print(s, o->as, page, table);
 }
 

@@ -15,3 +15,8 @@ echo "exit status $?"
 echo "exit status $?"
 "$weirbook" load --revise=yes march.csv
 echo "exit status $?"
+for days in 0 10001 1.5 -1 many; do
+    "$weirbook" day 2025-03-04 --smooth "$days"
+    echo "exit status $?"
+done
+"$weirbook" day 1900-01-01 --smooth 10000 | tail -n 1
