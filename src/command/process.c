@@ -230,6 +230,24 @@ static void print_table(struct session *s, const struct plant *plant, const stru
     session_print(s, o->as, page, table);
 }
 
+/* A table of days ends where the book ends: a century asked for would be one of empty rows. *any is
+ * false when the book holds none of the days. */
+static enum status keep_to_book(struct session *s, struct process_options *how, bool *any,
+                                struct fault *f)
+{
+    day_t first = DAY_NONE;
+    day_t last = DAY_NONE;
+    *any = true;
+    if (how->step != STEP_DAY)
+        return OK;
+    if (book_extent(s->book, &first, &last, f) != OK)
+        return FAULT;
+    how->from = first > how->from ? first : how->from;
+    how->to = last < how->to ? last : how->to;
+    *any = first != DAY_NONE && how->from <= how->to;
+    return OK;
+}
+
 static enum status run(struct session *s, const void *given, struct fault *f)
 {
     const struct process_given *o = given;
@@ -237,13 +255,16 @@ static enum status run(struct session *s, const void *given, struct fault *f)
     struct frame *frame = NULL;
     struct process_figure *figure = NULL;
     size_t count = 0;
-    const struct process_options how = {.from = o->from,
-                                        .to = o->to,
-                                        .step = o->by < 0 ? STEP_DAY : (enum process_step)o->by,
-                                        .smooth = o->smooth ? (int)o->smooth : 1};
+    bool any = false;
+    struct process_options how = {.from = o->from,
+                                  .to = o->to,
+                                  .step = o->by < 0 ? STEP_DAY : (enum process_step)o->by,
+                                  .smooth = o->smooth ? (int)o->smooth : 1};
     if (look_at(o, f) != OK || session_book(s, BOOK_READ, NULL, &plant, f) != OK ||
-        read_frame(s, plant, &how, &frame, f) != OK ||
-        process_table(s->arena, frame, &how, &figure, &count, f) != OK)
+        keep_to_book(s, &how, &any, f) != OK)
+        return FAULT;
+    if (any && (read_frame(s, plant, &how, &frame, f) != OK ||
+                process_table(s->arena, frame, &how, &figure, &count, f) != OK))
         return FAULT;
     if (o->over >= 0) {
         print_over(s, plant, o, figure, count);
