@@ -33,6 +33,18 @@ static enum status tell_problems(const struct plant_draft *draft, const char *fo
                     count == 1 ? "" : "s");
 }
 
+struct listing {
+    struct arena *arena;
+    struct plant_draft *draft;
+    const char *folder;
+};
+
+static void list_problem(void *context, const char *text)
+{
+    const struct listing *l = context;
+    plant_draft_problem(l->draft, arena_print(l->arena, "%s/%s", l->folder, text));
+}
+
 enum status command_read_folder(struct session *s, const char *folder, struct plant_draft **draft,
                                 struct plant **plant, struct fault *f)
 {
@@ -42,7 +54,10 @@ enum status command_read_folder(struct session *s, const char *folder, struct pl
         return FAULT;
     if (plant_draft_finish(*draft, plant, f) != OK)
         return tell_problems(*draft, folder, f);
-    return process_check(*plant, f);
+    struct listing listing = {.arena = s->arena, .draft = *draft, .folder = folder};
+    if (process_problems(*plant, list_problem, &listing) > 0)
+        return tell_problems(*draft, folder, f);
+    return OK;
 }
 
 static enum status run(struct session *s, const void *given, struct fault *f)

@@ -131,18 +131,38 @@ static bool is_first_row(const struct plant *p, size_t i)
     return true;
 }
 
+size_t process_problems(const struct plant *plant, void (*tell)(void *context, const char *fault),
+                        void *context)
+{
+    struct fault fault = {.set = false};
+    struct checking c = {.arena = arena_new(), .plant = plant, .fault = &fault};
+    size_t found = 0;
+    for (size_t i = 0; i < plant->process_count; i++) {
+        /* Whether a figure is complete can be said once its own row is fine. */
+        fault_clear(&fault);
+        if (check_row(&c, &plant->process[i]) == OK &&
+            (!is_first_row(plant, i) || check_complete(&c, &plant->process[i]) == OK))
+            continue;
+        tell(context, fault.text);
+        found++;
+    }
+    arena_free(c.arena);
+    return found;
+}
+
+static void keep_first(void *context, const char *text)
+{
+    struct fault *f = context;
+    if (f->set)
+        return;
+    f->set = true;
+    f->kind = FAULT_FAILED;
+    snprintf(f->text, sizeof f->text, "%s", text);
+}
+
 enum status process_check(const struct plant *plant, struct fault *f)
 {
-    enum status rc = OK;
-    struct checking c = {.arena = arena_new(), .plant = plant, .fault = f};
-    for (size_t i = 0; i < plant->process_count; i++)
-        TRY(check_row(&c, &plant->process[i]));
-    for (size_t i = 0; i < plant->process_count; i++)
-        if (is_first_row(plant, i))
-            TRY(check_complete(&c, &plant->process[i]));
-done:
-    arena_free(c.arena);
-    return rc;
+    return process_problems(plant, keep_first, f) == 0 ? OK : FAULT;
 }
 
 /* ---- binding ---- */

@@ -122,7 +122,11 @@ void process_summarize(struct arena *a, const struct process_figure *figures, si
  * there are. */
 const struct fraction *process_percentile(struct arena *a, const struct fraction *const *ranked,
                                           size_t count, int percent, int rule);
-/* Checks process.csv against the catalogue (formula, arguments, units); faults name its lines. */
+/* Checks process.csv against the catalogue (formula, arguments, units) and tells every problem,
+ * each in a fault's words with its line of process.csv. Returns how many. */
+size_t process_problems(const struct plant *plant, void (*tell)(void *context, const char *fault),
+                        void *context);
+/* The same for those who only ask whether it is fine: the fault is the first problem. */
 MUST_USE enum status process_check(const struct plant *plant, struct fault *f);
 
 /* ---- wasting ----------------------------------------------------------------------------------
