@@ -102,6 +102,118 @@ MUST_USE enum status book_load_end(struct book *b, const struct book_source *sou
                                    struct book_counts *counts, int64_t *batch, struct fault *f);
 void book_load_abandon(struct book *b); /* rolls back: a dry run, a fault */
 
+/* ---- acts: what people do to a book beside loading
+ * ------------------------------------------------ Each is a batch of its own with author and
+ * reason, hashed into the chain; nothing is rewritten. */
+
+/* The new version of one reading (QUALIFIER_WITHDRAWN: a spoiled sample; its text is "withdrawn").
+ * The reading is named by point, parameter, day, minute and sample of `r`; a fault says so when
+ * there is none, or when the value is the one in force. *old is what it replaces (in the arena).
+ * What `r` does not say (detail NULL; no mdl and rl) stays as it was. Such readings stand on no
+ * line of a file: `line` is 0, and `file` says "amended by WHO", or "batch N taken back by WHO". */
+MUST_USE enum status book_amend(struct book *b, struct arena *a, const struct plant *plant,
+                                const struct reading *r, const char *reason,
+                                const struct author *author, struct reading *old, int64_t *batch,
+                                struct fault *f);
+
+struct book_withdrawn {
+    long taken_back; /* readings that have no value now */
+    long restored;   /* readings that have the value again that the batch had replaced */
+    long left;       /* readings amended since: they stay as they are */
+};
+/* Takes back a whole load or bench sheet. Its rows are kept; each of its readings that is the
+ * newest version gets a version more: the value that it had replaced, unless that was taken back
+ * too, else withdrawn. Its file is no longer known and may be loaded again. A batch that
+ * is no load, or was taken back already, is a fault. */
+MUST_USE enum status book_withdraw(struct book *b, const struct plant *plant, int64_t batch,
+                                   const char *reason, const struct author *author,
+                                   struct book_withdrawn *out, int64_t *act, struct fault *f);
+
+enum remark_kind { REMARK_CAUSE, REMARK_REMEDY, REMARK_EVENT, REMARK_KINDS };
+extern const char *const remark_kind_words[REMARK_KINDS]; /* "cause", "remedy", "event" */
+
+/* A remark on days, on a point or on a limit of them; it never changes a figure. */
+struct book_remark {
+    int64_t id; /* its batch */
+    enum remark_kind kind;
+    const char *event; /* "bypass", "spill", "outage", "wet-weather", "other"; "" for no event */
+    day_t from, to;
+    const char *point, *parameter, *statistic; /* "" where it is about all */
+    const char *text, *who, *when;
+    bool withdrawn;
+    const char *withdrawn_why; /* "" */
+};
+MUST_USE enum status book_remark_add(struct book *b, const struct book_remark *remark,
+                                     const struct author *author, int64_t *id, struct fault *f);
+MUST_USE enum status book_remark_withdraw(struct book *b, int64_t id, const char *reason,
+                                          const struct author *author, struct fault *f);
+typedef enum status book_remark_sink(void *context, const struct book_remark *remark,
+                                     struct fault *f);
+/* Remarks whose days touch first..last (DAY_NONE: open), in the order of their days, withdrawn ones
+ * too. By index: only those rows are touched. */
+MUST_USE enum status book_remarks(struct book *b, day_t first, day_t last, book_remark_sink *sink,
+                                  void *context, struct fault *f);
+
+/* A person's answer to a doubt about readings; the newest of an id is in force. */
+struct book_answer {
+    const char *doubt, *reason, *who, *when;
+    int64_t batch;
+};
+MUST_USE enum status book_answer_add(struct book *b, const char *doubt, const char *reason,
+                                     const struct author *author, int64_t *batch, struct fault *f);
+typedef enum status book_answer_sink(void *context, const struct book_answer *answer,
+                                     struct fault *f);
+MUST_USE enum status book_answers(struct book *b, book_answer_sink *sink, void *context,
+                                  struct fault *f);
+
+/* ---- as it was
+ * ------------------------------------------------------------------------------------
+ */
+
+/* From now on the book is read as it stood after `batch`: later readings, versions, descriptions,
+ * remarks and answers do not count (book_plant, book_fill, book_each, book_last, book_spans,
+ * book_extent, book_asides, book_revisions, book_remarks, book_batches, book_head). 0: as it is.
+ * For a book opened to be read. */
+MUST_USE enum status book_as_of(struct book *b, int64_t batch, struct fault *f);
+/* The last batch written at or before a moment (UTC, "2025-04-01T23:59:59Z"); 0 when the book is
+ * younger. Clocks may have run backwards: it is the last one such that it and all before it are not
+ * later; *odd is true when a later batch claims an earlier time. */
+MUST_USE enum status book_batch_at(struct book *b, const char *when, int64_t *batch, bool *odd,
+                                   struct fault *f);
+
+struct book_change {                        /* one row of the history */
+    const char *when, *who, *what, *reason; /* what: "load", "bench", "revise", "amend",
+                                             * "withdraw", "description", "remark", "answer" */
+    int64_t batch;
+    day_t day;            /* DAY_NONE where it is about no day */
+    int point, parameter; /* -1 where none */
+    const char *sample;
+    const char *old_text, *new_text; /* values with their unit; "" where none */
+    const char *file;
+    long line;
+};
+struct book_history {
+    day_t first, last;    /* DAY_NONE: open */
+    int point, parameter; /* -1: all */
+    int64_t batch;        /* 0: all */
+    const char *who;      /* NULL: all */
+    bool every_reading;   /* first loads of readings too, not only their changes */
+};
+typedef enum status book_change_sink(void *context, const struct book_change *change,
+                                     struct fault *f);
+/* What was done, oldest first. Description changes name the file and row that differ. */
+MUST_USE enum status book_history(struct book *b, const struct plant *plant,
+                                  const struct book_history *ask, book_change_sink *sink,
+                                  void *context, struct fault *f);
+
+/* A copy of the book as it stands, made while others may write; checked, then put in its place
+ * under `path` (never over a file). */
+MUST_USE enum status book_backup(struct book *b, const char *path, struct fault *f);
+/* Whether a head (hex) printed earlier is an ancestor of the book's newest: *batch is the batch it
+ * was the head of, 0 when it never was. */
+MUST_USE enum status book_has_head(struct book *b, const char *head, int64_t *batch,
+                                   struct fault *f);
+
 /* ---- reading ---- */
 
 /* Adds the readings of the spans to a frame (all versions; the frame keeps the newest), and for a
@@ -181,7 +293,7 @@ MUST_USE enum status book_head(struct book *b, char out[2 * DIGEST_BYTES + 1], s
 
 struct book_finding {
     const char *what; /* "pages", "foreign keys", "schema", "chain", "batch", "reading",
-                       * "row set aside", "raw value", "description" */
+                       * "row set aside", "raw value", "description", "act", "remark", "answer" */
     bool good;
     int64_t batch;    /* 0 when none */
     const char *file; /* "" when none */

@@ -26,12 +26,16 @@ done:
     return rc;
 }
 
-static enum status last_head(struct book *b, uint8_t head[DIGEST_BYTES], struct fault *f)
+static enum status last_head(struct book *b, int64_t as_of, uint8_t head[DIGEST_BYTES],
+                             struct fault *f)
 {
     sqlite3_stmt *q = NULL;
     bool row;
     memset(head, 0, DIGEST_BYTES);
-    if (book_statement(b, LAST_HEAD, &q, f) != OK || book_step(b, q, &row, f) != OK)
+    if (book_statement(b, LAST_HEAD, &q, f) != OK)
+        return FAULT;
+    bind_int(q, 1, as_of);
+    if (book_step(b, q, &row, f) != OK)
         return FAULT;
     bool good = !row || column_digest(q, 0, head);
     sqlite3_reset(q);
@@ -45,7 +49,7 @@ enum status chain_add(struct book *b, struct pack *p, struct digest *d,
     sqlite3_stmt *q = NULL;
     uint8_t previous[DIGEST_BYTES], head[DIGEST_BYTES];
     enum status rc = OK;
-    TRY(last_head(b, previous, f));
+    TRY(last_head(b, INT64_MAX, previous, f));
     pack_head(p, d, s, previous, content, asides, head);
     TRY(book_statement(b, ADD_CHAIN, &q, f));
     bind_int(q, 1, s->id);
@@ -59,7 +63,7 @@ done:
 enum status book_head(struct book *b, char out[2 * DIGEST_BYTES + 1], struct fault *f)
 {
     uint8_t head[DIGEST_BYTES];
-    if (last_head(b, head, f) != OK)
+    if (last_head(b, b->as_of, head, f) != OK)
         return FAULT;
     digest_write(head, out);
     return OK;
@@ -71,6 +75,7 @@ enum status book_batches(struct book *b, book_batch_sink *sink, void *context, s
     bool row = false;
     enum status rc = OK;
     TRY(book_statement(b, BATCHES, &q, f));
+    bind_int(q, 1, b->as_of);
     for (;;) {
         TRY(book_step(b, q, &row, f));
         if (!row)

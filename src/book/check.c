@@ -8,10 +8,24 @@
 
 #include "base/poison.h"
 
-enum part { PAGES, KEYS, SCHEMA, CHAIN, BATCH, READING, ASIDE, RAW, DESCRIPTION, PARTS };
-static const char *const part_words[PARTS] = {"pages",         "foreign keys", "schema",
-                                              "chain",         "batch",        "reading",
-                                              "row set aside", "raw value",    "description"};
+enum part {
+    PAGES,
+    KEYS,
+    SCHEMA,
+    CHAIN,
+    BATCH,
+    READING,
+    ASIDE,
+    RAW,
+    DESCRIPTION,
+    ACT,
+    REMARK,
+    ANSWER,
+    PARTS
+};
+static const char *const part_words[PARTS] = {
+    "pages",         "foreign keys", "schema",      "chain", "batch",  "reading",
+    "row set aside", "raw value",    "description", "act",   "remark", "answer"};
 
 /* More of one kind are counted, not told one by one. */
 enum { TOLD_MOST = 20 };
@@ -28,7 +42,10 @@ struct check {
     struct names names;
     struct pack pack;
     struct digest *content, *asides, *raws, *head;
-    struct stored_batch batch;     /* the one that is walked */
+    struct stored_batch batch; /* the one that is walked */
+    struct stored_act act;     /* of it, where its table has one */
+    struct stored_remark remark;
+    struct stored_answer answer;
     uint8_t running[DIGEST_BYTES]; /* the head so far */
     int64_t next_batch, next_reading, next_aside, next_raw;
     int64_t count[PARTS], bad[PARTS];
@@ -379,9 +396,11 @@ static enum status walk_raws(struct check *c, int64_t first, int64_t count, stru
 }
 
 /* Counts that cannot be are not followed: the batch itself is reported by its hash. */
+#define COUNT_MOST (INT64_C(1) << 40)
+
 static bool counts_can_be(const struct stored_batch *s)
 {
-    const int64_t most = INT64_C(1) << 40;
+    const int64_t most = COUNT_MOST;
     return s->accepted >= 0 && s->accepted < most && s->revised >= 0 && s->revised < most &&
            s->aside >= 0 && s->aside < most && s->raw_values >= 0 && s->raw_values < most;
 }
@@ -430,6 +449,74 @@ static enum status walk_description(struct check *c, struct fault *f)
     return OK;
 }
 
+/* ---- an act ---- */
+
+static enum status tell_act(struct check *c, enum part part, const char *what, int64_t mark,
+                            const char *said)
+{
+    c->count[part]++;
+    if (pack_mark(&c->pack) == mark)
+        return OK;
+    return tell(c, part, c->batch.id, NULL, 0, "this %s, '%s', is not what was written" GO_BACK,
+                what, escaped(c, said));
+}
+
+static enum status walk_act(struct check *c, struct fault *f)
+{
+    const struct stored_act *s = &c->act;
+    pack_act(&c->pack, s);
+    if (tell_act(c, ACT, "act", s->mark, s->reason) != OK)
+        return FAULT;
+    if (s->readings < 0 || s->readings >= COUNT_MOST)
+        return OK;
+    if (walk_readings(c, c->next_reading, s->readings, f) != OK)
+        return FAULT;
+    c->next_reading += s->readings;
+    return OK;
+}
+
+/* What the row of a batch, and of no other table, is to stand beside it. */
+static bool told_by_kind(const struct stored_batch *s)
+{
+    static const struct {
+        const char *kind;
+        bool load, bench, description, act, remark, answer;
+    } kinds[] = {
+        {"load", .load = true},           {"bench", .load = true, .bench = true},
+        {"amend", .act = true},           {"description", .description = true},
+        {"withdraw", .act = true},        {"remark", .remark = true},
+        {"remark-withdraw", .act = true}, {"answer", .answer = true},
+    };
+    for (size_t i = 0; i < NELEM(kinds); i++)
+        if (text_equal(s->kind, kinds[i].kind))
+            return s->is_load == kinds[i].load && s->is_bench == kinds[i].bench &&
+                   s->is_description == kinds[i].description && !s->act == !kinds[i].act &&
+                   !s->remark == !kinds[i].remark && !s->answer == !kinds[i].answer;
+    return false;
+}
+
+static enum status walk_content(struct check *c, struct fault *f)
+{
+    const struct stored_batch *b = &c->batch;
+    if (b->is_load && walk_load(c, f) != OK)
+        return FAULT;
+    if (b->is_description && walk_description(c, f) != OK)
+        return FAULT;
+    if (b->act && walk_act(c, f) != OK)
+        return FAULT;
+    if (b->remark) {
+        pack_remark(&c->pack, b->remark);
+        if (tell_act(c, REMARK, "remark", b->remark->mark, b->remark->text) != OK)
+            return FAULT;
+    }
+    if (b->answer) {
+        pack_answer(&c->pack, b->answer);
+        if (tell_act(c, ANSWER, "answer", b->answer->mark, b->answer->reason) != OK)
+            return FAULT;
+    }
+    return OK;
+}
+
 /* ---- the chain ---- */
 
 /* Columns of CHECK_BATCHES. */
@@ -458,8 +545,24 @@ enum {
     AT_RAW_VALUES,
     AT_FIRST_RAW,
     AT_PREVIOUS,
-    AT_HEAD
+    AT_HEAD,
+    AT_ACT,
+    AT_REMARK = AT_ACT + ACT_CELLS,
+    AT_ANSWER = AT_REMARK + REMARK_CELLS
 };
+
+static void read_acts(struct check *c, sqlite3_stmt *s)
+{
+    row_act(s, AT_ACT, &c->act);
+    row_remark(s, AT_REMARK, &c->remark);
+    row_answer(s, AT_ANSWER, &c->answer);
+    if (sqlite3_column_type(s, AT_ACT) != SQLITE_NULL)
+        c->batch.act = &c->act;
+    if (sqlite3_column_type(s, AT_REMARK) != SQLITE_NULL)
+        c->batch.remark = &c->remark;
+    if (sqlite3_column_type(s, AT_ANSWER) != SQLITE_NULL)
+        c->batch.answer = &c->answer;
+}
 
 static void read_batch(struct check *c, sqlite3_stmt *s)
 {
@@ -489,6 +592,7 @@ static void read_batch(struct check *c, sqlite3_stmt *s)
     };
     (void)column_digest(s, AT_DIGEST,
                         out->digest); /* one that is none stays zero, and the head differs */
+    read_acts(c, s);
 }
 
 static enum status follow_chain(struct check *c, sqlite3_stmt *s)
@@ -522,12 +626,10 @@ static enum status walk_batch(struct check *c, sqlite3_stmt *s, struct fault *f)
              (long long)c->next_batch) != OK)
         return FAULT;
     c->next_batch = b->id + 1;
-    bool told = b->is_load != b->is_description && b->is_bench == text_equal(b->kind, "bench");
-    if (!told && tell(c, BATCH, b->id, b->file, 0, "nothing says what came with it" GO_BACK) != OK)
+    if (!told_by_kind(b) &&
+        tell(c, BATCH, b->id, b->file, 0, "nothing says what came with it" GO_BACK) != OK)
         return FAULT;
-    if (b->is_load && walk_load(c, f) != OK)
-        return FAULT;
-    if (b->is_description && walk_description(c, f) != OK)
+    if (walk_content(c, f) != OK)
         return FAULT;
     return follow_chain(c, s);
 }

@@ -23,7 +23,7 @@ static enum status cannot_make(const char *path, int number, struct fault *f)
 
 /* An empty file of our own beside the book's place, which nobody else can have made; NULL with a
  * fault. */
-static const char *make_beside(struct arena *a, const char *path, struct fault *f)
+const char *place_beside(struct arena *a, const char *path, struct fault *f)
 {
     struct stat st;
     int number = EEXIST;
@@ -103,38 +103,44 @@ static int put_in_place(const char *beside, const char *path)
     return unlink(beside) == 0 ? 0 : errno;
 }
 
+enum status place_keep(struct arena *a, const char *beside, const char *path, struct fault *f)
+{
+    int number = sync_at(beside, O_RDWR);
+    if (number == 0)
+        number = put_in_place(beside, path);
+    if (number != 0)
+        return cannot_make(path, number, f);
+    number = sync_folder(a, path);
+    if (number == 0)
+        return OK;
+    unlink(path);
+    return cannot_make(path, number, f);
+}
+
+void place_drop(struct arena *a, const char *beside)
+{
+    if (!beside)
+        return;
+    unlink(beside);
+    unlink(arena_print(a, "%s-journal", beside));
+}
+
 enum status book_create(const char *path, const struct plant_draft *draft,
                         const struct author *author, struct fault *f)
 {
     struct arena *a = arena_new();
     const char *beside = NULL;
     enum status rc = OK;
-    int number;
 
-    beside = make_beside(a, path, f);
+    beside = place_beside(a, path, f);
     if (!beside) {
         rc = FAULT;
         goto done;
     }
     TRY(build(beside, path, draft, author, f));
-    number = sync_at(beside, O_RDWR);
-    if (number == 0)
-        number = put_in_place(beside, path);
-    if (number != 0) {
-        rc = cannot_make(path, number, f);
-        goto done;
-    }
-    beside = NULL;
-    number = sync_folder(a, path);
-    if (number != 0) {
-        rc = cannot_make(path, number, f);
-        unlink(path);
-    }
+    TRY(place_keep(a, beside, path, f));
 done:
-    if (beside) {
-        unlink(beside);
-        unlink(arena_print(a, "%s-journal", beside));
-    }
+    place_drop(a, beside); /* harmless where it was kept */
     arena_free(a);
     return rc;
 }

@@ -173,24 +173,34 @@ static enum status add_in_order(struct gathering *g, struct plant_draft *draft, 
     return OK;
 }
 
+enum status description_draft(struct book *b, struct arena *a, int64_t batch,
+                              struct plant_draft **draft, struct fault *f)
+{
+    struct gathering g = {.book = b, .arena = a};
+    enum status rc = OK;
+    pack_init(&g.pack, a);
+    for (enum plant_file kind = 0; kind < PLANT_FILES; kind++)
+        TRY(description_rows(b, batch, kind, gather, &g, f));
+    *draft = plant_draft_new(a);
+    TRY(add_in_order(&g, *draft, f));
+done:
+    return rc;
+}
+
 static enum status description_in_force(struct book *b, struct arena *a, struct plant_draft **draft,
                                         struct fault *f)
 {
-    struct gathering g = {.book = b, .arena = a};
     sqlite3_stmt *s = NULL;
     bool row;
     enum status rc = OK;
-    pack_init(&g.pack, a);
     TRY(book_statement(b, DESCRIPTION_IN_FORCE, &s, f));
+    bind_int(s, 1, b->as_of);
     TRY(book_step(b, s, &row, f));
     int64_t batch = sqlite3_column_int64(s, 0);
     sqlite3_reset(s);
     if (batch == 0)
         return book_damaged(b, f, "it has no plant description");
-    for (enum plant_file kind = 0; kind < PLANT_FILES; kind++)
-        TRY(description_rows(b, batch, kind, gather, &g, f));
-    *draft = plant_draft_new(a);
-    TRY(add_in_order(&g, *draft, f));
+    rc = description_draft(b, a, batch, draft, f);
 done:
     return rc;
 }
@@ -220,7 +230,7 @@ static bool blank(const char *cell)
     return !cell || !*cell;
 }
 
-static bool same_row(const struct plant_row *a, const struct plant_row *b)
+bool description_same_row(const struct plant_row *a, const struct plant_row *b)
 {
     if (a->builtin != b->builtin)
         return false;
@@ -243,7 +253,7 @@ static bool same_description(const struct plant_draft *a, const struct plant_dra
                     return false;
                 break;
             }
-            if (!same_row(x, y))
+            if (!description_same_row(x, y))
                 return false;
         }
     }

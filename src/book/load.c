@@ -1,30 +1,12 @@
 /* load: one file of readings into the book, in one transaction. A reading is put in as version 0
  * without asking whether its key is there; only where it is, the newest version is looked up and
  * compared. */
-#include "book/codes.h"
-#include "book/store.h"
+#include "book/loading.h"
 
 #include <assert.h>
 #include <string.h>
 
 #include "base/poison.h"
-
-struct load {
-    struct arena *arena;
-    const struct plant *plant;
-    bool revise;
-    struct stored_batch batch;
-    struct book_counts counts;
-    int64_t next_reading, next_aside, next_raw;
-    struct digest *readings, *asides, *raws; /* running over all that was added */
-    struct pack pack;
-    int64_t *point, *parameter, *unit; /* codes by index; 0: not met yet */
-    struct codes series, details;
-    struct text key;                    /* of a series or a detail */
-    struct text clash_text, clash_file; /* what the last contradiction met */
-    uint8_t *confirmed; /* with revise: a bit for each older reading that a row of this file agreed
-                           with */
-};
 
 enum { KEY_BYTES_MOST = 8 << 20 };
 
@@ -80,8 +62,8 @@ void load_drop(struct book *b)
     arena_free(l->arena);
 }
 
-static enum status begin(struct book *b, const char *kind, const struct plant *plant,
-                         const struct author *author, bool revise, struct fault *f)
+enum status loading_begin(struct book *b, const char *kind, const struct plant *plant,
+                          const struct author *author, bool revise, struct fault *f)
 {
     enum status rc = OK;
     assert(!b->load);
@@ -111,13 +93,13 @@ done:
 enum status book_load_begin(struct book *b, const struct plant *plant, const struct author *author,
                             bool revise, struct fault *f)
 {
-    return begin(b, "load", plant, author, revise, f);
+    return loading_begin(b, "load", plant, author, revise, f);
 }
 
 enum status book_bench_begin(struct book *b, const struct plant *plant, const struct author *author,
                              bool revise, struct fault *f)
 {
-    if (begin(b, "bench", plant, author, revise, f) != OK)
+    if (loading_begin(b, "bench", plant, author, revise, f) != OK)
         return FAULT;
     struct load *l = b->load;
     if (last_id(b, LAST_RAW, &l->next_raw, f) != OK) {
@@ -331,8 +313,8 @@ static void make_detail_key(struct text *t, const struct reading *r, const struc
     assert(!t->overflowed); /* cells are far shorter; half a key would stand for another */
 }
 
-static enum status detail_code(struct book *b, struct load *l, const struct reading *r,
-                               const struct common *c, int64_t *out, struct fault *f)
+enum status loading_detail(struct book *b, struct load *l, const struct reading *r,
+                           const struct common *c, int64_t *out, struct fault *f)
 {
     struct detail_key key = {.detail = &c->detail};
     enum status rc = OK;
@@ -354,7 +336,7 @@ done:
 
 /* ---- one reading ---- */
 
-static void to_common(const struct reading *r, struct common *c)
+void loading_common(const struct reading *r, struct common *c)
 {
     *c = (struct common){.unit_name = unit_at(r->unit)->name,
                          .unit = r->unit,
@@ -368,8 +350,8 @@ static void to_common(const struct reading *r, struct common *c)
 }
 
 /* What the table will hold. `code` gives the no-data code room for a NUL. */
-static void to_stored(const struct load *l, const struct reading *r, const struct common *c,
-                      char code[2], struct stored *s)
+void loading_stored(const struct load *l, const struct reading *r, const struct common *c,
+                    char code[2], struct stored *s)
 {
     code[0] = r->code;
     code[1] = '\0';
@@ -431,12 +413,6 @@ static enum status add_reading(struct book *b, struct load *l, struct stored *s,
 
 /* ---- a reading whose key is taken ---- */
 
-struct newest {
-    int64_t id, version, batch, line, detail, qualifier;
-    struct decimal number;
-    char code;
-};
-
 static enum status find_newest(struct book *b, struct load *l, const struct stored *s,
                                struct newest *out, struct fault *f)
 {
@@ -487,8 +463,7 @@ static enum status unit_of(struct book *b, int64_t detail, const struct unit **o
 
 /* The same qualifier and, brought to one unit, exactly the same number: 30 and 30.0 are the same
  * value, and so are 1 MGD and 1000 kgal/d. */
-static bool same_value(const struct reading *r, const struct newest *old,
-                       const struct unit *old_unit)
+bool loading_same(const struct reading *r, const struct newest *old, const struct unit *old_unit)
 {
     const struct unit *unit = unit_at(r->unit);
     if (r->qualifier != old->qualifier)
@@ -548,8 +523,8 @@ static void confirm(struct load *l, const struct newest *old)
         l->confirmed[old->id / 8] |= (uint8_t)(1U << old->id % 8);
 }
 
-static enum status add_revision(struct book *b, struct load *l, const struct newest *old,
-                                struct stored *s, struct fault *f)
+enum status loading_revision(struct book *b, struct load *l, const struct newest *old,
+                             struct stored *s, struct fault *f)
 {
     sqlite3_stmt *q = NULL;
     bool added = false;
@@ -578,14 +553,14 @@ static enum status settle(struct book *b, struct load *l, const struct reading *
     TRY(unit_of(b, old.detail, &unit, f));
     bool gone = old.qualifier == QUALIFIER_WITHDRAWN && r->qualifier != QUALIFIER_WITHDRAWN;
     *outcome = BOOK_CONTRADICTS;
-    if (same_value(r, &old, unit))
+    if (loading_same(r, &old, unit))
         *outcome = BOOK_PRESENT;
     else if (gone)
         *outcome = BOOK_ACCEPTED; /* nothing in force is contradicted */
     else if (l->revise && !spoken_for(l, &old))
         *outcome = BOOK_REVISED;
     if (*outcome == BOOK_ACCEPTED || *outcome == BOOK_REVISED)
-        rc = add_revision(b, l, &old, s, f);
+        rc = loading_revision(b, l, &old, s, f);
     else if (*outcome == BOOK_CONTRADICTS)
         rc = tell_clash(b, l, &old, unit, r, clash, f);
     else
@@ -605,10 +580,10 @@ enum status book_load_reading(struct book *b, const struct reading *r, enum book
     enum status rc = OK;
 
     assert(l && r->point < l->plant->point_count && r->parameter < l->plant->parameter_count);
-    to_common(r, &common);
-    to_stored(l, r, &common, code, &s);
+    loading_common(r, &common);
+    loading_stored(l, r, &common, code, &s);
     TRY(series_code(b, l, r, &s.series, f));
-    TRY(detail_code(b, l, r, &common, &s.detail, f));
+    TRY(loading_detail(b, l, r, &common, &s.detail, f));
     TRY(add_reading(b, l, &s, &added, f));
     *outcome = BOOK_ACCEPTED;
     if (!added)

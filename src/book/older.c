@@ -14,7 +14,7 @@ enum { PIECE_BYTES = 1 << 16 };
 
 /* ---- for reading: a copy ---- */
 
-static enum status copy_all(struct book *b, sqlite3 *from, struct fault *f)
+enum status book_copy_all(struct book *b, sqlite3 *from, struct fault *f)
 {
     sqlite3_backup *copy = sqlite3_backup_init(b->db, "main", from, "main");
     if (!copy)
@@ -36,7 +36,7 @@ static enum status make_copy(struct book *b, sqlite3 *from, const char *name, st
     if (code != SQLITE_OK)
         TRY(book_fault(b, f));
     TRY(book_settings(b, f));
-    TRY(copy_all(b, from, f));
+    TRY(book_copy_all(b, from, f));
     TRY(book_migrate(b, f));
 done:
     b->mode = BOOK_READ;

@@ -128,7 +128,8 @@ struct book *book_on(sqlite3 *db, const char *path, enum book_mode mode)
 {
     struct arena *a = arena_new();
     struct book *b = arena_alloc(a, sizeof *b);
-    *b = (struct book){.arena = a, .path = arena_text(a, path), .db = db, .mode = mode};
+    *b = (struct book){
+        .arena = a, .path = arena_text(a, path), .db = db, .mode = mode, .as_of = INT64_MAX};
     return b;
 }
 

@@ -147,6 +147,57 @@ void pack_raw(struct pack *p, const struct stored_raw *s)
         pack_text(p, s->cell[i]);
 }
 
+/* Without clearing: the head of a batch holds them too. */
+static void add_act(struct pack *p, const struct stored_act *s)
+{
+    pack_bytes(p, "c", 1);
+    pack_int(p, s->batch);
+    pack_text(p, s->reason);
+    pack_optional(p, s->has_subject, s->subject, 0);
+    pack_int(p, s->readings);
+    pack_int(p, s->first_reading);
+}
+
+static void add_remark(struct pack *p, const struct stored_remark *s)
+{
+    pack_bytes(p, "n", 1);
+    pack_int(p, s->batch);
+    pack_text(p, s->kind);
+    pack_text(p, s->event);
+    pack_int(p, s->first);
+    pack_int(p, s->last);
+    pack_text(p, s->point);
+    pack_text(p, s->parameter);
+    pack_text(p, s->statistic);
+    pack_text(p, s->text);
+}
+
+static void add_answer(struct pack *p, const struct stored_answer *s)
+{
+    pack_bytes(p, "w", 1);
+    pack_int(p, s->batch);
+    pack_text(p, s->doubt);
+    pack_text(p, s->reason);
+}
+
+void pack_act(struct pack *p, const struct stored_act *s)
+{
+    pack_clear(p);
+    add_act(p, s);
+}
+
+void pack_remark(struct pack *p, const struct stored_remark *s)
+{
+    pack_clear(p);
+    add_remark(p, s);
+}
+
+void pack_answer(struct pack *p, const struct stored_answer *s)
+{
+    pack_clear(p);
+    add_answer(p, s);
+}
+
 void pack_row(struct pack *p, const struct stored_row *s)
 {
     const struct plant_layout *layout = plant_layout(s->kind);
@@ -206,6 +257,12 @@ void pack_head(struct pack *p, struct digest *d, const struct stored_batch *s,
         pack_int(p, s->first_raw);
         pack_bytes(p, s->raw_digest, DIGEST_BYTES);
     }
+    if (s->act)
+        add_act(p, s->act);
+    if (s->remark)
+        add_remark(p, s->remark);
+    if (s->answer)
+        add_answer(p, s->answer);
     digest_add(d, p->at, p->length);
     digest_end(d, head);
 }

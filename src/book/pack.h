@@ -72,6 +72,27 @@ struct stored_row {
 };
 void pack_row(struct pack *p, const struct stored_row *s);
 
+/* What a person did: a reading corrected, a batch or a remark taken back. */
+struct stored_act {
+    int64_t batch, readings, first_reading, mark;
+    bool has_subject;
+    int64_t subject;
+    const char *reason;
+};
+void pack_act(struct pack *p, const struct stored_act *s);
+
+struct stored_remark {
+    int64_t batch, first, last, mark;
+    const char *kind, *event, *point, *parameter, *statistic, *text;
+};
+void pack_remark(struct pack *p, const struct stored_remark *s);
+
+struct stored_answer {
+    int64_t batch, mark;
+    const char *doubt, *reason;
+};
+void pack_answer(struct pack *p, const struct stored_answer *s);
+
 /* A batch: what every kind has, and what its kind adds. */
 struct stored_batch {
     int64_t id;
@@ -87,10 +108,14 @@ struct stored_batch {
     bool is_bench; /* table bench has a row for it */
     int64_t raw_values, first_raw;
     uint8_t raw_digest[DIGEST_BYTES]; /* SHA-256 of its raw values; not kept in a table */
+    /* an act; NULL where the table has no row for it */
+    const struct stored_act *act;
+    const struct stored_remark *remark;
+    const struct stored_answer *answer;
 };
 /* The head after a batch. `content`: SHA-256 of its readings, or of its description's rows;
- * `asides`: of its rows set aside (of nothing for a description). What a bench sheet adds comes
- * last: other batches are packed as in format 1. */
+ * `asides`: of its rows set aside (of nothing for a description). What a bench sheet or an act adds
+ * comes last: other batches are packed as in format 1. */
 void pack_head(struct pack *p, struct digest *d, const struct stored_batch *s,
                const uint8_t previous[DIGEST_BYTES], const uint8_t content[DIGEST_BYTES],
                const uint8_t asides[DIGEST_BYTES], uint8_t head[DIGEST_BYTES]);

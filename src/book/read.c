@@ -14,6 +14,18 @@ static void bind_days(sqlite3_stmt *s, int at, day_t first, day_t last)
     bind_int(s, at + 1, last == DAY_NONE ? INT32_MAX : last);
 }
 
+/* Whether a row of READING_COLUMNS came after the moment the book is read as of. */
+static bool came_later(const struct book *b, sqlite3_stmt *s)
+{
+    enum { IN_BATCH = 5 };
+    return sqlite3_column_int64(s, IN_BATCH) > b->as_of;
+}
+
+static bool as_it_is(const struct book *b)
+{
+    return b->as_of == INT64_MAX;
+}
+
 static bool names_column(const struct series_name *s, int point, int parameter)
 {
     return s->plant_point == point && s->plant_parameter == parameter;
@@ -53,6 +65,8 @@ static enum status fill_series(struct filling *g, int64_t series, day_t first, d
         TRY(book_step(g->book, s, &row, f));
         if (!row)
             break;
+        if (came_later(g->book, s))
+            continue;
         TRY(keep(g, s, &r, f));
         frame_add(g->frame, &r);
     }
@@ -77,6 +91,8 @@ static enum status fill_start(struct filling *g, int64_t series, day_t first, st
         TRY(book_step(g->book, s, &row, f));
         if (!row)
             break;
+        if (came_later(g->book, s))
+            continue;
         TRY(keep(g, s, &r, f));
         bool older_version = r.day == before.day && r.minute == before.minute;
         before = r;
@@ -217,7 +233,7 @@ static enum status pass_rows(struct filling *g, const struct asked *asked, day_t
             break;
         const struct frame_span *span = asked_of(g, asked, sqlite3_column_int64(s, AT_SERIES));
         int64_t day = sqlite3_column_int64(s, AT_DAY);
-        if (!span || day < span->first || day > span->last)
+        if (!span || day < span->first || day > span->last || came_later(g->book, s))
             continue;
         TRY(keep(g, s, &r, f));
         frame_add(g->frame, &r);
@@ -321,10 +337,12 @@ static enum status series_has(struct book *b, int64_t series, day_t first, day_t
                               struct fault *f)
 {
     sqlite3_stmt *s = NULL;
-    if (book_statement(b, SERIES_HAS, &s, f) != OK)
+    if (book_statement(b, as_it_is(b) ? SERIES_HAS : SERIES_HAS_THEN, &s, f) != OK)
         return FAULT;
     bind_int(s, 1, series);
     bind_days(s, 2, first, last);
+    if (!as_it_is(b))
+        bind_int(s, 4, b->as_of);
     if (book_step(b, s, has, f) != OK)
         return FAULT;
     sqlite3_reset(s);
@@ -371,9 +389,13 @@ static enum status extreme(struct book *b, enum statement which, int64_t series,
     sqlite3_stmt *s = NULL;
     bool row;
     *out = DAY_NONE;
+    if (!as_it_is(b))
+        which = which == SERIES_FIRST ? SERIES_FIRST_THEN : SERIES_LAST_THEN;
     if (book_statement(b, which, &s, f) != OK)
         return FAULT;
     bind_int(s, 1, series);
+    if (!as_it_is(b))
+        bind_int(s, 2, b->as_of);
     if (book_step(b, s, &row, f) != OK)
         return FAULT;
     if (row && sqlite3_column_type(s, 0) != SQLITE_NULL)
@@ -415,10 +437,12 @@ static enum status each_of_column(struct book *b, struct names *n, struct pack *
     struct reading r;
     bool row = false;
     enum status rc = OK;
-    TRY(book_statement(b, COLUMN_IN_FORCE, &s, f));
+    TRY(book_statement(b, as_it_is(b) ? COLUMN_IN_FORCE : COLUMN_IN_FORCE_THEN, &s, f));
     bind_text(s, 1, column[0]);
     bind_text(s, 2, column[1]);
     bind_days(s, 3, first, last);
+    if (!as_it_is(b))
+        bind_int(s, 5, b->as_of);
     for (;;) {
         TRY(book_step(b, s, &row, f));
         if (!row)
@@ -472,6 +496,8 @@ static enum status last_of_series(struct filling *g, int64_t series, day_t befor
         TRY(book_step(g->book, s, &row, f));
         if (!row)
             break;
+        if (came_later(g->book, s))
+            continue;
         TRY(keep(g, s, out, f));
         bool replaced = out->day == older.day && out->minute == older.minute;
         *found = !replaced && out->qualifier != QUALIFIER_WITHDRAWN;
@@ -512,6 +538,8 @@ static enum status give_aside(struct book *b, struct names *n, struct pack *p, s
     struct stored_aside row;
     const char *file = "";
     row_aside(s, &row);
+    if (row.batch > b->as_of)
+        return OK;
     names_turn(n);
     if (names_file(b, n, row.batch, &file, f) != OK)
         return FAULT;
@@ -623,7 +651,8 @@ enum status book_revisions(struct book *b, const struct plant *plant, day_t firs
         TRY(book_step(b, s, &row, f));
         if (!row)
             break;
-        TRY(give_revision(b, n, s, sink, context, f));
+        if (sqlite3_column_int64(s, AT_BATCH) <= b->as_of)
+            TRY(give_revision(b, n, s, sink, context, f));
     }
 done:
     if (s)

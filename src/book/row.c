@@ -70,7 +70,7 @@ bool row_sound(struct pack *p, const struct stored *s)
     return pack_mark(p) == s->mark;
 }
 
-static enum status unsound(struct book *b, struct names *n, const struct stored *s, struct fault *f)
+enum status row_unsound(struct book *b, struct names *n, const struct stored *s, struct fault *f)
 {
     const char *file = "";
     if (sqlite3_errcode(b->db) == SQLITE_NOMEM) /* a text could not be had */
@@ -87,7 +87,7 @@ enum status row_reading(struct book *b, struct names *n, struct pack *p, const s
                         struct reading *out, struct fault *f)
 {
     if (!row_sound(p, s))
-        return unsound(b, n, s, f);
+        return row_unsound(b, n, s, f);
     const struct series_name *series = names_series(n, s->series);
     const struct common *common = s->common;
     /* What is sound was written by this program or a later one. */
@@ -149,4 +149,43 @@ void row_aside(sqlite3_stmt *s, struct stored_aside *out)
     };
     for (int i = 0; i < LONG_COLUMNS; i++)
         out->cell[i] = column_text(s, FIRST_CELL + i);
+}
+
+void row_act(sqlite3_stmt *s, int at, struct stored_act *out)
+{
+    *out = (struct stored_act){
+        .batch = sqlite3_column_int64(s, at),
+        .reason = column_text(s, at + 1),
+        .has_subject = !is_null(s, at + 2),
+        .subject = sqlite3_column_int64(s, at + 2),
+        .readings = sqlite3_column_int64(s, at + 3),
+        .first_reading = sqlite3_column_int64(s, at + 4),
+        .mark = sqlite3_column_int64(s, at + 5),
+    };
+}
+
+void row_remark(sqlite3_stmt *s, int at, struct stored_remark *out)
+{
+    *out = (struct stored_remark){
+        .batch = sqlite3_column_int64(s, at),
+        .kind = column_text(s, at + 1),
+        .event = column_text(s, at + 2),
+        .first = sqlite3_column_int64(s, at + 3),
+        .last = sqlite3_column_int64(s, at + 4),
+        .point = column_text(s, at + 5),
+        .parameter = column_text(s, at + 6),
+        .statistic = column_text(s, at + 7),
+        .text = column_text(s, at + 8),
+        .mark = sqlite3_column_int64(s, at + 9),
+    };
+}
+
+void row_answer(sqlite3_stmt *s, int at, struct stored_answer *out)
+{
+    *out = (struct stored_answer){
+        .batch = sqlite3_column_int64(s, at),
+        .doubt = column_text(s, at + 1),
+        .reason = column_text(s, at + 2),
+        .mark = sqlite3_column_int64(s, at + 3),
+    };
 }

@@ -11,6 +11,7 @@
 const struct migration book_migrations[] = {
     {1, "001-book.sql"},
     {2, "002-bench.sql"},
+    {3, "003-acts.sql"},
 };
 const size_t book_migrations_count = NELEM(book_migrations);
 

@@ -25,7 +25,7 @@
 
 const char *const book_sql[] = {
     [LAST_BATCH] = "SELECT coalesce(max(id), 0) FROM batch",
-    [LAST_HEAD] = "SELECT head FROM chain ORDER BY batch DESC LIMIT 1",
+    [LAST_HEAD] = "SELECT head FROM chain WHERE batch <= ?1 ORDER BY batch DESC LIMIT 1",
     [ADD_BATCH] = "INSERT INTO batch (id, kind, at, who) VALUES (?1, ?2, ?3, ?4)",
     [ADD_LOAD] =
         "INSERT INTO load (batch, file, bytes, digest, dialect, reason, rows, accepted, present, "
@@ -36,13 +36,23 @@ const char *const book_sql[] = {
     [KNOWN_LOAD] =
         "SELECT l.batch, l.file, b.at, l.rows, l.accepted, l.present, l.revised, l.aside "
         "FROM load l JOIN batch b ON b.id = l.batch WHERE l.digest = ?1 "
+        "AND NOT EXISTS (SELECT 1 FROM act t WHERE t.subject = l.batch) "
         "ORDER BY l.batch DESC LIMIT 1",
     [BATCHES] =
-        "SELECT b.id, b.kind, b.at, b.who, l.file, coalesce(l.reason, d.reason), "
-        "coalesce(l.rows, d.rows), l.accepted, l.present, l.revised, l.aside, c.head "
+        "SELECT b.id, b.kind, b.at, b.who, l.file, "
+        "coalesce(l.reason, d.reason, t.reason, m.text, w.reason), "
+        "coalesce(l.rows, d.rows, t.readings), l.accepted, l.present, "
+        "coalesce(l.revised, t.readings), l.aside, c.head "
         "FROM batch b LEFT JOIN load l ON l.batch = b.id LEFT JOIN description d ON d.batch = b.id "
-        "LEFT JOIN chain c ON c.batch = b.id ORDER BY b.id",
-    [FILE_OF_BATCH] = "SELECT file FROM load WHERE batch = ?1",
+        "LEFT JOIN act t ON t.batch = b.id LEFT JOIN remark m ON m.batch = b.id "
+        "LEFT JOIN answer w ON w.batch = b.id LEFT JOIN chain c ON c.batch = b.id "
+        "WHERE b.id <= ?1 ORDER BY b.id",
+    /* What an act made stands on no line of a file. */
+    [FILE_OF_BATCH] =
+        "SELECT coalesce(l.file, CASE b.kind WHEN 'amend' THEN 'amended by ' || b.who "
+        "ELSE 'batch ' || t.subject || ' taken back by ' || b.who END) "
+        "FROM batch b LEFT JOIN load l ON l.batch = b.id LEFT JOIN act t ON t.batch = b.id "
+        "WHERE b.id = ?1",
 
     [FIND_POINT] = "SELECT id FROM point_code WHERE name = ?1",
     [ADD_POINT] = "INSERT INTO point_code (name) VALUES (?1)",
@@ -108,11 +118,25 @@ const char *const book_sql[] = {
         "AND NOT EXISTS (SELECT 1 FROM reading n WHERE n.series = r.series AND n.day = r.day "
         "AND n.minute = r.minute AND n.version > r.version) "
         "ORDER BY r.day, r.minute, s.sample",
+    [SERIES_HAS_THEN] = "SELECT 1 FROM reading WHERE series = ?1 AND day BETWEEN ?2 AND ?3 "
+                        "AND batch <= ?4 LIMIT 1",
+    [SERIES_FIRST_THEN] =
+        "SELECT day FROM reading WHERE series = ?1 AND batch <= ?2 ORDER BY day LIMIT 1",
+    [SERIES_LAST_THEN] =
+        "SELECT day FROM reading WHERE series = ?1 AND batch <= ?2 ORDER BY day DESC LIMIT 1",
+    [COLUMN_IN_FORCE_THEN] =
+        "SELECT " READING_COLUMNS " FROM point_code p JOIN parameter_code q JOIN series s "
+        "ON s.point = p.id AND s.parameter = q.id JOIN reading r ON r.series = s.id "
+        "WHERE p.name = ?1 AND q.name = ?2 AND r.day BETWEEN ?3 AND ?4 AND r.qualifier <> 7 "
+        "AND r.batch <= ?5 AND NOT EXISTS (SELECT 1 FROM reading n WHERE n.series = r.series "
+        "AND n.day = r.day AND n.minute = r.minute AND n.version > r.version AND n.batch <= ?5) "
+        "ORDER BY r.day, r.minute, s.sample",
     [REVISIONS] =
         "SELECT r.day, r.minute, r.series, r.detail, r.qualifier, r.value, o.value, r.version, "
-        "r.batch, r.line, b.who, b.at, coalesce(l.reason, ''), coalesce(l.file, '') "
+        "r.batch, r.line, b.who, b.at, coalesce(l.reason, t.reason, ''), coalesce(l.file, '') "
         "FROM revision v JOIN reading r ON r.id = v.reading JOIN reading o ON o.id = v.replaced "
         "JOIN batch b ON b.id = r.batch LEFT JOIN load l ON l.batch = r.batch "
+        "LEFT JOIN act t ON t.batch = r.batch "
         "WHERE v.day BETWEEN ?1 AND ?2 ORDER BY v.day, v.reading",
     [ASIDES_OF_DAYS] = "SELECT " ASIDE_COLUMNS " FROM aside a "
                        "WHERE a.day BETWEEN ?1 AND ?2 OR a.day IS NULL ORDER BY a.id",
@@ -125,7 +149,51 @@ const char *const book_sql[] = {
                    "AND v.point = ?2 AND v.run = ?3 AND v.argument = ?4 "
                    "ORDER BY v.id DESC LIMIT 1",
 
-    [DESCRIPTION_IN_FORCE] = "SELECT coalesce(max(batch), 0) FROM description",
+    [ADD_ACT] = "INSERT INTO act (batch, reason, subject, readings, first_reading, mark) "
+                "VALUES (?1, ?2, ?3, ?4, ?5, ?6)",
+    [TO_WITHDRAW] = "SELECT b.kind, l.accepted + l.revised, l.first_reading, t.batch FROM batch b "
+                    "LEFT JOIN load l ON l.batch = b.id LEFT JOIN act t ON t.subject = b.id "
+                    "WHERE b.id = ?1",
+    [VERSIONS] =
+        "SELECT " READING_COLUMNS ", b.kind, t.batch FROM reading r JOIN batch b ON b.id = r.batch "
+        "LEFT JOIN act t ON t.subject = r.batch "
+        "WHERE r.series = ?1 AND r.day = ?2 AND r.minute = ?3 ORDER BY r.version DESC",
+    [ADD_REMARK] =
+        "INSERT INTO remark (batch, kind, event, first_day, last_day, point, parameter, statistic, "
+        "text, mark) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10)",
+    /* One that touches ?1 begins no earlier than the longest could. */
+    [REMARKS] =
+        "SELECT " REMARK_COLUMNS ", " ACT_COLUMNS ", b.who, b.at "
+        "FROM remark m JOIN batch b ON b.id = m.batch LEFT JOIN act t ON t.subject = m.batch "
+        "WHERE m.first_day BETWEEN ?1 - (SELECT coalesce(max(last_day - first_day), 0) FROM "
+        "remark) "
+        "AND ?2 AND m.last_day >= ?1 ORDER BY m.first_day, m.last_day, m.batch",
+    [REMARK_AT] = "SELECT b.kind, t.batch FROM batch b LEFT JOIN act t ON t.subject = b.id "
+                  "WHERE b.id = ?1",
+    [ADD_ANSWER] = "INSERT INTO answer (batch, doubt, reason, mark) VALUES (?1, ?2, ?3, ?4)",
+    [ANSWERS] = "SELECT " ANSWER_COLUMNS ", b.who, b.at FROM answer w JOIN batch b ON b.id = "
+                "w.batch ORDER BY w.batch",
+
+    /* The last before the first that is later, and whether one behind it claims to be earlier. */
+    [BATCH_AT] = "SELECT b.last, EXISTS (SELECT 1 FROM batch WHERE id > b.last AND at <= ?1) FROM "
+                 "(SELECT coalesce((SELECT id FROM batch WHERE at > ?1 ORDER BY id LIMIT 1) - 1, "
+                 "(SELECT max(id) FROM batch)) AS last) b",
+    [HAS_HEAD] = "SELECT batch FROM chain WHERE head = ?1 ORDER BY batch LIMIT 1",
+    [HISTORY] = "SELECT b.id, b.kind, b.at, b.who, l.file, l.reason, l.accepted + l.revised, "
+                "l.first_reading, d.reason, " ACT_COLUMNS ", " REMARK_COLUMNS ", " ANSWER_COLUMNS
+                " FROM batch b LEFT JOIN load l ON l.batch = b.id "
+                "LEFT JOIN description d ON d.batch = b.id LEFT JOIN act t ON t.batch = b.id "
+                "LEFT JOIN remark m ON m.batch = coalesce(t.subject, b.id) "
+                "LEFT JOIN answer w ON w.batch = b.id "
+                "WHERE b.id BETWEEN ?1 AND ?2 ORDER BY b.id",
+    [READING_BY_ID] = "SELECT " READING_COLUMNS " FROM reading r WHERE r.id = ?1",
+    [CHANGED] = "SELECT v.reading, v.replaced FROM revision v WHERE v.reading BETWEEN ?1 AND ?2 "
+                "ORDER BY v.reading",
+    [MADE] = "SELECT r.id, v.replaced FROM reading r LEFT JOIN revision v ON v.reading = r.id "
+             "WHERE r.id BETWEEN ?1 AND ?2 ORDER BY r.id",
+    [DESCRIPTION_BEFORE] = "SELECT coalesce(max(batch), 0) FROM description WHERE batch < ?1",
+
+    [DESCRIPTION_IN_FORCE] = "SELECT coalesce(max(batch), 0) FROM description WHERE batch <= ?1",
     [ADD_ROW + PLANT_FIELDS] = "INSERT INTO plant_field (" ROW_COLUMNS "field, value) "
                                "VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8)",
     [ADD_ROW + PLANT_POINTS] =
@@ -192,9 +260,11 @@ const char *const book_sql[] = {
         "SELECT b.id, b.kind, b.at, b.who, l.batch, l.file, l.bytes, l.digest, l.dialect, "
         "l.reason, l.rows, l.accepted, l.present, l.revised, l.aside, l.first_reading, "
         "l.first_aside, d.batch, d.reason, d.rows, n.batch, n.raw_values, n.first_raw, c.previous, "
-        "c.head "
+        "c.head, " ACT_COLUMNS ", " REMARK_COLUMNS ", " ANSWER_COLUMNS " "
         "FROM batch b LEFT JOIN load l ON l.batch = b.id "
         "LEFT JOIN description d ON d.batch = b.id LEFT JOIN bench n ON n.batch = b.id "
+        "LEFT JOIN act t ON t.batch = b.id LEFT JOIN remark m ON m.batch = b.id "
+        "LEFT JOIN answer w ON w.batch = b.id "
         "LEFT JOIN chain c ON c.batch = b.id ORDER BY b.id",
     [CHECK_READINGS] =
         "SELECT " READING_COLUMNS " FROM reading r WHERE r.id BETWEEN ?1 AND ?2 ORDER BY r.id",

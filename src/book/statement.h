@@ -50,6 +50,10 @@ enum statement {
     SERIES_HAS,
     SERIES_FIRST,
     SERIES_LAST,
+    SERIES_HAS_THEN, /* and as the book stood after a batch */
+    SERIES_FIRST_THEN,
+    SERIES_LAST_THEN,
+    COLUMN_IN_FORCE_THEN,
     COLUMN_IN_FORCE,
     REVISIONS,
     ASIDES_OF_DAYS,
@@ -57,6 +61,23 @@ enum statement {
     RAW_OF_LINE,
     RAW_OF_BATCH,
     RAW_NEWEST,
+    /* acts */
+    ADD_ACT,
+    TO_WITHDRAW,
+    VERSIONS,
+    ADD_REMARK,
+    REMARKS,
+    REMARK_AT,
+    ADD_ANSWER,
+    ANSWERS,
+    /* history */
+    BATCH_AT,
+    HAS_HEAD,
+    HISTORY,
+    READING_BY_ID,
+    CHANGED,
+    MADE,
+    DESCRIPTION_BEFORE,
     /* the description */
     DESCRIPTION_IN_FORCE,
     ADD_ROW,                          /* one for each file of a description */

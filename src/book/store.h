@@ -18,6 +18,7 @@ struct book {
     enum book_mode mode;
     sqlite3_stmt *statement[STATEMENTS];
     struct load *load; /* NULL: none is under way */
+    int64_t as_of;     /* what a later batch brought does not count; INT64_MAX: all counts */
     int last_code;     /* of SQLite, when book_fault last put one into words */
     bool half_written; /* a write failed: pages of it may stand in the file, with a journal beside
                           it */
@@ -118,6 +119,8 @@ MUST_USE enum status row_read(struct book *b, struct names *n, sqlite3_stmt *s, 
                               struct fault *f);
 /* Whether it is what was loaded. */
 bool row_sound(struct pack *p, const struct stored *s);
+/* The fault of one that is not; names batch, file and line. */
+enum status row_unsound(struct book *b, struct names *n, const struct stored *s, struct fault *f);
 /* As the rest of the program knows it. A damaged one is a fault that names batch, file and line. */
 MUST_USE enum status row_reading(struct book *b, struct names *n, struct pack *p,
                                  const struct stored *s, struct reading *out, struct fault *f);
@@ -125,6 +128,41 @@ MUST_USE enum status row_reading(struct book *b, struct names *n, struct pack *p
 void row_aside(sqlite3_stmt *s, struct stored_aside *out);
 /* A row of statement RAW_... or CHECK_RAW. */
 void row_raw(sqlite3_stmt *s, struct stored_raw *out);
+/* Columns from `at` of statements that give acts, remarks and answers, in this order. */
+#define ACT_COLUMNS "t.batch, t.reason, t.subject, t.readings, t.first_reading, t.mark"
+#define REMARK_COLUMNS                                                                             \
+    "m.batch, m.kind, m.event, m.first_day, m.last_day, m.point, m.parameter, m.statistic, "       \
+    "m.text, m.mark"
+#define ANSWER_COLUMNS "w.batch, w.doubt, w.reason, w.mark"
+enum { ACT_CELLS = 6, REMARK_CELLS = 10, ANSWER_CELLS = 4 };
+void row_act(sqlite3_stmt *s, int at, struct stored_act *out);
+void row_remark(sqlite3_stmt *s, int at, struct stored_remark *out);
+void row_answer(sqlite3_stmt *s, int at, struct stored_answer *out);
+
+/* ---- acts (act.c) ---- */
+
+/* What an act needs until it stands in the chain. */
+struct doing {
+    struct arena *arena;
+    struct pack pack;
+    struct digest *content, *none; /* of its readings; of nothing */
+    struct stored_batch batch;
+};
+/* Begins a transaction and the batch. `kind` and the author's words must stand until the end. */
+MUST_USE enum status act_begin(struct book *b, struct doing *d, const char *kind,
+                               const struct author *author, struct fault *f);
+/* Adds a row of table act. */
+MUST_USE enum status act_add(struct book *b, struct doing *d, struct stored_act *s,
+                             struct fault *f);
+/* Adds the head and commits. */
+MUST_USE enum status act_end(struct book *b, struct doing *d, struct fault *f);
+/* Rolls back what was not committed, and frees; accepts a zeroed one. */
+void act_drop(struct book *b, struct doing *d);
+/* Refuses a text that a person wrote: none where one is `needed`, line breaks, control characters,
+ * what is no UTF-8, or more than a few thousand bytes. `what`: "the reason". */
+MUST_USE enum status act_text(const char *what, const char *text, bool needed, struct fault *f);
+/* Damage, or a text that could not be had: the fault. */
+enum status act_unsound(struct book *b, const char *what, int64_t batch, struct fault *f);
 
 /* ---- descriptions (describe.c) ---- */
 
@@ -137,12 +175,28 @@ typedef enum status row_sink(void *context, const struct stored_row *row, struct
 MUST_USE enum status description_rows(struct book *b, int64_t batch, enum plant_file kind,
                                       row_sink *sink, void *context, struct fault *f);
 
+/* The description of a batch as a draft, each row proved. */
+MUST_USE enum status description_draft(struct book *b, struct arena *a, int64_t batch,
+                                       struct plant_draft **draft, struct fault *f);
+bool description_same_row(const struct plant_row *a, const struct plant_row *b);
+
 /* ---- books of older formats (older.c) ---- */
 
 /* Puts a migrated copy, for reading alone, in the place of the book that is open. */
 MUST_USE enum status older_copied(struct book *b, struct fault *f);
 /* Keeps the book as BOOK.format-N.backup and migrates it. */
 MUST_USE enum status older_migrated(struct book *b, struct fault *f);
+
+/* ---- a file made beside its place (create.c) ---- */
+
+/* An empty one, whose name nobody else has; NULL with a fault. */
+const char *place_beside(struct arena *a, const char *path, struct fault *f);
+/* Syncs it and puts it there, never over a file. A fault leaves no file at `path`. */
+MUST_USE enum status place_keep(struct arena *a, const char *beside, const char *path,
+                                struct fault *f);
+void place_drop(struct arena *a, const char *beside); /* accepts NULL, and one that was kept */
+/* A copy of all that SQLite reads from one book into another, empty one (older.c). */
+MUST_USE enum status book_copy_all(struct book *to, sqlite3 *from, struct fault *f);
 
 /* ---- proof (check.c) ---- */
 

@@ -1,5 +1,6 @@
 /* Raw values read, worked, and entered into the book: one way for files and for what was typed. */
 #include "command/bench.h"
+#include "command/long.h"
 
 #include "intake/intake.h"
 
@@ -111,9 +112,9 @@ static enum status enter_reading(const struct bench *b, struct bench_results *r,
         return FAULT;
     if (outcome == BOOK_CONTRADICTS) {
         result->state = STATE_ASIDE;
-        result->clash = arena_print(a, "the book holds '%s' %s (%s:%ld), this sheet says '%s' %s",
-                                    clash.text, clash.unit, clash.file, clash.line, reading->text,
-                                    unit_at(reading->unit)->name);
+        result->clash = arena_print(a, "the book holds '%s' %s (%s), this sheet says '%s' %s",
+                                    clash.text, clash.unit, long_place(a, clash.file, clash.line),
+                                    reading->text, unit_at(reading->unit)->name);
         r->counts.aside++;
         const struct row_text row = row_of(b, reading);
         return book_load_aside(b->session->book, &row, REASON_CONTRADICTS, result->clash, f);

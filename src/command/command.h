@@ -62,7 +62,8 @@ struct command {
 
 extern const struct command command_new, command_load, command_bench, command_day, command_process,
     command_waste, command_permit, command_report, command_plant, command_export, command_check,
-    command_formula, command_help, command_completion;
+    command_remark, command_amend, command_withdraw, command_history, command_backup,
+    command_doubts, command_formula, command_help, command_completion;
 
 /* Runs the program on its words; returns the exit status: 0 done, 1 could not be done, 2 wrong
  * usage, 3 done and it found something. */

@@ -1,12 +1,14 @@
 /* day: one day: its readings, its daily values, and every figure worked from them. */
 #include "command/figures.h"
-#include "command/session.h"
+#include "command/long.h"
+#include "command/month.h"
 
 #include <string.h>
 
 #include "base/poison.h"
 
 struct day_options {
+    day_t as_of;
     int as;
     long smooth;
 };
@@ -14,6 +16,7 @@ struct day_options {
 static const struct option_spec options[] = {
     {"smooth", OPTION_COUNT, offsetof(struct day_options, smooth), "DAYS",
      "days of the moving average behind the solids retention times (default 1)", false},
+    AS_OF_OPTION(struct day_options),
     AS_OPTION(struct day_options),
 };
 
@@ -40,7 +43,7 @@ static const struct column page_columns[] = {
 struct making {
     struct arena *arena;
     const struct plant *plant;
-    struct table *file, *readings, *daily, *figures;
+    struct table *file, *remarks, *readings, *daily, *figures;
 };
 
 static void add(struct making *m, struct table *shown, const char *kind, const char *at,
@@ -72,7 +75,7 @@ static const char *reading_note(struct arena *a, const struct reading *r)
     text_print(&t, "%s%s%s%s", time, *time ? " " : "", r->sample, *r->sample ? " " : "");
     if (r->version > 0)
         text_print(&t, "revision %d, ", r->version);
-    text_print(&t, "%s:%ld", r->file, r->line);
+    text_add(&t, long_place(a, r->file, r->line));
     if (r->detail && *r->detail->note)
         text_print(&t, "; %s", r->detail->note);
     const char *note = arena_text(a, t.at);
@@ -133,6 +136,18 @@ static enum status add_figures(struct making *m, const struct frame *frame, day_
     return OK;
 }
 
+static void add_remarks(struct making *m, const struct month_remarks *remarks)
+{
+    for (size_t i = 0; i < remarks->count; i++) {
+        const struct month_remark *r = &remarks->at[i];
+        const char *what = *r->statistic
+                               ? arena_print(m->arena, "%s %s", r->parameter, r->statistic)
+                               : r->parameter;
+        const struct cell none = {.text = ""};
+        add(m, m->remarks, "remark", r->point, what, none, none, "", remark_line(m->arena, r));
+    }
+}
+
 static struct page *make_page(struct making *m, day_t day)
 {
     static const char *const names[] = {"Sunday",   "Monday", "Tuesday", "Wednesday",
@@ -144,7 +159,7 @@ static struct page *make_page(struct making *m, day_t day)
                  arena_print(m->arena, "%s, %s %s", m->plant->name, names[day_weekday(day)], date));
     if (m->readings->rows == 0)
         page_line(page, FLAG_WATCH, "no readings on this day");
-    struct table *const shown[] = {m->readings, m->daily, m->figures};
+    struct table *const shown[] = {m->remarks, m->readings, m->daily, m->figures};
     for (size_t i = 0; i < NELEM(shown); i++) {
         if (shown[i]->rows == 0)
             continue;
@@ -159,20 +174,24 @@ static enum status run(struct session *s, const void *given, struct fault *f)
     const struct day_options *o = given;
     struct plant *plant = NULL;
     struct frame *frame = NULL;
+    struct month_remarks remarks;
     day_t day;
     if (!day_parse(s->operand[0], &day))
         return fault_usage(f, "write it as YYYY-MM-DD", "cannot read '%s' as a date",
                            s->operand[0]);
+    s->as_of = o->as_of;
     int smooth = o->smooth ? (int)o->smooth : 1;
     const struct process_options reach = {
         .from = day, .to = day, .step = STEP_DAY, .smooth = smooth};
     if (session_book(s, BOOK_READ, NULL, &plant, f) != OK ||
-        session_frame_all(s, plant, process_reach(&reach), day, &frame, f) != OK)
+        session_frame_all(s, plant, process_reach(&reach), day, &frame, f) != OK ||
+        remarks_read(s, day, day, &remarks, f) != OK)
         return FAULT;
     struct making m = {
         .arena = s->arena,
         .plant = plant,
         .file = table_new(s->arena, "", file_columns, NELEM(file_columns)),
+        .remarks = table_new(s->arena, "Remarks", page_columns, NELEM(page_columns)),
         .readings = table_new(s->arena, "Readings", page_columns, NELEM(page_columns)),
         .daily = table_new(s->arena, "Daily values", page_columns, NELEM(page_columns)),
         .figures = table_new(s->arena, "Figures", page_columns, NELEM(page_columns)),
@@ -186,6 +205,7 @@ static enum status run(struct session *s, const void *given, struct fault *f)
                 add_daily(&m, frame, day, point, parameter);
     if (add_figures(&m, frame, day, smooth, f) != OK)
         return FAULT;
+    add_remarks(&m, &remarks);
     session_print(s, o->as, make_page(&m, day), m.file);
     return OK;
 }

@@ -5,7 +5,7 @@
 #include "base/poison.h"
 
 struct export_options {
-    day_t from, to;
+    day_t from, to, as_of;
     bool set_aside;
 };
 
@@ -16,6 +16,7 @@ static const struct option_spec options[] = {
      "last day (default: the last in the book)", false},
     {"set-aside", OPTION_FLAG, offsetof(struct export_options, set_aside), NULL,
      "the rows not accepted, with reasons, in place of the readings", false},
+    AS_OF_OPTION(struct export_options),
 };
 
 static const struct example examples[] = {
@@ -61,6 +62,7 @@ static enum status run(struct session *s, const void *given, struct fault *f)
     struct plant *plant = NULL;
     if (o->from != DAY_NONE && o->to != DAY_NONE && o->from > o->to)
         return fault_usage(f, "put the earlier date in --from", "--from is after --to");
+    s->as_of = o->as_of;
     if (session_book(s, BOOK_READ, NULL, &plant, f) != OK)
         return FAULT;
     struct writing w = {.out = s->out, .plant = plant};

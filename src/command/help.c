@@ -54,6 +54,7 @@ void help_program(struct session *s)
         "\nBOOK is the file -b names, else $WEIRBOOK, else the only *.book of the current folder.\n"
         "weirbook help COMMAND shows a command's options and examples; weirbook --version the "
         "version.\n"
+        "weirbook --read-only COMMAND ... refuses whatever would change a book.\n"
         "Exit status: 0 done; 1 could not be done; 2 wrong usage; 3 done, and it found "
         "something.\n");
 }

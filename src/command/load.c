@@ -99,8 +99,9 @@ static enum status contradiction(struct load *l, const struct reading *r,
                                  struct fault *f)
 {
     char told[512];
-    snprintf(told, sizeof told, "the book holds '%s' %s (%s:%ld), this row says '%s' %s",
-             clash->text, clash->unit, clash->file, clash->line, r->text, unit_at(r->unit)->name);
+    snprintf(told, sizeof told, "the book holds '%s' %s (%s), this row says '%s' %s", clash->text,
+             clash->unit, long_place(l->session->arena, clash->file, clash->line), r->text,
+             unit_at(r->unit)->name);
     return set_aside(l, row, REASON_CONTRADICTS, told, f);
 }
 

@@ -115,3 +115,8 @@ void long_aside(struct text *t, const struct row_text *row, const char *reason,
         text_print(t, "%d", row->column);
     text_add_char(t, '\n');
 }
+
+const char *long_place(struct arena *a, const char *file, long line)
+{
+    return line > 0 ? arena_print(a, "%s:%ld", file, line) : arena_text(a, file);
+}

@@ -12,5 +12,7 @@ void long_reading(struct text *t, const struct plant *plant, const struct readin
 /* One row that was set aside, with its reason and place, ready to be corrected and loaded. */
 void long_aside(struct text *t, const struct row_text *row, const char *reason,
                 const char *explanation);
+/* "march.csv:5"; what came from no file (a correction by hand) has no line. */
+const char *long_place(struct arena *a, const char *file, long line);
 
 #endif

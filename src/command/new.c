@@ -66,7 +66,7 @@ static enum status run(struct session *s, const void *given, struct fault *f)
     struct plant_draft *draft = NULL;
     struct plant *plant = NULL;
     struct author author = {0};
-    if (session_author(s, o->by, &author, f) != OK ||
+    if (session_may_write(s, f) != OK || session_author(s, o->by, &author, f) != OK ||
         command_read_folder(s, s->operand[1], &draft, &plant, f) != OK ||
         book_create(s->operand[0], draft, &author, f) != OK)
         return FAULT;

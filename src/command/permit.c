@@ -5,14 +5,16 @@
 #include "base/poison.h"
 
 struct permit_options {
-    day_t month, on;
+    day_t month, on, as_of;
     int as;
 };
 
 static const struct option_spec options[] = {
     {"month", OPTION_MONTH, offsetof(struct permit_options, month), "YYYY-MM", "the month", true},
     {"on", OPTION_DAY, offsetof(struct permit_options, on), "DATE",
-     "judge as of that day: later readings are ignored (default: today)", false},
+     "judge as of that day: later readings are ignored (default: that of --as-of, or today)",
+     false},
+    AS_OF_OPTION(struct permit_options),
     AS_OPTION(struct permit_options),
 };
 
@@ -20,6 +22,8 @@ static const struct example examples[] = {
     {"weirbook permit --month 2025-03", "every limit of March 2025, the worst news first"},
     {"weirbook permit --month 2025-03 --on 2025-03-14",
      "the month as it stands on the 14th; periods not over are open"},
+    {"weirbook permit --month 2025-03 --as-of 2025-04-10",
+     "what the book said at the end of 10 April, whatever was corrected since"},
     {"weirbook permit --month 2025-03 --as csv",
      "the same as CSV, one row for each limit and period"},
 };
@@ -41,11 +45,15 @@ static enum status run(struct session *s, const void *given, struct fault *f)
     struct plant *plant = NULL;
     struct frame *frame = NULL;
     struct permit_month month = {0};
+    struct month_remarks remarks = {0};
+    s->as_of = o->as_of;
     if (session_book(s, BOOK_READ, NULL, &plant, f) != OK ||
-        month_judge(s, plant, o->month, o->on, &frame, &month, f) != OK)
+        month_judge(s, plant, o->month, o->on == DAY_NONE ? o->as_of : o->on, &frame, &month, f) !=
+            OK ||
+        month_remarks(s, &month, &remarks, f) != OK)
         return FAULT;
-    session_print(s, o->as, report_permit_page(s->arena, plant, &month),
-                  report_permit_table(s->arena, &month));
+    session_print(s, o->as, report_permit_page(s->arena, plant, &month, &remarks),
+                  report_permit_table(s->arena, &month, &remarks));
     s->found = month.exceeded > 0 || month.shortfalls > 0;
     return OK;
 }

@@ -6,7 +6,7 @@
 #include "base/poison.h"
 
 struct process_given {
-    day_t from, to;
+    day_t from, to, as_of;
     int by, over, as;
     long smooth;
     bool chart;
@@ -23,6 +23,7 @@ static const struct option_spec options[] = {
      "gather all days by weekday or by month of the year, with percentiles", false},
     {"chart", OPTION_FLAG, offsetof(struct process_given, chart), NULL,
      "draw each figure over time as a small chart in plain text", false},
+    AS_OF_OPTION(struct process_given),
     AS_OPTION(struct process_given),
 };
 
@@ -302,6 +303,7 @@ static enum status run(struct session *s, const void *given, struct fault *f)
                                   .to = o->to,
                                   .step = o->by < 0 ? STEP_DAY : (enum process_step)o->by,
                                   .smooth = o->smooth ? (int)o->smooth : 1};
+    s->as_of = o->as_of;
     if (look_at(o, f) != OK || session_book(s, BOOK_READ, NULL, &plant, f) != OK ||
         keep_to_book(s, &how, &any, f) != OK)
         return FAULT;

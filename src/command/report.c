@@ -9,7 +9,7 @@
 #include "base/poison.h"
 
 struct report_options {
-    day_t month, on, printed;
+    day_t month, on, printed, as_of;
     const char *out;
 };
 
@@ -20,7 +20,8 @@ static const struct option_spec options[] = {
     {"printed", OPTION_DAY, offsetof(struct report_options, printed), "DATE",
      "the date printed on it (default: today)", false},
     {"on", OPTION_DAY, offsetof(struct report_options, on), "DATE",
-     "judge as of that day (default: the printed date)", false},
+     "judge as of that day (default: that of --as-of, or the printed date)", false},
+    AS_OF_OPTION(struct report_options),
 };
 
 static const struct example examples[] = {
@@ -28,6 +29,8 @@ static const struct example examples[] = {
      "writes permit-2025-03.txt and permit-2025-03.xlsx into reports"},
     {"weirbook report --month 2025-03 --out reports --printed 2025-04-10",
      "the same, dated; the same bytes every time"},
+    {"weirbook report --month 2025-03 --out then --as-of 2025-04-10 --printed 2025-04-10",
+     "the report as it followed from the book at the end of 10 April"},
 };
 
 struct gathered {
@@ -105,7 +108,7 @@ static enum status gather(struct session *s, const struct report_options *o, str
     struct plant *plant = NULL;
     struct frame *judged = NULL, *all = NULL;
     day_t last = month_last(o->month);
-    day_t on = o->on != DAY_NONE ? o->on : in->printed;
+    day_t on = o->on != DAY_NONE ? o->on : o->as_of != DAY_NONE ? o->as_of : in->printed;
     struct gathered *g = arena_alloc(s->arena, sizeof *g);
     char head[2 * DIGEST_BYTES + 1];
     struct process_figure *figures = NULL, *means = NULL;
@@ -123,7 +126,7 @@ static enum status gather(struct session *s, const struct report_options *o, str
     *g = (struct gathered){.arena = s->arena, .plant = plant};
     if (book_asides(s->book, o->month, last, gather_aside, g, f) != OK ||
         book_revisions(s->book, plant, o->month, last, gather_revision, g, f) != OK ||
-        book_head(s->book, head, f) != OK)
+        month_remarks(s, month, &in->remarks, f) != OK || book_head(s->book, head, f) != OK)
         return FAULT;
     in->plant = plant;
     in->frame = all;
@@ -144,6 +147,12 @@ static enum status run(struct session *s, const void *given, struct fault *f)
     const struct report_options *o = given;
     struct permit_month month = {0};
     struct month_input in = {.printed = o->printed != DAY_NONE ? o->printed : clock_today()};
+    char as_of[11];
+    s->as_of = o->as_of;
+    if (o->as_of != DAY_NONE) {
+        day_write(o->as_of, as_of);
+        in.as_of = as_of;
+    }
     if (gather(s, o, &in, &month, f) != OK || make_folder(o->out, f) != OK)
         return FAULT;
     char iso[11];

@@ -57,8 +57,38 @@ static enum status find_path(struct session *s, struct fault *f)
     return s->book_path ? OK : find_book(s, f);
 }
 
+enum status session_may_write(const struct session *s, struct fault *f)
+{
+    if (!s->read_only)
+        return OK;
+    return fault_at(f, NULL, "leave --read-only out to change a book",
+                    "%s would write, and --read-only was asked for", s->command->name);
+}
+
+/* The book as it stood at the end of the day that was asked for. Moments in it are UTC. */
+static enum status step_back(struct session *s, struct fault *f)
+{
+    char day[11];
+    int64_t batch = 0;
+    bool odd = false;
+    day_write(s->as_of, day);
+    if (book_batch_at(s->book, arena_print(s->arena, "%sT23:59:59Z", day), &batch, &odd, f) != OK)
+        return FAULT;
+    if (batch == 0)
+        return fault_at(f, NULL, "weirbook history --batches lists what was done when",
+                        "the book is younger than %s", day);
+    if (odd)
+        fprintf(stderr,
+                "weirbook: the clock once ran backwards: a batch after batch %lld claims to be of "
+                "%s or before; it does not count here\n",
+                (long long)batch, day);
+    return book_as_of(s->book, batch, f);
+}
+
 enum status session_open(struct session *s, enum book_mode mode, struct fault *f)
 {
+    if (mode == BOOK_WRITE && session_may_write(s, f) != OK)
+        return FAULT;
     if (find_path(s, f) != OK || book_open(&s->book, s->book_path, mode, f) != OK)
         return FAULT;
     if (book_warning(s->book))
@@ -67,7 +97,7 @@ enum status session_open(struct session *s, enum book_mode mode, struct fault *f
         fprintf(stderr,
                 "weirbook: the book was brought to format %d; as it was before, it is kept in %s\n",
                 book_format(), book_migrated(s->book));
-    return OK;
+    return s->as_of == DAY_NONE ? OK : step_back(s, f);
 }
 
 enum status session_book(struct session *s, enum book_mode mode, struct plant_draft **draft,
@@ -93,6 +123,55 @@ enum status session_author(struct session *s, const char *by, struct author *out
     clock_stamp(stamp);
     *out = (struct author){.who = arena_text(s->arena, who), .when = arena_text(s->arena, stamp)};
     return OK;
+}
+
+/* ---- what people say, for the record ---- */
+
+enum status session_record(const char *option, const char *text, struct fault *f)
+{
+    enum { BYTES_MOST = 2000 };
+    size_t length = strlen(text);
+    if (text[strspn(text, " ")] == '\0')
+        return fault_usage(f, "say it in a few words", "%s is empty", option);
+    for (const char *c = text; *c; c++)
+        if ((unsigned char)*c < 0x20 || *c == 0x7f)
+            return fault_usage(f, "write it in one line",
+                               "%s cannot hold line breaks or control characters", option);
+    if (!text_is_utf8(text, length))
+        return fault_usage(f, "write it in UTF-8", "%s is no readable text", option);
+    if (length > BYTES_MOST)
+        return fault_usage(f, "shorten it to 2000", "%s has %zu bytes", option, length);
+    return OK;
+}
+
+enum status session_number(const char *what, const char *lister, const char *text, int64_t *out,
+                           struct fault *f)
+{
+    struct decimal d;
+    if (decimal_parse(text, strlen(text), &d) != DECIMAL_FINE || d.scale != 0 || d.coefficient < 1)
+        return fault_usage(f, lister, "'%s' is no number of a %s", text, what);
+    *out = d.coefficient;
+    return OK;
+}
+
+static enum status unknown(const char *what, const char *id, const char *nearest, struct fault *f)
+{
+    char todo[200] = "weirbook plant --out DIR writes the description that lists them";
+    if (nearest)
+        snprintf(todo, sizeof todo, "the nearest is '%s'", nearest);
+    return fault_usage(f, todo, "no %s '%s'", what, id);
+}
+
+enum status session_point(const struct plant *plant, const char *id, int *out, struct fault *f)
+{
+    *out = plant_point(plant, id);
+    return *out >= 0 ? OK : unknown("point", id, plant_nearest_point(plant, id), f);
+}
+
+enum status session_parameter(const struct plant *plant, const char *id, int *out, struct fault *f)
+{
+    *out = plant_parameter(plant, id);
+    return *out >= 0 ? OK : unknown("parameter", id, plant_nearest_parameter(plant, id), f);
 }
 
 enum status session_frame(struct session *s, const struct plant *plant,
@@ -123,6 +202,19 @@ enum status session_frame_all(struct session *s, const struct plant *plant, day_
 
 /* ---- printing ---- */
 
+static void print_page(struct session *s, const struct page *page, const struct text_style *style)
+{
+    if (s->as_of != DAY_NONE) {
+        char day[11];
+        struct page *before = page_new(s->arena);
+        day_write(s->as_of, day);
+        page_line(before, FLAG_WATCH, "As the book stood at the end of %s (UTC).", day);
+        page_space(before);
+        write_text(s->out, before, style);
+    }
+    write_text(s->out, page, style);
+}
+
 void session_print(struct session *s, int as, const struct page *page, const struct table *table)
 {
     const struct text_style style = {.width = s->width, .colour = s->colour};
@@ -131,7 +223,7 @@ void session_print(struct session *s, int as, const struct page *page, const str
     else if (as == AS_JSON)
         write_json(s->out, table);
     else
-        write_text(s->out, page, &style);
+        print_page(s, page, &style);
 }
 
 static void look_at_terminal(struct session *s)
@@ -183,8 +275,8 @@ static void print_version(struct session *s)
             book_sqlite_version());
 }
 
-/* Reads -b BOOK, --help and --version, which may stand before the command. *next is the command's
- * index. */
+/* Reads -b BOOK, --read-only, --help and --version, which may stand before the command. *next is
+ * the command's index. */
 static enum status read_globals(struct session *s, int argc, char **argv, int *next, bool *done,
                                 struct fault *f)
 {
@@ -199,6 +291,8 @@ static enum status read_globals(struct session *s, int argc, char **argv, int *n
             *done = true;
         } else if ((strcmp(word, "-b") == 0 || strcmp(word, "--book") == 0) && i + 1 < argc) {
             s->book_path = argv[++i];
+        } else if (strcmp(word, "--read-only") == 0) {
+            s->read_only = true;
         } else if (strncmp(word, "--book=", 7) == 0) {
             s->book_path = word + 7;
         } else if (strncmp(word, "-b", 2) == 0 && word[2]) {
@@ -243,7 +337,8 @@ int command_main(const struct command *const *table, size_t count, int argc, cha
      * whole. */
     signal(SIGPIPE, SIG_IGN);
     signal(SIGXFSZ, SIG_IGN);
-    struct session s = {.arena = arena_new(), .table = table, .commands = count, .out = stdout};
+    struct session s = {
+        .arena = arena_new(), .table = table, .commands = count, .out = stdout, .as_of = DAY_NONE};
     struct fault f = {0};
     look_at_terminal(&s);
     enum status rc = run_command(&s, argc, argv, &f);

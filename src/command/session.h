@@ -16,6 +16,12 @@ enum as { AS_TEXT, AS_CSV, AS_JSON };
             false                                                                                  \
     }
 
+#define AS_OF_OPTION(type)                                                                         \
+    {                                                                                              \
+        "as-of", OPTION_DAY, offsetof(type, as_of), "DATE",                                        \
+            "from the book as it stood at the end of that day (UTC)", false                        \
+    }
+
 struct session {
     struct arena *arena;
     const struct command *const *table; /* all commands: help and completion need them */
@@ -25,6 +31,8 @@ struct session {
     size_t operands;
     const char *book_path; /* from -b or $WEIRBOOK; NULL: not said */
     const char *by;        /* who, for the record */
+    bool read_only;        /* from --read-only: whatever would write the book is refused */
+    day_t as_of;           /* set before the book is opened: read as it stood then; DAY_NONE */
     FILE *out;
     bool found; /* ends with status 3 */
     int width;
@@ -36,11 +44,24 @@ struct session {
 MUST_USE enum status session_book(struct session *s, enum book_mode mode,
                                   struct plant_draft **draft, struct plant **plant,
                                   struct fault *f);
-/* The same without its plant. */
+/* The same without its plant. With as_of set it is read as it stood at the end of that day. */
 MUST_USE enum status session_open(struct session *s, enum book_mode mode, struct fault *f);
 /* Who is at work and when, for the record. A name with control bytes is refused. */
 MUST_USE enum status session_author(struct session *s, const char *by, struct author *out,
                                     struct fault *f);
+/* A reason or remark for the record: one line of text that can be read. `option`: "--reason". */
+MUST_USE enum status session_record(const char *option, const char *text, struct fault *f);
+/* The number of a batch or remark as a person writes it; `lister` is the command that lists them.
+ */
+MUST_USE enum status session_number(const char *what, const char *lister, const char *text,
+                                    int64_t *out, struct fault *f);
+/* The index of a point or parameter; an unknown one is answered with the nearest. */
+MUST_USE enum status session_point(const struct plant *plant, const char *id, int *out,
+                                   struct fault *f);
+MUST_USE enum status session_parameter(const struct plant *plant, const char *id, int *out,
+                                       struct fault *f);
+/* Refuses to write under --read-only. */
+MUST_USE enum status session_may_write(const struct session *s, struct fault *f);
 /* Prints a page as text, or its table as csv or json. */
 void session_print(struct session *s, int as, const struct page *page, const struct table *table);
 /* Fills a frame with the spans' readings. */

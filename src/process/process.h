@@ -223,6 +223,77 @@ struct bench_outcome {
 void bench_work(struct arena *a, const struct plant *plant, const struct raw_value *raw,
                 size_t count, day_t today, struct bench_outcome **out, size_t *outcomes);
 
+/* ---- doubts -------------------------------------------------------------------------------------
+ * Readings of a month that cannot be right, and readings that deserve a question. None changes a
+ * value; a person answers them. */
+
+enum doubt_kind {
+    /* cannot be right */
+    DOUBT_SCALE,   /* pH outside 0 to 14 (the scale, common practice) */
+    DOUBT_BOUNDS,  /* beyond the parameter's plausible low or high */
+    DOUBT_PART,    /* a part above its whole: volatile solids, orthophosphate, ammonia, nitrogen */
+    DOUBT_REMOVAL, /* every effluent result of a day above every influent result */
+    DOUBT_LOAD,    /* a load heavier than a tenth of the water, or a sample of no flow */
+    DOUBT_SLIP,    /* outside the season, and inside it times or over 10, 24 or 1000 */
+    DOUBT_SWAP,    /* outside the season, and on the trend with two digits swapped */
+    DOUBT_SAME,    /* the same value day after day */
+    DOUBT_WEEKEND, /* Saturdays and Sundays that repeat Friday */
+    /* deserves a question */
+    DOUBT_SEASON,  /* outside the robust range of the season */
+    DOUBT_FEW,     /* far from the few others of the season */
+    DOUBT_BALANCE, /* solids balance of the aeration basins that does not close */
+    DOUBT_DRIFT,   /* two measurements of one thing that drift apart */
+    DOUBT_RECORD,  /* records lack what 40 CFR 122.41(j)(3) asks for */
+    DOUBTS
+};
+extern const char *const doubt_words[DOUBTS]; /* "outside-scale", ... */
+bool doubt_impossible(enum doubt_kind kind);  /* cannot be right */
+
+struct doubt {
+    const char *id; /* YYYY-MM- and six hex digits: of kind, point, parameter, date, time, sample,
+                     * value and what it is compared with, and of nothing else */
+    enum doubt_kind kind;
+    day_t day;
+    int point, parameter;     /* -1 where it is about none */
+    const char *value, *unit; /* as written; "" where it is about no one reading */
+    const char *evidence;     /* numbers and days, then the source */
+};
+
+/* What is read for it: the month's columns with DOUBT_AROUND days on either side, in one frame; and
+ * what process_doubt_past names, in another: the same days of earlier years, the newest first,
+ * until the season has DOUBT_ENOUGH values, five years in all at most. */
+#define DOUBT_AROUND 22 /* 45 days: the day and so many on either side */
+#define DOUBT_YEARS  5
+#define DOUBT_ENOUGH 200
+void process_doubt_past(struct arena *a, const struct frame *frame, day_t month,
+                        struct frame_span **out, size_t *spans);
+/* The doubts of the month's readings in force: what cannot be right first, then by kind, day, point
+ * and parameter. `past` may be NULL: none is known. */
+void process_doubts(struct arena *a, const struct frame *frame, const struct frame *past,
+                    day_t month, struct doubt **out, size_t *count);
+
+/* Median and median absolute deviation, exactly: `twice_median` is twice the one, `four_mad` four
+ * times the other. Sorts `y`. |y| at most DOUBT_MOST, count 1 or more. */
+#define DOUBT_MOST INT64_C(100000000000000)
+struct doubt_spread {
+    size_t count;
+    int64_t twice_median, four_mad;
+};
+void doubt_spread(int64_t *y, size_t count, struct doubt_spread *out);
+/* The modified z-score 0.6745 |y - median| / MAD (Iglewicz and Hoaglin 1993, How to Detect and
+ * Handle Outliers, ASQC); NULL when the MAD is 0. */
+const struct fraction *doubt_score(struct arena *a, const struct doubt_spread *s, int64_t y);
+/* Grubbs' statistic |y - mean| / s of one of the values, squared (Grubbs 1969, Technometrics 11:1;
+ * NIST handbook 1.3.5.17); NULL when all are the same. Count 3 or more. */
+const struct fraction *doubt_grubbs(struct arena *a, const int64_t *y, size_t count, int64_t of);
+/* Its critical value: (n - 1) / sqrt(n) * sqrt(t^2 / (n - 2 + t^2)), t the upper point of Student's
+ * distribution at `tail` / n with n - 2 degrees of freedom; two-sided at 5 %: tail 0.025. */
+double doubt_grubbs_critical(size_t count, double tail);
+/* Dixon's r10, gap over range, of the value of `y` (sorted, 3 to 10) at an end; its critical value
+ * in thousandths at 99 % and 95 %, two-sided (Rorabacher 1991, Anal. Chem. 63:139). */
+const struct fraction *doubt_dixon(struct arena *a, const int64_t *y, size_t count, bool top);
+int doubt_dixon_critical(size_t count, bool at_99);
+
 /* ---- wasting ----------------------------------------------------------------------------------
  * How much sludge to waste on a day. Aeration basins in service are taken as one, in a unit of the
  * plant: lb, lb/d, MGD, or kg, kg/d, m3/d. */

@@ -58,11 +58,24 @@ void week_sentences(struct arena *a, const struct permit_month *m, struct senten
  */
 
 void permit_title(struct page *p, const struct plant *plant, const struct permit_month *m);
-void permit_blocks(struct page *p, const struct plant *plant, const struct permit_month *m);
+void permit_blocks(struct page *p, const struct plant *plant, const struct permit_month *m,
+                   const struct month_remarks *remarks);
 /* Exceedances, shortfalls and targets passed, one row each, for the workbook. */
-struct table *findings_table(struct arena *a, const struct permit_month *m);
+struct table *findings_table(struct arena *a, const struct permit_month *m,
+                             const struct month_remarks *remarks);
 /* Every row, for the workbook: figures as numbers, dates as dates. */
-struct table *limits_table(struct arena *a, const struct permit_month *m);
+struct table *limits_table(struct arena *a, const struct permit_month *m,
+                           const struct month_remarks *remarks);
+
+/* ---- remarks (remarks.c) -----------------------------------------------------------------------
+ */
+
+/* A row's note with the remarks about it behind: "...; remark 12: TEXT". */
+const char *row_note(struct arena *a, const struct permit_row *row,
+                     const struct month_remarks *remarks);
+/* The remarks whose days touch the month, and those about one of its rows. */
+struct table *remark_table(struct arena *a, const struct permit_month *m,
+                           const struct month_remarks *remarks);
 
 /* ---- daily values (daily.c) --------------------------------------------------------------------
  */

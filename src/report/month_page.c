@@ -121,7 +121,7 @@ struct page *report_month_page(struct arena *a, const struct month_input *in)
 {
     struct page *p = page_new(a);
     permit_title(p, in->plant, in->permit);
-    permit_blocks(p, in->plant, in->permit);
+    permit_blocks(p, in->plant, in->permit, &in->remarks);
     page_break(p);
     daily_blocks(p, in);
     table_block(p, WORD_HEADING_CODES, code_table(a, in));

@@ -379,4 +379,6 @@ void footer_sentences(struct arena *a, const struct month_input *in, struct sent
     say(a, out, SAY(a, FOOT_PROGRAM, [PLACE_VERSION] = in->version, [PLACE_DAY] = printed));
     if (in->head != NULL && in->head[0] != '\0')
         say(a, out, SAY(a, FOOT_HEAD, [PLACE_HEAD] = in->head));
+    if (in->as_of != NULL)
+        say(a, out, SAY(a, FOOT_AS_OF, [PLACE_DAY] = in->as_of));
 }

@@ -7,7 +7,8 @@
 /* ---- for programs ------------------------------------------------------------------------------
  */
 
-struct table *report_permit_table(struct arena *a, const struct permit_month *m)
+struct table *report_permit_table(struct arena *a, const struct permit_month *m,
+                                  const struct month_remarks *remarks)
 {
     static const struct column columns[] = {
         {.key = "outfall", .title = "outfall"},
@@ -53,7 +54,7 @@ struct table *report_permit_table(struct arena *a, const struct permit_month *m)
         if (row->has_required)
             *c = cell_count(a, row->required);
         c++;
-        *c = cell_text(row->note);
+        *c = cell_text(row_note(a, row, remarks));
     }
     return t;
 }
@@ -236,22 +237,35 @@ void permit_title(struct page *p, const struct plant *plant, const struct permit
     page_space(p);
 }
 
-void permit_blocks(struct page *p, const struct plant *plant, const struct permit_month *m)
+static void remark_block(struct page *p, const struct permit_month *m,
+                         const struct month_remarks *remarks)
+{
+    struct table *t = remark_table(p->arena, m, remarks);
+    if (t->rows == 0)
+        return;
+    page_heading(p, word(WORD_HEADING_REMARKS));
+    page_table(p, t);
+    page_space(p);
+}
+
+void permit_blocks(struct page *p, const struct plant *plant, const struct permit_month *m,
+                   const struct month_remarks *remarks)
 {
     beyond_block(p, m, is_exceeded, FLAG_BAD, WORD_HEADING_EXCEEDANCES);
     shortfall_block(p, m);
     beyond_block(p, m, is_passed, FLAG_WATCH, WORD_HEADING_TARGETS);
+    remark_block(p, m, remarks);
     all_limits(p, plant, m);
     worst_weeks(p, m);
     row_notes(p, m);
 }
 
 struct page *report_permit_page(struct arena *a, const struct plant *plant,
-                                const struct permit_month *m)
+                                const struct permit_month *m, const struct month_remarks *remarks)
 {
     struct page *p = page_new(a);
     permit_title(p, plant, m);
-    permit_blocks(p, plant, m);
+    permit_blocks(p, plant, m, remarks);
     return p;
 }
 
@@ -283,7 +297,8 @@ static struct table *sheet_table(struct arena *a, const enum word *titles, size_
     return table_new(a, "", columns, count);
 }
 
-struct table *limits_table(struct arena *a, const struct permit_month *m)
+struct table *limits_table(struct arena *a, const struct permit_month *m,
+                           const struct month_remarks *remarks)
 {
     static const enum word titles[] = {
         WORD_COLUMN_OUTFALL, WORD_COLUMN_POINT, WORD_COLUMN_PARAMETER, WORD_COLUMN_STATISTIC,
@@ -315,13 +330,15 @@ struct table *limits_table(struct arena *a, const struct permit_month *m)
         if (row->has_required)
             c[14] = cell_count(a, row->required);
         c[15] = cell_text(l->sample == SAMPLE_ANY ? "" : sample_type_words[l->sample]);
-        c[16] = cell_text(row->note[0] != '\0' ? row->note : l->note);
+        const char *note = row_note(a, row, remarks);
+        c[16] = cell_text(note[0] != '\0' ? note : l->note);
         c[7].flag = row->verdict == VERDICT_EXCEEDED ? FLAG_BAD : FLAG_NONE;
     }
     return t;
 }
 
-static void add_finding(struct table *t, const struct permit_month *m, size_t i, struct cell kind)
+static void add_finding(struct table *t, const struct permit_month *m, size_t i, struct cell kind,
+                        const struct month_remarks *remarks)
 {
     const struct permit_row *row = &m->rows[i];
     const struct limit *l = row->limit;
@@ -343,10 +360,12 @@ static void add_finding(struct table *t, const struct permit_month *m, size_t i,
     c[12] = cell_count(a, row->samples);
     if (row->has_required)
         c[13] = cell_count(a, row->required);
-    c[14] = cell_text(row->note[0] != '\0' ? row->note : l->note);
+    const char *note = row_note(a, row, remarks);
+    c[14] = cell_text(note[0] != '\0' ? note : l->note);
 }
 
-struct table *findings_table(struct arena *a, const struct permit_month *m)
+struct table *findings_table(struct arena *a, const struct permit_month *m,
+                             const struct month_remarks *remarks)
 {
     static const enum word titles[] = {
         WORD_COLUMN_FINDING,   WORD_COLUMN_OUTFALL,  WORD_COLUMN_POINT, WORD_COLUMN_PARAMETER,
@@ -357,13 +376,15 @@ struct table *findings_table(struct arena *a, const struct permit_month *m)
     struct table *t = sheet_table(a, titles, NELEM(titles));
     for (size_t i = 0; i < m->count; i++)
         if (is_exceeded(&m->rows[i], m->on))
-            add_finding(t, m, i, cell_flagged(cell_text(word(WORD_VERDICT_EXCEEDED)), FLAG_BAD));
+            add_finding(t, m, i, cell_flagged(cell_text(word(WORD_VERDICT_EXCEEDED)), FLAG_BAD),
+                        remarks);
     for (size_t i = 0; i < m->count; i++)
         if (permit_shortfall(&m->rows[i], m->on))
-            add_finding(t, m, i, cell_flagged(cell_text(word(WORD_SHORT)), FLAG_SHORT));
+            add_finding(t, m, i, cell_flagged(cell_text(word(WORD_SHORT)), FLAG_SHORT), remarks);
     for (size_t i = 0; i < m->count; i++)
         if (is_passed(&m->rows[i], m->on))
             add_finding(t, m, i,
-                        cell_flagged(cell_text(word(WORD_VERDICT_TARGET_PASSED)), FLAG_WATCH));
+                        cell_flagged(cell_text(word(WORD_VERDICT_TARGET_PASSED)), FLAG_WATCH),
+                        remarks);
     return t;
 }

@@ -113,6 +113,20 @@ struct month_revision {
     long line;
 };
 
+/* What people have said of days or limits of the month: a cause, a remedy, an event. It is printed
+ * beside figures and changes none. */
+struct month_remark {
+    long number;
+    const char *kind, *event; /* "cause", "remedy", "event"; which event, "" for the others */
+    day_t from, to;
+    const char *point, *parameter, *statistic; /* "" where it is about all */
+    const char *text, *who, *when;
+};
+struct month_remarks {
+    struct month_remark *at; /* in the order of their days */
+    size_t count, room;
+};
+
 struct month_input {
     const struct plant *plant;
     const struct frame *frame;
@@ -127,17 +141,25 @@ struct month_input {
     size_t asides;
     const struct month_revision *revision;
     size_t revisions;
+    struct month_remarks remarks;
+    const char *as_of;   /* the day whose book it is, where that is not today's; NULL */
     const char *head;    /* the book's newest head, hex */
     const char *version; /* the program's */
     day_t printed;
 };
 
 /* `permit` as a table with the seventeen columns of the interface (for --as csv|json). */
-struct table *report_permit_table(struct arena *a, const struct permit_month *m);
+struct table *report_permit_table(struct arena *a, const struct permit_month *m,
+                                  const struct month_remarks *remarks);
 /* `permit` as a page: exceedances, shortfalls, then every limit with figure, limit, samples,
- * verdict. */
+ * verdict; remarks (NULL: none) in a section, and in the note of each row they are about. */
 struct page *report_permit_page(struct arena *a, const struct plant *plant,
-                                const struct permit_month *m);
+                                const struct permit_month *m, const struct month_remarks *remarks);
+/* Whether a remark is about a row's figure: it names the point and parameter of the row's limit
+ * (and, if any, its statistic), and its days touch the row's period. */
+bool report_remark_of_row(const struct month_remark *r, const struct permit_row *row);
+/* "remark 12: TEXT", in the arena. */
+const char *report_remark_note(struct arena *a, const struct month_remark *r);
 /* The monthly summary as text: the permit page, daily values, rows set aside, revisions, the rules
  * used, cautions, a place for the certification. Fits 100 columns, US Letter or A4. */
 struct page *report_month_page(struct arena *a, const struct month_input *in);

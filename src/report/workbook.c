@@ -185,13 +185,16 @@ static void all_sheets(struct sheets *s, const struct month_input *in)
     struct daily d;
     daily_make(a, in, &d);
     summary_sheet(s, in);
-    table_sheet(s, WORD_SHEET_LIMITS, limits_table(a, in->permit), 0);
+    table_sheet(s, WORD_SHEET_LIMITS, limits_table(a, in->permit, &in->remarks), 0);
     table_sheet(s, WORD_SHEET_DAILY, daily_table(a, &d, false), 1);
     if (in->process_count > 0)
         table_sheet(s, WORD_SHEET_PROCESS, process_by_day(a, in), 1);
     else if (in->process_months > 0)
         table_sheet(s, WORD_SHEET_PROCESS, process_summary(a, in), 0);
-    table_sheet(s, WORD_SHEET_FINDINGS, findings_table(a, in->permit), 0);
+    table_sheet(s, WORD_SHEET_FINDINGS, findings_table(a, in->permit, &in->remarks), 0);
+    const struct table *remarks = remark_table(a, in->permit, &in->remarks);
+    if (remarks->rows > 0)
+        table_sheet(s, WORD_SHEET_REMARKS, remarks, 0);
     table_sheet(s, WORD_SHEET_ASIDE, aside_table(a, in), 0);
     if (in->revisions > 0)
         table_sheet(s, WORD_SHEET_REVISIONS, revision_table(a, in, false), 0);

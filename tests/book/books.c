@@ -66,7 +66,14 @@ int shelf_setup(void **state)
 int shelf_setup_format_1(void **state)
 {
     *state = shelf_new();
-    shelf_put_format_1(*state);
+    shelf_put_format(*state, 1);
+    return 0;
+}
+
+int shelf_setup_format_2(void **state)
+{
+    *state = shelf_new();
+    shelf_put_format(*state, 2);
     return 0;
 }
 
@@ -288,6 +295,50 @@ const char *shelf_bench(struct shelf *s, const char *file, const char *lines)
     return told;
 }
 
+struct reading shelf_reading(struct shelf *s, const char *line)
+{
+    char *word[LONG_COLUMNS + 1];
+    size_t count = words_of(s->arena, line, strlen(line), word, NELEM(word));
+    return reading_of(s->arena, s->plant, word, count);
+}
+
+int64_t shelf_amend(struct shelf *s, const char *line, const char *reason)
+{
+    const struct reading r = shelf_reading(s, line);
+    struct reading old;
+    int64_t batch = 0;
+    struct book *b = shelf_open(s, BOOK_WRITE);
+    good(s, book_amend(b, s->arena, s->plant, &r, reason, &tester, &old, &batch, &s->fault));
+    book_close(b);
+    return batch;
+}
+
+const char *shelf_withdraw(struct shelf *s, int64_t batch, const char *reason)
+{
+    struct book_withdrawn out = {0};
+    int64_t act = 0;
+    struct book *b = shelf_open(s, BOOK_WRITE);
+    good(s, book_withdraw(b, s->plant, batch, reason, &tester, &out, &act, &s->fault));
+    book_close(b);
+    return arena_print(s->arena, "taken back %ld, restored %ld, left %ld", out.taken_back,
+                       out.restored, out.left);
+}
+
+int64_t shelf_remark(struct shelf *s, enum remark_kind kind, const char *event, const char *from,
+                     const char *to, const char *const about[3], const char *text)
+{
+    struct book_remark r = {.kind = kind, .event = event, .text = text};
+    int64_t id = 0;
+    assert_true(day_parse(from, &r.from) && day_parse(to, &r.to));
+    r.point = about ? about[0] : "";
+    r.parameter = about ? about[1] : "";
+    r.statistic = about ? about[2] : "";
+    struct book *b = shelf_open(s, BOOK_WRITE);
+    good(s, book_remark_add(b, &r, &tester, &id, &s->fault));
+    book_close(b);
+    return id;
+}
+
 /* ---- what a book says ---- */
 
 static enum status tell_reading(void *context, const struct reading *r, struct fault *f)
@@ -347,6 +398,50 @@ static enum status tell_raw(void *context, const struct raw_value *r, struct fau
     return OK;
 }
 
+static enum status tell_remark(void *context, const struct book_remark *r, struct fault *f)
+{
+    struct text *t = context;
+    char from[11], to[11];
+    (void)f;
+    day_write(r->from, from);
+    day_write(r->to, to);
+    text_print(t, "remark %d %s '%s' %s..%s '%s' '%s' '%s': %s (%s, %s)%s%s\n", (int)r->id,
+               remark_kind_words[r->kind], r->event, from, to, r->point, r->parameter, r->statistic,
+               r->text, r->who, r->when, r->withdrawn ? " withdrawn: " : "", r->withdrawn_why);
+    return OK;
+}
+
+static enum status tell_answer(void *context, const struct book_answer *x, struct fault *f)
+{
+    (void)f;
+    text_print(context, "answer %d to %s: %s (%s, %s)\n", (int)x->batch, x->doubt, x->reason,
+               x->who, x->when);
+    return OK;
+}
+
+const char *remarks_told(struct shelf *s, struct book *b, const char *first, const char *last)
+{
+    struct text t;
+    day_t from = DAY_NONE, to = DAY_NONE;
+    assert_true(!*first || day_parse(first, &from));
+    assert_true(!*last || day_parse(last, &to));
+    text_init(&t, 1 << 20);
+    good(s, book_remarks(b, from, to, tell_remark, &t, &s->fault));
+    const char *told = arena_text(s->arena, t.at);
+    text_free(&t);
+    return told;
+}
+
+const char *answers_told(struct shelf *s, struct book *b)
+{
+    struct text t;
+    text_init(&t, 1 << 20);
+    good(s, book_answers(b, tell_answer, &t, &s->fault));
+    const char *told = arena_text(s->arena, t.at);
+    text_free(&t);
+    return told;
+}
+
 enum { BENCHES_MOST = 16, BENCH_LINES = 40 };
 
 struct benches {
@@ -394,9 +489,21 @@ static enum status tell_all(struct shelf *s, struct book *b, struct text *t, str
     TRY(book_each(b, plant, DAY_NONE, DAY_NONE, tell_reading, t, f));
     TRY(book_asides(b, DAY_NONE, DAY_NONE, tell_aside, t, f));
     TRY(book_revisions(b, plant, DAY_NONE, DAY_NONE, tell_revision, t, f));
+    TRY(book_remarks(b, DAY_NONE, DAY_NONE, tell_remark, t, f));
+    TRY(book_answers(b, tell_answer, t, f));
     TRY(tell_benches(b, t, f));
 done:
     return rc;
+}
+
+const char *book_told(struct shelf *s, struct book *b)
+{
+    struct text t;
+    text_init(&t, 8 << 20);
+    good(s, tell_all(s, b, &t, &s->fault));
+    const char *told = arena_text(s->arena, t.at);
+    text_free(&t);
+    return told;
 }
 
 const char *shelf_told(struct shelf *s, struct fault *f)
@@ -487,18 +594,20 @@ static sqlite3 *raw_open(struct shelf *s)
     return db;
 }
 
-void shelf_put_format_1(struct shelf *s)
+void shelf_put_format(struct shelf *s, int format)
 {
     const char *source = getenv("WEIRBOOK_SOURCE");
     size_t length;
     sqlite3 *db = NULL;
     if (!source)
         fail_msg("WEIRBOOK_SOURCE is to name the checkout");
-    const uint8_t *rows =
-        file_bytes(s->arena, arena_print(s->arena, "%s/tests/book/format-1.sql", source), &length);
+    const uint8_t *rows = file_bytes(
+        s->arena, arena_print(s->arena, "%s/tests/book/format-%d.sql", source, format), &length);
+    s->format = format;
     assert_int_equal(sqlite3_open(s->path, &db), SQLITE_OK);
     run(db, "PRAGMA page_size = 8192; PRAGMA synchronous = OFF");
-    run(db, book_file("001-book.sql"));
+    for (int i = 0; i < format; i++)
+        run(db, book_file(book_migrations[i].file));
     run(db, arena_bytes(s->arena, (const char *)rows, length));
     sqlite3_close(db);
 }

@@ -27,6 +27,7 @@ struct shelf {
     struct fault fault;
     struct book_counts counts; /* of the last load */
     int64_t batch;
+    int format; /* of an older book's program */
 };
 
 extern const struct author tester;
@@ -35,9 +36,10 @@ extern const struct author tester;
 int shelf_setup(void **state);
 int shelf_teardown(void **state);
 struct shelf *shelf_new(void); /* the same without the book */
-/* As setup: the book is one that the program of format 1 wrote (format-1.sql). */
+/* As setup: the book is one that the program of an older format wrote (format-N.sql). */
 int shelf_setup_format_1(void **state);
-void shelf_put_format_1(struct shelf *s);
+int shelf_setup_format_2(void **state);
+void shelf_put_format(struct shelf *s, int format);
 void shelf_free(struct shelf *s);
 
 /* A draft of the small plant, with more rows of a file behind it (NULL: none). */
@@ -60,6 +62,20 @@ enum status end_load(struct shelf *s, struct book *b, const char *file, const ch
 
 /* All that the program can read of the book, as text; NULL with a fault. */
 const char *shelf_told(struct shelf *s, struct fault *f);
+/* The same of a book that is open. */
+const char *book_told(struct shelf *s, struct book *b);
+/* Remarks that touch days ("": open), and all answers, one a line. */
+const char *remarks_told(struct shelf *s, struct book *b, const char *first, const char *last);
+const char *answers_told(struct shelf *s, struct book *b);
+/* Adds a remark on days; its number. `about`: NULL, or point, parameter and statistic. */
+int64_t shelf_remark(struct shelf *s, enum remark_kind kind, const char *event, const char *from,
+                     const char *to, const char *const about[3], const char *text);
+/* A line as a reading. */
+struct reading shelf_reading(struct shelf *s, const char *line);
+/* Amends by a line; the batch. */
+int64_t shelf_amend(struct shelf *s, const char *line, const char *reason);
+/* "taken back N, restored N, left N" */
+const char *shelf_withdraw(struct shelf *s, int64_t batch, const char *reason);
 /* All bad findings of a check, one a line: "what batch file:line: note"; "" when it is sound. A
  * book that cannot be opened or checked gives the fault. */
 const char *shelf_check(struct shelf *s);

@@ -48,7 +48,10 @@ static void a_sound_book_passes_and_says_what_was_looked_at(void **state)
                               "reading: 7 checked, all as they were written\n"
                               "row set aside: 1 checked, all as they were written\n"
                               "raw value: 4 checked, all as they were written\n"
-                              "description: 12 checked, all as they were written\n");
+                              "description: 12 checked, all as they were written\n"
+                              "act: 0 checked, all as they were written\n"
+                              "remark: 0 checked, all as they were written\n"
+                              "answer: 0 checked, all as they were written\n");
     text_free(&t);
 }
 

@@ -46,6 +46,28 @@ static enum status keep_reading(void *context, const struct reading *r, struct f
     return OK;
 }
 
+static enum status keep_remark(void *context, const struct book_remark *r, struct fault *f)
+{
+    (void)f;
+    text_print(context, "%s %s %d %s\n", r->text, r->who, r->withdrawn, r->withdrawn_why);
+    return OK;
+}
+
+static enum status keep_answer(void *context, const struct book_answer *x, struct fault *f)
+{
+    (void)f;
+    text_print(context, "%s %s %s\n", x->doubt, x->reason, x->who);
+    return OK;
+}
+
+static enum status keep_change(void *context, const struct book_change *c, struct fault *f)
+{
+    (void)f;
+    text_print(context, "%s %s %s %s %s %s %s\n", c->when, c->who, c->what, c->reason, c->old_text,
+               c->new_text, c->file);
+    return OK;
+}
+
 static enum status keep_finding(void *context, const struct book_finding *x, struct fault *f)
 {
     (void)f;
@@ -59,13 +81,24 @@ static enum status read_all(struct shelf *s, struct text *t, struct fault *f)
     struct book *b = NULL;
     struct plant_draft *draft;
     struct plant *plant;
+    static const struct book_history all = {
+        .first = DAY_NONE, .last = DAY_NONE, .point = -1, .parameter = -1, .every_reading = true};
     day_t first, last;
+    int64_t batch;
+    bool odd;
     enum status rc = OK;
     text_clear(t);
     TRY(book_open(&b, s->path, BOOK_READ, f));
     TRY(book_plant(b, s->arena, &draft, &plant, f));
     TRY(book_each(b, plant, DAY_NONE, DAY_NONE, keep_reading, t, f));
     TRY(book_extent(b, &first, &last, f));
+    TRY(book_remarks(b, DAY_NONE, DAY_NONE, keep_remark, t, f));
+    TRY(book_answers(b, keep_answer, t, f));
+    TRY(book_history(b, plant, &all, keep_change, t, f));
+    TRY(book_batch_at(b, tester.when, &batch, &odd, f));
+    TRY(book_as_of(b, 2, f));
+    TRY(book_each(b, plant, DAY_NONE, DAY_NONE, keep_reading, t, f));
+    TRY(book_as_of(b, 0, f));
     TRY(book_check(b, keep_finding, t, f));
 done:
     book_close(b);
@@ -192,6 +225,14 @@ static void what_is_read_is_right_or_a_fault(void **state)
     text_init(&right, 1 << 20);
     text_init(&t, 1 << 20);
     shelf_load(s, "a.csv", NULL, rows);
+    shelf_amend(s, "EFF BOD5 2025-03-05 33 mg/L", "typing error");
+    shelf_remark(s, REMARK_CAUSE, "", "2025-03-05", "2025-03-06", NULL, "rain");
+    shelf_remark(s, REMARK_CAUSE, "", "2025-03-05", "2025-03-06", NULL, "snow");
+    struct book *b = shelf_open(s, BOOK_WRITE);
+    int64_t batch;
+    good(s, book_remark_withdraw(b, 5, "no snow", &tester, &s->fault));
+    good(s, book_answer_add(b, "d", "seen", &tester, &batch, &s->fault));
+    book_close(b);
     const uint8_t *before = file_bytes(s->arena, s->path, &length);
     good(s, read_all(s, &right, &s->fault));
     for (enum failing kind = FAIL_MEMORY; kind <= FAIL_FILES; kind++) {
@@ -211,6 +252,110 @@ static void what_is_read_is_right_or_a_fault(void **state)
     same_file(s->path, before, length);
     text_free(&right);
     text_free(&t);
+}
+
+/* ---- acts ---- */
+
+enum act { AMEND, WITHDRAW, REMARK, REMARK_WITHDRAW, ANSWER, BACKUP, ACTS };
+
+struct acting {
+    const char *copy; /* where a backup goes */
+    struct reading r;
+    struct book_remark remark;
+};
+
+static enum status act(struct shelf *s, enum act which, const struct acting *x, struct fault *f)
+{
+    struct book *b = NULL;
+    struct book_withdrawn out;
+    struct reading old;
+    int64_t batch;
+    enum status rc = OK;
+    TRY(book_open(&b, s->path, which == BACKUP ? BOOK_READ : BOOK_WRITE, f));
+    switch (which) {
+    case AMEND:
+        rc = book_amend(b, s->arena, s->plant, &x->r, "typing error", &tester, &old, &batch, f);
+        break;
+    case WITHDRAW:
+        rc = book_withdraw(b, s->plant, 3, "wrong file", &tester, &out, &batch, f);
+        break;
+    case REMARK:
+        rc = book_remark_add(b, &x->remark, &tester, &batch, f);
+        break;
+    case REMARK_WITHDRAW:
+        rc = book_remark_withdraw(b, 4, "no rain", &tester, f);
+        break;
+    case ANSWER:
+        rc = book_answer_add(b, "d", "seen", &tester, &batch, f);
+        break;
+    default:
+        rc = book_backup(b, x->copy, f);
+    }
+done:
+    book_close(b);
+    return rc;
+}
+
+/* The old book or the new one, sound, and no backup but a whole one. */
+static bool is_done(struct shelf *s, const struct acting *x, const char *old_told)
+{
+    struct fault f = {0};
+    const char *told = shelf_told(s, &f), *parts = NULL;
+    assert_non_null(told);
+    assert_string_equal(shelf_check(s), "");
+    assert_int_equal(
+        system(arena_print(s->arena, "test -z \"$(ls -A '%s' | grep making)\"", s->folder)), 0);
+    if (access(x->copy, F_OK) != 0)
+        return strcmp(told, old_told) != 0;
+    parts = arena_text(s->arena, s->path);
+    snprintf(s->path, sizeof s->path, "%s", x->copy);
+    assert_string_equal(shelf_told(s, &f), told);
+    assert_string_equal(shelf_check(s), "");
+    assert_int_equal(remove(s->path), 0);
+    snprintf(s->path, sizeof s->path, "%s", parts);
+    return true;
+}
+
+static void an_act_fails_whole(struct shelf *s, enum act which, enum failing kind, bool forever,
+                               const struct acting *x)
+{
+    size_t length;
+    long failed = 0;
+    bool came = true;
+    const uint8_t *before = file_bytes(s->arena, s->path, &length);
+    const char *old_told = shelf_told(s, &s->fault);
+    for (long n = 1; came; n += step(kind, true)) {
+        struct fault f = {0};
+        struct arena *kept = s->arena;
+        s->arena = arena_new();
+        failing_at(kind, n, forever);
+        enum status rc = act(s, which, x, &f);
+        came = failing_came();
+        failing_at(kind, 0, false);
+        assert_true(rc == OK || (f.set && came));
+        bool still = access(x->copy, F_OK) != 0 && untouched(s, before, length);
+        assert_true(still ? rc != OK : is_done(s, x, old_told) || rc != OK);
+        failed += rc != OK;
+        file_write(s->path, before, length);
+        arena_free(s->arena);
+        s->arena = kept;
+    }
+    assert_true(failed > 3);
+}
+
+static void an_act_is_done_whole_or_not_at_all(void **state)
+{
+    struct shelf *s = THIS;
+    struct acting x = {.copy = arena_print(s->arena, "%s/copy.book", s->folder)};
+    shelf_load(s, "a.csv", NULL, rows);
+    shelf_load(s, "b.csv", "why", "EFF BOD5 2025-03-05 32 mg/L\nEFF TSS 2025-03-09 1 mg/L");
+    shelf_remark(s, REMARK_CAUSE, "", "2025-03-05", "2025-03-06", NULL, "rain");
+    x.r = shelf_reading(s, "EFF BOD5 2025-03-05 33 mg/L note:m");
+    x.remark = (struct book_remark){.from = 20000, .to = 20001, .text = "a remark"};
+    for (enum act which = 0; which < ACTS; which++)
+        for (enum failing kind = FAIL_MEMORY; kind <= FAIL_FILES; kind++)
+            for (int forever = 0; forever < 2; forever++)
+                an_act_fails_whole(s, which, kind, forever, &x);
 }
 
 static void a_book_is_made_whole_or_not_at_all(void **state)
@@ -240,9 +385,13 @@ int main(void)
 {
 #define SHELVED(test) cmocka_unit_test_setup_teardown(test, shelf_setup, shelf_teardown)
     const struct CMUnitTest tests[] = {
-        SHELVED(memory_that_runs_out_once),        SHELVED(memory_that_is_gone),
-        SHELVED(a_disk_that_fails_once),           SHELVED(a_disk_that_is_gone),
-        SHELVED(what_is_read_is_right_or_a_fault), SHELVED(a_book_is_made_whole_or_not_at_all),
+        SHELVED(memory_that_runs_out_once),
+        SHELVED(memory_that_is_gone),
+        SHELVED(a_disk_that_fails_once),
+        SHELVED(a_disk_that_is_gone),
+        SHELVED(what_is_read_is_right_or_a_fault),
+        SHELVED(a_book_is_made_whole_or_not_at_all),
+        SHELVED(an_act_is_done_whole_or_not_at_all),
     };
     failing_install();
     return cmocka_run_group_tests(tests, NULL, NULL);

@@ -36,6 +36,25 @@ static void fill_bench(struct shelf *s)
     text_free(&lines);
 }
 
+/* One of every act. */
+static void fill_acts(struct shelf *s)
+{
+    static const char *const place[3] = {"EFF", "BOD5", "weekly-average"};
+    int64_t batch;
+    shelf_load(s, "d.csv", NULL, "EFF TSS 2025-09-01 5 mg/L");
+    shelf_amend(s, "EFF TSS 2025-09-01 6 mg/L", "typing error");
+    for (int i = 0; i < 20; i++)
+        shelf_remark(s, REMARK_EVENT, "wet-weather", "2025-03-21", "2025-03-29", place,
+                     "sixty millimetres of rain");
+    struct book *b = shelf_open(s, BOOK_WRITE);
+    good(s, book_remark_withdraw(b, strtol(raw_text(s, "SELECT max(batch) FROM remark"), NULL, 10),
+                                 "it was the week before", &tester, &s->fault));
+    for (int i = 0; i < 20; i++)
+        good(s, book_answer_add(b, "EFF-BOD5-range", "seen on the bench sheet", &tester, &batch,
+                                &s->fault));
+    book_close(b);
+}
+
 /* A book of a few hundred readings, small enough that most of its bytes say something. */
 static void fill(struct shelf *s)
 {
@@ -56,6 +75,8 @@ static void fill(struct shelf *s)
         text_print(&lines, "aside:not-a-number 2025-03-%02d - EFF BOD5 1O%d mg/L\n", 1 + i % 28, i);
     shelf_load(s, "c.csv", NULL, lines.at);
     fill_bench(s);
+    fill_acts(s);
+    shelf_withdraw(s, 3, "the wrong file");
     text_free(&lines);
 }
 
@@ -117,27 +138,21 @@ static size_t place_of(const uint8_t *in, size_t length, const char *what)
     return at + size <= length ? at : length;
 }
 
-/* Every bit of a raw value: its cells stand one after another, its lengths before them and its mark
- * behind. */
-static void every_bit_of_a_raw_value_is_watched(void **state)
+enum { MARK = 8 };
+
+/* Every bit of a row: its cells stand one after another, lengths and small numbers before them and
+ * its mark behind. */
+static void watch(struct shelf *s, const char *cells, size_t lengths)
 {
-    static const char cells[] = "suspended-solids2025-03-2108:01EFF1dried2.1311g";
-    enum {
-        LENGTHS = 13,
-        MARK = 8
-    }; /* the byte before says nothing: the row's number is
-          its key */
-    struct shelf *s = THIS;
     struct fault f = {0};
     size_t length;
     long told_nothing = 0, flips = 0;
-    fill_bench(s);
     const char *before = shelf_told(s, &f);
     uint8_t *bytes = file_bytes(s->arena, s->path, &length);
     size_t at = place_of(bytes, length, cells);
-    assert_true(at > LENGTHS && at + sizeof cells + MARK < length);
+    assert_true(at > lengths && at + strlen(cells) + MARK < length);
     struct arena *kept = s->arena;
-    size_t first = (at - LENGTHS) * 8, last = (at + sizeof cells - 1 + MARK) * 8;
+    size_t first = (at - lengths) * 8, last = (at + strlen(cells) + MARK) * 8;
     for (size_t bit = first; bit < last; bit += getenv("WEIRBOOK_ALL") ? 1 : 3, flips++) {
         bytes[bit / 8] ^= (uint8_t)(1U << bit % 8);
         file_write(s->path, bytes, length);
@@ -156,12 +171,44 @@ static void every_bit_of_a_raw_value_is_watched(void **state)
     assert_true(told_nothing > flips / 2);
 }
 
+/* The byte before the lengths says nothing: the row's number is its key. */
+static void every_bit_of_a_raw_value_is_watched(void **state)
+{
+    fill_bench(THIS);
+    watch(THIS, "suspended-solids2025-03-2108:01EFF1dried2.1311g", 13);
+}
+
+static void every_bit_of_an_answer_is_watched(void **state)
+{
+    fill_acts(THIS);
+    watch(THIS, "EFF-BOD5-rangeseen on the bench sheet", 3);
+}
+
+static void every_bit_of_an_act_is_watched(void **state)
+{
+    fill_acts(THIS);
+    watch(THIS, "it was the week before", 5);
+}
+
+static void every_bit_of_a_remark_is_watched(void **state)
+{
+    fill_acts(THIS);
+    watch(THIS, "eventwet-weather", 9);
+    watch(THIS, "EFFBOD5weekly-averagesixty millimetres of rain", 4); /* its days before it */
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test_setup_teardown(every_flip_that_changes_what_is_read_is_noticed,
                                         shelf_setup, shelf_teardown),
         cmocka_unit_test_setup_teardown(every_bit_of_a_raw_value_is_watched, shelf_setup,
+                                        shelf_teardown),
+        cmocka_unit_test_setup_teardown(every_bit_of_an_answer_is_watched, shelf_setup,
+                                        shelf_teardown),
+        cmocka_unit_test_setup_teardown(every_bit_of_an_act_is_watched, shelf_setup,
+                                        shelf_teardown),
+        cmocka_unit_test_setup_teardown(every_bit_of_a_remark_is_watched, shelf_setup,
                                         shelf_teardown),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);

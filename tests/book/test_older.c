@@ -19,10 +19,17 @@
 /* The newest head, as its program showed it. */
 static const char *const head_of_format_1 =
     "154964ce738c0f6d4de854419acec8c728f82d0502ff11ae52c468887031dd1d";
+static const char *const head_of_format_2 =
+    "a8c7108178a04e7f9577a9cde5aaf1cea5c91c0ed7bb50de53bc7e4e6d93c87f";
+
+static const char *head_of(const struct shelf *s)
+{
+    return s->format == 1 ? head_of_format_1 : head_of_format_2;
+}
 
 static const char *backup_of(struct shelf *s)
 {
-    return arena_print(s->arena, "%s.format-1.backup", s->path);
+    return arena_print(s->arena, "%s.format-%d.backup", s->path, s->format);
 }
 
 static bool stands(const char *path)
@@ -33,6 +40,11 @@ static bool stands(const char *path)
 static const char *format_in(struct shelf *s)
 {
     return raw_text(s, "PRAGMA user_version");
+}
+
+static const char *newest(struct shelf *s)
+{
+    return arena_print(s->arena, "%d", book_format());
 }
 
 static const char *told_of(struct shelf *s)
@@ -73,13 +85,13 @@ static void reading_works_on_a_copy_and_leaves_the_book_alone(void **state)
     struct book *b = shelf_open(s, BOOK_READ);
     assert_null(book_migrated(b));
     good(s, book_head(b, head, &s->fault));
-    assert_string_equal(head, head_of_format_1);
+    assert_string_equal(head, head_of(s));
     book_close(b);
-    assert_non_null(strstr(told_of(s), "batch 4 description"));
+    assert_non_null(strstr(told_of(s), "description \n"));
     assert_string_equal(shelf_check(s), "");
     same_file(s->path, before, length);
     assert_string_equal(files_beside(s), "plant.book ");
-    assert_string_equal(format_in(s), "1");
+    assert_string_equal(format_in(s), arena_print(s->arena, "%d", s->format));
 }
 
 static void what_is_read_cannot_be_written(void **state)
@@ -134,13 +146,15 @@ static void writing_keeps_a_backup_and_migrates(void **state)
     struct book *b = shelf_open(s, BOOK_WRITE);
     assert_string_equal(book_migrated(b), backup_of(s));
     good(s, book_head(b, head, &s->fault));
-    assert_string_equal(head, head_of_format_1);
+    assert_string_equal(head, head_of(s));
     book_close(b);
     same_file(backup_of(s), before, length);
     assert_int_equal(stat(backup_of(s), &st), 0);
     assert_int_equal(st.st_mode & 0777, 0640);
-    assert_string_equal(files_beside(s), "plant.book plant.book.format-1.backup ");
-    assert_string_equal(format_in(s), "2");
+    assert_string_equal(
+        files_beside(s),
+        arena_print(s->arena, "plant.book plant.book.format-%d.backup ", s->format));
+    assert_string_equal(format_in(s), newest(s));
     assert_string_equal(told_of(s), told);
     assert_string_equal(shelf_check(s), ""); /* the chain of the old batches among it */
     b = shelf_open(s, BOOK_WRITE);
@@ -161,6 +175,37 @@ static void a_migrated_book_takes_loads_and_bench_sheets(void **state)
                         "A");
     assert_string_equal(shelf_check(s), "");
     assert_non_null(strstr(told_of(s), "raw bench.csv:2 'suspended-solids' '2025-04-01' ''"));
+}
+
+/* Raw values of the old bench sheets among what is read; acts on old readings. */
+static void a_migrated_book_takes_acts(void **state)
+{
+    struct shelf *s = THIS;
+    struct fault f = {0};
+    struct plant_draft *draft;
+    struct book_withdrawn out;
+    int64_t batch;
+    struct reading old;
+    assert_non_null(strstr(told_of(s), "raw suspended-solids.csv:2 'suspended-solids'"));
+    struct book *b = shelf_open(s, BOOK_WRITE);
+    good(s, book_plant(b, s->arena, &draft, &s->plant, &s->fault));
+    const struct reading r = shelf_reading(s, "EFF BOD5 2025-03-04 21 mg/L");
+    good(s, book_amend(b, s->arena, s->plant, &r, "typing error", &tester, &old, &batch, &f));
+    assert_int_equal(batch, 7);
+    assert_string_equal(old.text, "20.0");
+    good(s, book_withdraw(b, s->plant, 3, "wrong file", &tester, &out, &batch, &f));
+    assert_int_equal(out.taken_back, 1); /* 2025-03-28 */
+    assert_int_equal(out.restored, 1);   /* 2025-03-18: <2 again */
+    assert_int_equal(out.left, 0);
+    good(s, book_withdraw(b, s->plant, 4, "a broken dish", &tester, &out, &batch, &f));
+    assert_int_equal(out.taken_back, 2);
+    book_close(b);
+    shelf_remark(s, REMARK_CAUSE, "", "2025-03-10", "2025-03-10", NULL, "a remark");
+    assert_string_equal(shelf_check(s), "");
+    assert_string_equal(raw_text(s, "SELECT group_concat(value) FROM readings WHERE point = 'EFF' "
+                                    "AND parameter = 'BOD5' AND date IN ('2025-03-04', "
+                                    "'2025-03-18', '2025-03-28')"),
+                        "21,<2");
 }
 
 /* The words of the newest program, in the place of those that stood there. */
@@ -185,7 +230,7 @@ static void a_backup_that_is_this_book_serves_again(void **state)
     file_write(backup_of(s), before, length);
     good(s, migrate(s, &s->fault));
     same_file(backup_of(s), before, length);
-    assert_string_equal(format_in(s), "2");
+    assert_string_equal(format_in(s), newest(s));
 }
 
 /* Whatever else stands in its place is left, and so is the book. */
@@ -240,7 +285,7 @@ static void a_damaged_book_is_not_migrated(void **state)
         struct fault f = {0};
         size_t length;
         remove(s->path);
-        shelf_put_format_1(s);
+        shelf_put_format(s, 1);
         tamper(s, cases[i].table, cases[i].sql);
         const uint8_t *before = file_bytes(s->arena, s->path, &length);
         assert_int_equal(migrate(s, &f), FAULT);
@@ -302,7 +347,7 @@ static bool is_whole(struct shelf *s, const uint8_t *before, size_t length, cons
                      !stands(arena_print(s->arena, "%s-journal", s->path));
     if (!untouched) /* else there is nothing that opening would put right */
         assert_string_equal(told_of(s), told);
-    bool migrated = strcmp(format_in(s), "2") == 0;
+    bool migrated = strcmp(format_in(s), newest(s)) == 0;
     if (migrated)
         assert_string_equal(shelf_check(s), "");
     else
@@ -478,6 +523,10 @@ static void several_at_once_migrate_it_once(void **state)
 int main(void)
 {
 #define SHELVED(test) cmocka_unit_test_setup_teardown(test, shelf_setup_format_1, shelf_teardown)
+#define SHELVED_2(test)                                                                            \
+    {                                                                                              \
+#test "_format_2", test, shelf_setup_format_2, shelf_teardown, NULL                        \
+    }
     const struct CMUnitTest tests[] = {
         SHELVED(reading_works_on_a_copy_and_leaves_the_book_alone),
         SHELVED(what_is_read_cannot_be_written),
@@ -496,6 +545,11 @@ int main(void)
         SHELVED(a_kill_at_any_file_operation_leaves_a_whole_book),
         SHELVED(a_full_disk_leaves_a_whole_book),
         SHELVED(several_at_once_migrate_it_once),
+        SHELVED_2(reading_works_on_a_copy_and_leaves_the_book_alone),
+        SHELVED_2(writing_keeps_a_backup_and_migrates),
+        SHELVED_2(a_migrated_book_takes_acts),
+        SHELVED_2(a_migration_that_fails_leaves_a_whole_book),
+        SHELVED_2(a_kill_at_any_file_operation_leaves_a_whole_book),
     };
     failing_install();
     return cmocka_run_group_tests(tests, NULL, NULL);

@@ -49,6 +49,12 @@ old_book() {
     { echo "PRAGMA page_size = 8192; PRAGMA synchronous = OFF;"; cat "$fixtures/../schema/001-book.sql" "$fixtures/../tests/book/format-1.sql"; } | sqlite3 old.book
 }
 
+# The same of format 2.
+old_book_2() {
+    { echo "PRAGMA page_size = 8192; PRAGMA synchronous = OFF;"
+        cat "$fixtures/../schema/001-book.sql" "$fixtures/../schema/002-bench.sql" "$fixtures/../tests/book/format-2.sql"; } | sqlite3 old.book
+}
+
 # The files of raw values beside the scripts of bench sheets.
 sheets=$(dirname "$common")/bench
 

@@ -191,6 +191,23 @@ static void add_process(struct sample *s)
     s->input.process_months = 1;
 }
 
+static void add_remark(struct sample *s)
+{
+    struct month_remark *r = arena_alloc(s->arena, sizeof *r);
+    *r = (struct month_remark){.number = 12,
+                               .kind = "event",
+                               .event = "wet-weather",
+                               .from = s->month.month + 16,
+                               .to = s->month.month + 17,
+                               .point = "EFF",
+                               .parameter = "TSS",
+                               .statistic = "weekly-average",
+                               .text = "=two days of rain",
+                               .who = "day shift",
+                               .when = "2025-03-19T06:00:00Z"};
+    s->input.remarks = (struct month_remarks){.at = r, .count = 1};
+}
+
 void sample_make(struct sample *s, const char *on)
 {
     struct fault f = {0};
@@ -220,6 +237,7 @@ void sample_make(struct sample *s, const char *on)
         .printed = sample_day("2025-04-10"),
     };
     add_process(s);
+    add_remark(s);
 }
 
 void sample_free(struct sample *s)

@@ -74,7 +74,7 @@ static void a_row_has_seventeen_cells_and_empty_ones_where_nothing_is_said(void 
                              .on = sample_day("2025-04-10"),
                              .rows = rows,
                              .count = 3};
-    char *csv = written_csv(report_permit_table(a, &m));
+    char *csv = written_csv(report_permit_table(a, &m, NULL));
     assert_string_equal(csv, HEADER
                         "001,EFF,CL2,concentration,daily,2025-03-01,2025-03-31,2025-03-18,0.031,"
                         "mg/L,max,0.019,exceeded,1,13,31,\n"
@@ -82,7 +82,7 @@ static void a_row_has_seventeen_cells_and_empty_ones_where_nothing_is_said(void 
                         "exceeded,,13,,\n"
                         ",EFF+EF2,FLOW,flow,monthly-total,2025-03-01,2025-03-31,,,MG,report,,"
                         "no-data,,13,,'=no figure for its condition\n");
-    char *json = written_json(report_permit_table(a, &m));
+    char *json = written_json(report_permit_table(a, &m, NULL));
     /* A figure is text, a limit and a count are numbers as written. */
     assert_non_null(strstr(json, "\"figure\":\"0.031\",\"unit\":\"mg/L\",\"bound\":\"max\","
                                  "\"limit\":0.019,\"verdict\":\"exceeded\",\"times\":1,"
@@ -99,7 +99,7 @@ static void the_worst_news_comes_first(void **state)
     (void)state;
     struct sample s;
     sample_make(&s, "2025-04-10");
-    char *text = written_text(report_permit_page(s.arena, s.plant, &s.month), 100, false);
+    char *text = written_text(report_permit_page(s.arena, s.plant, &s.month, NULL), 100, false);
     static const char *const order[] = {
         "Quill Ford Wastewater Plant, March 2025\n",
         "Permit XX0012345, outfall 001, discharging to Quill Creek\n",
@@ -154,7 +154,7 @@ static void every_verdict_has_its_word(void **state)
                                  .on = sample_day("2025-04-10"),
                                  .rows = &one,
                                  .count = 1};
-        char *text = written_text(report_permit_page(a, &bare, &m), 100, false);
+        char *text = written_text(report_permit_page(a, &bare, &m, NULL), 100, false);
         const char *expected = arena_print(a, "  %s\n", cases[i].word);
         if (strstr(text, expected) == NULL)
             fail_msg("no word %s in:\n%s", cases[i].word, text);
@@ -168,7 +168,7 @@ static void a_month_that_is_not_over_says_so(void **state)
     (void)state;
     struct sample s;
     sample_make(&s, "2025-03-12");
-    char *text = written_text(report_permit_page(s.arena, s.plant, &s.month), 100, false);
+    char *text = written_text(report_permit_page(s.arena, s.plant, &s.month, NULL), 100, false);
     assert_non_null(strstr(text, "Judged on 2025-03-12, before the end of the month"));
     assert_non_null(strstr(text, "open\n"));
     assert_null(strstr(text, "Exceedances\n"));
@@ -181,7 +181,7 @@ static void a_month_without_limits_says_so(void **state)
     (void)state;
     struct arena *a = arena_new();
     struct permit_month m = {.month = sample_day("2025-03-01"), .on = sample_day("2025-04-10")};
-    char *text = written_text(report_permit_page(a, &bare, &m), 100, false);
+    char *text = written_text(report_permit_page(a, &bare, &m, NULL), 100, false);
     assert_string_equal(text, "Quill Ford, March 2025\n"
                               "======================\n"
                               "Permit XX0012345, discharging to Quill Creek\n"
@@ -231,7 +231,7 @@ static void no_line_is_wider_than_the_page(void **state)
                              .rows = rows,
                              .count = 200,
                              .exceeded = 25};
-    const struct page *p = report_permit_page(a, &bare, &m);
+    const struct page *p = report_permit_page(a, &bare, &m, NULL);
     for (size_t i = 0; i < NELEM(widths); i++) {
         char *text = written_text(p, widths[i], false);
         assert_in_range(widest(text), 1, widths[i]);

@@ -48,7 +48,7 @@ def page_settings(book):
               f"{sheet.title}: no page numbers: {sheet.oddFooter.center.text!r}")
         check(sheet.oddHeader.left.text == "Quill Ford Wastewater Plant", f"{sheet.title}: {sheet.oddHeader.left.text!r}")
         check("March 2025" in sheet.oddHeader.center.text, f"{sheet.title}: no month at its head")
-    for name in ("Limits", "Daily", "Process", "Exceedances", "Set aside", "Corrections", "Rules and notes"):
+    for name in ("Limits", "Daily", "Process", "Exceedances", "Remarks", "Set aside", "Corrections", "Rules and notes"):
         sheet = book[name]
         check(sheet.print_title_rows in ("1:1", "$1:$1"), f"{name}: titles are not repeated: {sheet.print_title_rows}")
         check(sheet.freeze_panes in ("A2", "B2"), f"{name}: nothing frozen: {sheet.freeze_panes}")
@@ -131,6 +131,13 @@ def other_sheets(book):
           "Summary: the weekly average")
     sheet = book["Exceedances"]
     check([sheet.cell(r, 1).value for r in rows(sheet)] == found, "Exceedances: not those of the summary")
+    remarks = book["Remarks"]
+    row = find(remarks, remark=12)
+    told = [remarks.cell(row, column(remarks, c)).value for c in ("when", "about", "kind", "what is said", "by")]
+    check(told == ["2025-03-17 to 2025-03-18", "EFF TSS weekly-average", "event: wet-weather", "=two days of rain", "day shift"], f"Remarks: {told}")
+    for name in ("Limits", "Exceedances"):
+        notes = [book[name].cell(r, column(book[name], "note")).value for r in rows(book[name])]
+        check(notes.count("remark 12: =two days of rain") == 1, f"{name}: notes {notes}")
     process = book["Process"]
     check([process.cell(r, 2).value for r in (2, 3, 33, 34, 35, 36)] == [121.0, 124.5, 122.8, 121.0, 124.5, 2], "Process")
     check(process.cell(1, 2).value == "sludge volume index AB1 mL/g", f"Process: {process.cell(1, 2).value}")
@@ -142,7 +149,7 @@ def other_sheets(book):
 
 def main():
     book = openpyxl.load_workbook(sys.argv[1])
-    names = ["Summary", "Limits", "Daily", "Process", "Exceedances", "Set aside", "Corrections", "Rules and notes"]
+    names = ["Summary", "Limits", "Daily", "Process", "Exceedances", "Remarks", "Set aside", "Corrections", "Rules and notes"]
     check(book.sheetnames == names, f"sheets: {book.sheetnames}")
     check(book.properties.created == datetime.datetime(2025, 4, 10, 12), f"created {book.properties.created}")
     page_settings(book)

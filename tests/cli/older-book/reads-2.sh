@@ -1,0 +1,7 @@
+# A book of format 2: what stands here as expected was printed by the program of that format.
+old_book_2
+remember old.book
+"$weirbook" permit --month 2025-03 --as csv
+"$weirbook" export
+"$weirbook" export --set-aside
+unchanged
