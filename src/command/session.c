@@ -57,6 +57,14 @@ static enum status find_path(struct session *s, struct fault *f)
     return s->book_path ? OK : find_book(s, f);
 }
 
+void session_name(struct session *s, const char *path)
+{
+    const char **book =
+        arena_push(s->arena, &s->books, &s->book_count, &s->book_room, sizeof *book);
+    *book = path;
+    s->book_path = path;
+}
+
 enum status session_open(struct session *s, enum book_mode mode, struct fault *f)
 {
     if (find_path(s, f) != OK || book_open(&s->book, s->book_path, mode, f) != OK)
@@ -194,11 +202,11 @@ static enum status read_globals(struct session *s, int argc, char **argv, int *n
             help_program(s);
             *done = true;
         } else if ((strcmp(word, "-b") == 0 || strcmp(word, "--book") == 0) && i + 1 < argc) {
-            s->book_path = argv[++i];
+            session_name(s, argv[++i]);
         } else if (strncmp(word, "--book=", 7) == 0) {
-            s->book_path = word + 7;
+            session_name(s, word + 7);
         } else if (strncmp(word, "-b", 2) == 0 && word[2]) {
-            s->book_path = word + 2;
+            session_name(s, word + 2);
         } else {
             return fault_usage(f, "see: weirbook --help", "cannot use '%s' before a command", word);
         }
@@ -230,6 +238,8 @@ static enum status run_command(struct session *s, int argc, char **argv, struct 
         help_command(s, s->command);
         return OK;
     }
+    if (s->book_count > 1 && !s->command->fleet)
+        return fault_usage(f, "name one book", "%s works on one book at a time", s->command->name);
     return s->command->run(s, options, f);
 }
 
