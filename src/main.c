@@ -4,9 +4,10 @@
 #include "base/poison.h"
 
 static const struct command *const commands[] = {
-    &command_new,    &command_load,  &command_day,     &command_process, &command_waste,
-    &command_permit, &command_room,  &command_due,     &command_report,  &command_plant,
-    &command_export, &command_check, &command_formula, &command_help,    &command_completion,
+    &command_new,     &command_load,    &command_bench,  &command_day,
+    &command_process, &command_waste,   &command_permit, &command_room,
+    &command_due,     &command_report,  &command_plant,  &command_export,
+    &command_check,   &command_formula, &command_help,   &command_completion,
 };
 
 int main(int argc, char **argv)

@@ -128,6 +128,9 @@ void minute_write(int minute, char out[6]); /* "" for -1 */
 day_t clock_today(void);
 void clock_stamp(char out[21]); /* UTC, YYYY-MM-DDTHH:MM:SSZ */
 double clock_seconds(void);     /* monotonic, for the progress line only */
+/* A moment (seconds since 1970, UTC; -1: now) as the plant's wall clock shows it, YYYY-MM-DD HH:MM.
+ * For people and names of batches only. */
+void clock_wall(int64_t moment, char out[17]);
 
 /* ---- decimals as written ------------------------------------------------------------------
  * value = coefficient / 10^scale. "30.0" is 300 and 1: its zero is kept. At most 18 digits. */

@@ -26,6 +26,14 @@ void clock_stamp(char out[21])
         snprintf(out, 21, "1970-01-01T00:00:00Z");
 }
 
+void clock_wall(int64_t moment, char out[17])
+{
+    time_t when = moment < 0 ? time(NULL) : (time_t)moment;
+    struct tm t;
+    if (localtime_r(&when, &t) == NULL || strftime(out, 17, "%Y-%m-%d %H:%M", &t) == 0)
+        snprintf(out, 17, "1970-01-01 00:00");
+}
+
 double clock_seconds(void)
 {
     struct timespec t;

@@ -26,13 +26,16 @@ void csv_cell(struct text *t, const char *s, bool guard)
         text_add_char(t, '"');
     if (guard && starts_formula(s) && !is_number(s))
         text_add_char(t, '\'');
+    if (!quoted) {
+        text_add(t, s);
+        return;
+    }
     for (const char *p = s; *p != '\0'; p++) {
         if (*p == '"')
             text_add_char(t, '"');
         text_add_char(t, *p);
     }
-    if (quoted)
-        text_add_char(t, '"');
+    text_add_char(t, '"');
 }
 
 const char *csv_unguard(const char *s)

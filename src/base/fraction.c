@@ -16,6 +16,9 @@
 static_assert(sizeof(long) == sizeof(int64_t), "libgmp takes our whole numbers as long");
 static_assert(GMP_NUMB_BITS == 64, "a limb is 64 bits");
 
+/* Whole numbers of two limbs; gcc and clang have them on every machine with 64 bits. */
+__extension__ typedef unsigned __int128 wide;
+
 struct fraction {
     mpq_t q; /* read only */
     mp_limb_t limbs[];
@@ -48,18 +51,116 @@ void fraction_use_base_memory(void)
 
 /* ---- making ---- */
 
+/* Room for so many limbs above and below; they are to be filled in. */
+static struct fraction *fraction_new(struct arena *a, bool negative, size_t nn, size_t nd)
+{
+    struct fraction *f = arena_alloc(a, sizeof *f + (nn + nd) * sizeof(mp_limb_t));
+    f->limbs[nn + nd - 1] = 1; /* roinit looks for limbs that are 0 at the top */
+    if (nn > 0)
+        f->limbs[nn - 1] = 1;
+    mpz_roinit_n(mpq_numref(f->q), f->limbs, negative ? -(mp_size_t)nn : (mp_size_t)nn);
+    mpz_roinit_n(mpq_denref(f->q), f->limbs + nn, (mp_size_t)nd);
+    return f;
+}
+
 /* n and d have no common factor, d > 0. */
 static const struct fraction *keep(struct arena *a, const mpz_t n, const mpz_t d)
 {
     size_t nn = mpz_size(n);
     size_t nd = mpz_size(d);
-    struct fraction *f = arena_alloc(a, sizeof *f + (nn + nd) * sizeof(mp_limb_t));
+    struct fraction *f = fraction_new(a, mpz_sgn(n) < 0, nn, nd);
     memcpy(f->limbs, mpz_limbs_read(n), nn * sizeof(mp_limb_t));
     memcpy(f->limbs + nn, mpz_limbs_read(d), nd * sizeof(mp_limb_t));
-    mp_size_t signed_size = mpz_sgn(n) < 0 ? -(mp_size_t)nn : (mp_size_t)nn;
-    mpz_roinit_n(mpq_numref(f->q), f->limbs, signed_size);
-    mpz_roinit_n(mpq_denref(f->q), f->limbs + nn, (mp_size_t)nd);
     return f;
+}
+
+/* ---- small ones ----
+ * Nearly all readings and figures have a numerator and a denominator of one limb. Those are worked
+ * in whole numbers of 128 bits, without libgmp's allocations; what does not fit goes the long way.
+ * Both ways give the same fraction: lowest terms are unique. */
+
+struct small {
+    bool negative;
+    uint64_t n, d;
+};
+
+static bool is_small(const struct fraction *x, struct small *out)
+{
+    if (mpz_size(mpq_numref(x->q)) > 1 || mpz_size(mpq_denref(x->q)) > 1)
+        return false;
+    out->negative = mpq_sgn(x->q) < 0;
+    out->n = mpz_getlimbn(mpq_numref(x->q), 0);
+    out->d = mpz_getlimbn(mpq_denref(x->q), 0);
+    return true;
+}
+
+static size_t limbs_of(wide n)
+{
+    return n >> 64 ? 2 : n > 0;
+}
+
+static void put_limbs(mp_limb_t *at, wide n)
+{
+    at[0] = (mp_limb_t)n;
+    if (n >> 64)
+        at[1] = (mp_limb_t)(n >> 64);
+}
+
+/* As keep. */
+static const struct fraction *keep_wide(struct arena *a, bool negative, wide n, wide d)
+{
+    size_t nn = limbs_of(n);
+    struct fraction *f = fraction_new(a, negative, nn, limbs_of(d));
+    if (nn > 0)
+        put_limbs(f->limbs, n);
+    put_limbs(f->limbs + nn, d);
+    return f;
+}
+
+/* By halving: Knuth, The Art of Computer Programming 2, 4.5.2, algorithm B. gcd(0, b) is b. */
+static uint64_t common_factor(uint64_t a, uint64_t b)
+{
+    if (a == 0 || b == 0)
+        return a | b;
+    int twos = __builtin_ctzll(a | b);
+    a >>= __builtin_ctzll(a);
+    while (b != 0) {
+        b >>= __builtin_ctzll(b);
+        uint64_t low = a < b ? a : b;
+        b = a < b ? b - a : a - b;
+        a = low;
+    }
+    return a << twos;
+}
+
+/* x + y in lowest terms: Knuth 2, 4.5.1. NULL when it does not fit. */
+static const struct fraction *add_small(struct arena *a, struct small x, struct small y)
+{
+    uint64_t g = common_factor(x.d, y.d);
+    wide p = (wide)x.n * (y.d / g);
+    wide q = (wide)y.n * (x.d / g);
+    wide sum = p + q;
+    bool negative = x.negative;
+    if (x.negative != y.negative) {
+        negative = p >= q ? x.negative : y.negative;
+        sum = p >= q ? p - q : q - p;
+    } else if (sum < p) {
+        return NULL;
+    }
+    if (sum == 0)
+        return keep_wide(a, false, 0, 1);
+    uint64_t rest = g == 1 ? 1 : common_factor((uint64_t)(sum % g), g);
+    return keep_wide(a, negative, rest == 1 ? sum : sum / rest, (wide)(x.d / g) * (y.d / rest));
+}
+
+static const struct fraction *multiply_small(struct arena *a, struct small x, struct small y)
+{
+    if (x.n == 0 || y.n == 0)
+        return keep_wide(a, false, 0, 1);
+    uint64_t g = common_factor(x.n, y.d);
+    uint64_t h = common_factor(y.n, x.d);
+    return keep_wide(a, x.negative != y.negative, (wide)(x.n / g) * (y.n / h),
+                     (wide)(x.d / h) * (y.d / g));
 }
 
 /* Reduces the scratch number, keeps it, clears it. */
@@ -79,11 +180,10 @@ const struct fraction *fraction_from_int(struct arena *a, int64_t n)
 const struct fraction *fraction_from_ratio(struct arena *a, int64_t n, int64_t d)
 {
     assert(d != 0);
-    mpq_t q;
-    mpq_init(q);
-    mpz_set_si(mpq_numref(q), n);
-    mpz_set_si(mpq_denref(q), d);
-    return keep_reduced(a, q);
+    uint64_t above = n < 0 ? 0 - (uint64_t)n : (uint64_t)n;
+    uint64_t below = d < 0 ? 0 - (uint64_t)d : (uint64_t)d;
+    uint64_t g = common_factor(above, below);
+    return keep_wide(a, n != 0 && (n < 0) != (d < 0), above / g, below / g);
 }
 
 const struct fraction *fraction_from_decimal(struct arena *a, struct decimal d)
@@ -169,25 +269,39 @@ static const struct fraction *work(struct arena *a, operation *op, const struct 
 const struct fraction *fraction_add(struct arena *a, const struct fraction *x,
                                     const struct fraction *y)
 {
-    return work(a, mpq_add, x, y);
+    struct small p, q;
+    const struct fraction *sum = is_small(x, &p) && is_small(y, &q) ? add_small(a, p, q) : NULL;
+    return sum ? sum : work(a, mpq_add, x, y);
 }
 
 const struct fraction *fraction_subtract(struct arena *a, const struct fraction *x,
                                          const struct fraction *y)
 {
-    return work(a, mpq_sub, x, y);
+    struct small p, q;
+    const struct fraction *rest = NULL;
+    if (is_small(x, &p) && is_small(y, &q)) {
+        q.negative = !q.negative && q.n != 0;
+        rest = add_small(a, p, q);
+    }
+    return rest ? rest : work(a, mpq_sub, x, y);
 }
 
 const struct fraction *fraction_multiply(struct arena *a, const struct fraction *x,
                                          const struct fraction *y)
 {
+    struct small p, q;
+    if (is_small(x, &p) && is_small(y, &q))
+        return multiply_small(a, p, q);
     return work(a, mpq_mul, x, y);
 }
 
 const struct fraction *fraction_divide(struct arena *a, const struct fraction *x,
                                        const struct fraction *y)
 {
+    struct small p, q;
     assert(mpq_sgn(y->q) != 0);
+    if (is_small(x, &p) && is_small(y, &q))
+        return multiply_small(a, p, (struct small){q.negative, q.d, q.n});
     return work(a, mpq_div, x, y);
 }
 
@@ -205,6 +319,12 @@ const struct fraction *fraction_power(struct arena *a, const struct fraction *x,
 
 int fraction_compare(const struct fraction *x, const struct fraction *y)
 {
+    struct small p, q;
+    if (is_small(x, &p) && is_small(y, &q) && p.negative == q.negative) {
+        wide left = (wide)p.n * q.d, right = (wide)q.n * p.d;
+        int order = (left > right) - (left < right);
+        return p.negative ? -order : order;
+    }
     int c = mpq_cmp(x->q, y->q);
     return (c > 0) - (c < 0);
 }
@@ -259,6 +379,36 @@ static void round_to_units(mpz_t out, const struct fraction *x, int decimals, en
     mpz_clear(d);
 }
 
+/* 10^n for 0 to 19, which fits in 64 bits. */
+enum { SMALL_POWER_MOST = 19 };
+
+static uint64_t small_power(int n)
+{
+    uint64_t power = 1;
+    while (n-- > 0)
+        power *= 10;
+    return power;
+}
+
+/* round_to_units without its sign; false when it is not small. */
+static bool round_small(const struct fraction *x, int decimals, enum rounding rule, uint64_t *units)
+{
+    struct small s;
+    if (decimals < -SMALL_POWER_MOST || decimals > SMALL_POWER_MOST || !is_small(x, &s))
+        return false;
+    wide n = s.n, d = s.d;
+    if (decimals >= 0)
+        n *= small_power(decimals);
+    else
+        d *= small_power(-decimals);
+    wide whole = n / d, rest = n % d;
+    if (whole >= UINT64_MAX)
+        return false;
+    bool up = rest > d - rest || (rest == d - rest && (rule == ROUND_HALF_UP || whole % 2 == 1));
+    *units = (uint64_t)whole + up;
+    return true;
+}
+
 /* The fraction units / 10^decimals; clears the units. */
 static const struct fraction *keep_units(struct arena *a, mpz_t units, int decimals)
 {
@@ -279,9 +429,33 @@ const struct fraction *fraction_round(struct arena *a, const struct fraction *x,
     return keep_units(a, units, decimals);
 }
 
+static int digits_of(uint64_t n)
+{
+    int digits = 1;
+    while (n >= 10) {
+        n /= 10;
+        digits++;
+    }
+    return digits;
+}
+
+static long first_place_small(struct small s)
+{
+    int place = digits_of(s.n) - digits_of(s.d); /* or one less */
+    wide n = s.n, d = s.d;
+    if (place >= 0)
+        d *= small_power(place);
+    else
+        n *= small_power(-place);
+    return n >= d ? place : place - 1;
+}
+
 /* The place of the first figure that is not 0: 0 for 1 to 9.99, -1 for 0.1 to 0.999. */
 static long first_place(const struct fraction *x)
 {
+    struct small s;
+    if (is_small(x, &s))
+        return first_place_small(s);
     mpz_t n;
     mpz_t d;
     mpz_init(n);
@@ -308,6 +482,9 @@ int fraction_decimals_for(const struct fraction *x, int figures, enum rounding r
     if (mpq_sgn(x->q) == 0)
         return figures - 1;
     int decimals = (int)(figures - 1 - first_place(x));
+    uint64_t small_units;
+    if (figures <= SMALL_POWER_MOST && round_small(x, decimals, rule, &small_units))
+        return small_units >= small_power(figures) ? decimals - 1 : decimals;
     mpz_t units;
     mpz_t carried;
     mpz_init(units);
@@ -377,12 +554,10 @@ int root_compare(struct arena *a, const struct fraction *product, unsigned n,
 
 /* ---- writing ---- */
 
-/* Writes units / 10^decimals with that many decimals. */
-static void write_units(struct text *t, const mpz_t units, int decimals)
+/* Writes units / 10^decimals with that many decimals; `s`: the units' digits. */
+static void write_digits(struct text *t, const char *s, int decimals)
 {
-    char *digits = base_zeroed(mpz_sizeinbase(units, 10) + 2);
-    mpz_get_str(digits, 10, units);
-    const char *s = digits;
+    bool zero = text_equal(s, "0");
     if (*s == '-') {
         text_add_char(t, '-');
         s++;
@@ -399,15 +574,40 @@ static void write_units(struct text *t, const mpz_t units, int decimals)
             text_add_char(t, '0');
         text_add(t, count > after ? s + (count - after) : s);
     }
-    if (mpz_sgn(units) != 0) {
-        for (int i = decimals; i < 0; i++)
-            text_add_char(t, '0');
-    }
+    for (int i = decimals; i < 0 && !zero; i++)
+        text_add_char(t, '0');
+}
+
+static void write_units(struct text *t, const mpz_t units, int decimals)
+{
+    char *digits = base_zeroed(mpz_sizeinbase(units, 10) + 2);
+    mpz_get_str(digits, 10, units);
+    write_digits(t, digits, decimals);
     free(digits);
+}
+
+static void write_small(struct text *t, bool negative, uint64_t units, int decimals)
+{
+    char digits[24];
+    size_t at = sizeof digits - 1;
+    digits[at] = '\0';
+    negative = negative && units > 0;
+    do {
+        digits[--at] = (char)('0' + units % 10);
+        units /= 10;
+    } while (units > 0);
+    if (negative)
+        digits[--at] = '-';
+    write_digits(t, digits + at, decimals);
 }
 
 void fraction_write(struct text *t, const struct fraction *x, int decimals, enum rounding rule)
 {
+    uint64_t small_units;
+    if (round_small(x, decimals, rule, &small_units)) {
+        write_small(t, mpq_sgn(x->q) < 0, small_units, decimals);
+        return;
+    }
     mpz_t units;
     mpz_init(units);
     round_to_units(units, x, decimals, rule);

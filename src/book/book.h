@@ -26,13 +26,18 @@ MUST_USE enum status book_create(const char *path, const struct plant_draft *dra
 /* Opens a book. Says so, and touches nothing, when the file is no book, is a newer book, has hard
  * links, holds triggers that are not ours, or (BOOK_WRITE) cannot be written. A book that another
  * process is writing is waited for (5 s), then a fault names it. BOOK_READ never writes but to roll
- * back what a killed load left. */
+ * back what a killed load left.
+ * A book of an older format: BOOK_READ works on a copy brought to the newest format, which is gone
+ * when the book is closed. BOOK_WRITE copies the book to BOOK.format-N.backup (a fault when that
+ * stands there already and is not the same book), then migrates it; book_migrated says so. */
 MUST_USE enum status book_open(struct book **out, const char *path, enum book_mode mode,
                                struct fault *f);
 /* What a person should hear about where the book lies, in one line; NULL mostly. A network drive
  * may not keep locks, and two writers could then spoil a book (SQLite, "How to corrupt",
  * section 2.1). */
 const char *book_warning(const struct book *b);
+/* The backup's name when opening migrated the book; else NULL. */
+const char *book_migrated(const struct book *b);
 void book_close(struct book *b); /* accepts NULL; abandons a load that was not ended */
 const char *book_sqlite_version(void);
 int book_format(void); /* the newest format this program writes: user_version */
@@ -86,6 +91,12 @@ MUST_USE enum status book_load_reading(struct book *b, const struct reading *r,
                                        struct fault *f);
 MUST_USE enum status book_load_aside(struct book *b, const struct row_text *row, enum reason reason,
                                      const char *explanation, struct fault *f);
+/* The same as book_load_begin for a bench sheet: its batch is of kind "bench", and book_load_raw
+ * keeps its raw values (every row of the file, in order, those without a result too). The chain
+ * hashes them. */
+MUST_USE enum status book_bench_begin(struct book *b, const struct plant *plant,
+                                      const struct author *author, bool revise, struct fault *f);
+MUST_USE enum status book_load_raw(struct book *b, const struct raw_value *raw, struct fault *f);
 /* Writes the batch with its counts and hash and commits; rows must equal the four counts. */
 MUST_USE enum status book_load_end(struct book *b, const struct book_source *source, long rows,
                                    struct book_counts *counts, int64_t *batch, struct fault *f);
@@ -110,6 +121,23 @@ MUST_USE enum status book_extent(struct book *b, day_t *first, day_t *last, stru
 typedef enum status book_reading_sink(void *context, const struct reading *r, struct fault *f);
 MUST_USE enum status book_each(struct book *b, const struct plant *plant, day_t first, day_t last,
                                book_reading_sink *sink, void *context, struct fault *f);
+
+typedef enum status book_raw_sink(void *context, const struct raw_value *raw, struct fault *f);
+/* The raw values behind a bench sheet's reading, in the order of their file: those of its sheet,
+ * date, time and point, and those of the sheet and date that have no point. None for a reading that
+ * was loaded from a readings file. */
+MUST_USE enum status book_raw_of(struct book *b, int64_t batch, long line, book_raw_sink *sink,
+                                 void *context, struct fault *f);
+/* The newest raw value of an argument at a sheet, point and run, in the arena; NULL when there is
+ * none. Touches only that row (by index). */
+MUST_USE enum status book_raw_last(struct book *b, struct arena *a, const char *sheet,
+                                   const char *point, const char *run, const char *argument,
+                                   const char **value, const char **unit, struct fault *f);
+/* The newest reading in force of a point and parameter before a day (or on it, when `before` is
+ * DAY_NONE: of all); *found is false when there is none. Texts live in the arena. */
+MUST_USE enum status book_last(struct book *b, struct arena *a, const struct plant *plant,
+                               int point, int parameter, const char *sample, day_t before,
+                               bool *found, struct reading *out, struct fault *f);
 
 struct book_aside {
     int64_t batch;
@@ -138,7 +166,7 @@ MUST_USE enum status book_revisions(struct book *b, const struct plant *plant, d
 
 struct book_batch {
     int64_t batch;
-    const char *file, *when, *who, *kind; /* kind: "load", "description" */
+    const char *file, *when, *who, *kind; /* kind: "load", "bench", "description" */
     const char *reason;
     struct book_counts counts;
     char head[2 * DIGEST_BYTES + 1];
@@ -153,7 +181,7 @@ MUST_USE enum status book_head(struct book *b, char out[2 * DIGEST_BYTES + 1], s
 
 struct book_finding {
     const char *what; /* "pages", "foreign keys", "schema", "chain", "batch", "reading",
-                       * "row set aside", "description" */
+                       * "row set aside", "raw value", "description" */
     bool good;
     int64_t batch;    /* 0 when none */
     const char *file; /* "" when none */

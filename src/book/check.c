@@ -1,6 +1,6 @@
 /* check: proving a book sound. SQLite proves its pages; the rest is walked batch by batch, every
- * reading, row set aside and row of a description against its mark, and every batch against the
- * chain. */
+ * reading, row set aside, raw value and row of a description against its mark, and every batch
+ * against the chain. */
 #include "book/store.h"
 
 #include <stdlib.h>
@@ -8,9 +8,10 @@
 
 #include "base/poison.h"
 
-enum part { PAGES, KEYS, SCHEMA, CHAIN, BATCH, READING, ASIDE, DESCRIPTION, PARTS };
-static const char *const part_words[PARTS] = {
-    "pages", "foreign keys", "schema", "chain", "batch", "reading", "row set aside", "description"};
+enum part { PAGES, KEYS, SCHEMA, CHAIN, BATCH, READING, ASIDE, RAW, DESCRIPTION, PARTS };
+static const char *const part_words[PARTS] = {"pages",         "foreign keys", "schema",
+                                              "chain",         "batch",        "reading",
+                                              "row set aside", "raw value",    "description"};
 
 /* More of one kind are counted, not told one by one. */
 enum { TOLD_MOST = 20 };
@@ -26,10 +27,10 @@ struct check {
     struct arena *arena;
     struct names names;
     struct pack pack;
-    struct digest *content, *asides, *head;
+    struct digest *content, *asides, *raws, *head;
     struct stored_batch batch;     /* the one that is walked */
     uint8_t running[DIGEST_BYTES]; /* the head so far */
-    int64_t next_batch, next_reading, next_aside;
+    int64_t next_batch, next_reading, next_aside, next_raw;
     int64_t count[PARTS], bad[PARTS];
     int64_t newer;     /* readings that replaced one */
     int64_t rows_left; /* of the description that is walked */
@@ -339,12 +340,50 @@ static enum status walk_asides(struct check *c, int64_t first, int64_t count, st
     return OK;
 }
 
+static enum status tell_raw(struct check *c, const struct stored_raw *s)
+{
+    return tell(c, RAW, c->batch.id, c->batch.file, s->line,
+                "%s of sheet %s, '%s' (raw value %lld), is not what was loaded" GO_BACK,
+                escaped(c, s->cell[RAW_ARGUMENT]), escaped(c, s->cell[RAW_SHEET]),
+                escaped(c, s->cell[RAW_VALUE]), (long long)s->id);
+}
+
+static enum status walk_raws(struct check *c, int64_t first, int64_t count, struct fault *f)
+{
+    sqlite3_stmt *s = NULL;
+    struct stored_raw row;
+    bool more;
+    int64_t next = first;
+    if (book_statement(c->book, CHECK_RAW, &s, f) != OK)
+        return FAULT;
+    bind_int(s, 1, first);
+    bind_int(s, 2, first + count - 1);
+    for (;;) {
+        if (book_step(c->book, s, &more, f) != OK)
+            return FAULT;
+        if (!more)
+            break;
+        row_raw(s, &row);
+        pack_raw(&c->pack, &row);
+        digest_add(c->raws, c->pack.at, c->pack.length);
+        c->count[RAW]++;
+        next++;
+        if (pack_mark(&c->pack) != row.mark && tell_raw(c, &row) != OK)
+            return FAULT;
+    }
+    if (next != first + count)
+        return tell(c, RAW, c->batch.id, c->batch.file, 0,
+                    "%lld of its %lld raw values are missing" GO_BACK,
+                    (long long)(first + count - next), (long long)count);
+    return OK;
+}
+
 /* Counts that cannot be are not followed: the batch itself is reported by its hash. */
 static bool counts_can_be(const struct stored_batch *s)
 {
     const int64_t most = INT64_C(1) << 40;
     return s->accepted >= 0 && s->accepted < most && s->revised >= 0 && s->revised < most &&
-           s->aside >= 0 && s->aside < most;
+           s->aside >= 0 && s->aside < most && s->raw_values >= 0 && s->raw_values < most;
 }
 
 static enum status walk_load(struct check *c, struct fault *f)
@@ -354,9 +393,11 @@ static enum status walk_load(struct check *c, struct fault *f)
         return OK;
     int64_t readings = s->accepted + s->revised;
     if (walk_readings(c, c->next_reading, readings, f) != OK ||
-        walk_asides(c, c->next_aside, s->aside, f) != OK)
+        walk_asides(c, c->next_aside, s->aside, f) != OK ||
+        walk_raws(c, c->next_raw, s->raw_values, f) != OK)
         return FAULT;
     c->next_reading += readings;
+    c->next_raw += s->raw_values;
     c->next_aside += s->aside;
     return OK;
 }
@@ -413,6 +454,9 @@ enum {
     AT_DESCRIPTION,
     AT_DESCRIPTION_REASON,
     AT_DESCRIPTION_ROWS,
+    AT_BENCH,
+    AT_RAW_VALUES,
+    AT_FIRST_RAW,
     AT_PREVIOUS,
     AT_HEAD
 };
@@ -439,6 +483,9 @@ static void read_batch(struct check *c, sqlite3_stmt *s)
         .aside = sqlite3_column_int64(s, AT_ASIDE),
         .first_reading = sqlite3_column_int64(s, AT_FIRST_READING),
         .first_aside = sqlite3_column_int64(s, AT_FIRST_ASIDE),
+        .is_bench = sqlite3_column_type(s, AT_BENCH) != SQLITE_NULL,
+        .raw_values = sqlite3_column_int64(s, AT_RAW_VALUES),
+        .first_raw = sqlite3_column_int64(s, AT_FIRST_RAW),
     };
     (void)column_digest(s, AT_DIGEST,
                         out->digest); /* one that is none stays zero, and the head differs */
@@ -446,11 +493,12 @@ static void read_batch(struct check *c, sqlite3_stmt *s)
 
 static enum status follow_chain(struct check *c, sqlite3_stmt *s)
 {
-    const struct stored_batch *b = &c->batch;
+    struct stored_batch *b = &c->batch;
     uint8_t previous[DIGEST_BYTES], stored[DIGEST_BYTES], head[DIGEST_BYTES], content[DIGEST_BYTES],
         asides[DIGEST_BYTES];
     digest_end(c->content, content);
     digest_end(c->asides, asides);
+    digest_end(c->raws, b->raw_digest);
     if (!column_digest(s, AT_PREVIOUS, previous) || !column_digest(s, AT_HEAD, stored))
         return tell(c, CHAIN, b->id, b->file, 0, "it has no link in the chain" GO_BACK);
     if (memcmp(previous, c->running, DIGEST_BYTES) != 0 &&
@@ -474,8 +522,8 @@ static enum status walk_batch(struct check *c, sqlite3_stmt *s, struct fault *f)
              (long long)c->next_batch) != OK)
         return FAULT;
     c->next_batch = b->id + 1;
-    if (b->is_load == b->is_description &&
-        tell(c, BATCH, b->id, b->file, 0, "nothing says what came with it" GO_BACK) != OK)
+    bool told = b->is_load != b->is_description && b->is_bench == text_equal(b->kind, "bench");
+    if (!told && tell(c, BATCH, b->id, b->file, 0, "nothing says what came with it" GO_BACK) != OK)
         return FAULT;
     if (b->is_load && walk_load(c, f) != OK)
         return FAULT;
@@ -522,7 +570,7 @@ static enum status check_chain(struct check *c, struct fault *f)
     sqlite3_stmt *s = NULL;
     bool row = false;
     enum status rc = OK;
-    c->next_batch = c->next_reading = c->next_aside = 1;
+    c->next_batch = c->next_reading = c->next_aside = c->next_raw = 1;
     TRY(names_begin(c->book, &c->names, c->arena, NULL, true, f));
     TRY(book_statement(c->book, CHECK_BATCHES, &s, f));
     for (;;) {
@@ -534,6 +582,7 @@ static enum status check_chain(struct check *c, struct fault *f)
     TRY(check_revisions(c, f));
     TRY(check_strays(c, LAST_READING, READING, c->next_reading, f));
     TRY(check_strays(c, LAST_ASIDE, ASIDE, c->next_aside, f));
+    TRY(check_strays(c, LAST_RAW, RAW, c->next_raw, f));
 done:
     if (s)
         sqlite3_reset(s);
@@ -570,29 +619,68 @@ static enum status sum_up(struct check *c)
     return OK;
 }
 
-enum status book_check(struct book *b, book_finding_sink *sink, void *context, struct fault *f)
+struct part_check {
+    enum part part;
+    enum status (*run)(struct check *c, struct fault *f);
+};
+
+static struct check *check_new(struct arena *a, struct book *b, book_finding_sink *sink,
+                               void *context, struct fault *f)
 {
-    static const struct {
-        enum part part;
-        enum status (*run)(struct check *c, struct fault *f);
-    } parts[] = {
-        {PAGES, check_pages}, {KEYS, check_keys}, {SCHEMA, check_schema}, {CHAIN, check_chain}};
-    struct arena *a = arena_new();
     struct check *c = arena_alloc(a, sizeof *c);
-    enum status rc = OK;
     *c = (struct check){.book = b, .sink = sink, .context = context, .fault = f, .arena = a};
     c->content = digest_new(a);
     c->asides = digest_new(a);
+    c->raws = digest_new(a);
     c->head = digest_new(a);
     pack_init(&c->pack, a);
-    for (size_t i = 0; i < NELEM(parts); i++) {
+    return c;
+}
+
+static enum status run_parts(struct check *c, const struct part_check *parts, size_t count)
+{
+    for (size_t i = 0; i < count; i++) {
         struct fault why = {.set = false};
-        b->last_code = SQLITE_OK;
-        if (parts[i].run(c, &why) != OK)
-            TRY(cannot_walk(c, parts[i].part, &why));
+        c->book->last_code = SQLITE_OK;
+        if (parts[i].run(c, &why) != OK && cannot_walk(c, parts[i].part, &why) != OK)
+            return FAULT;
     }
+    return OK;
+}
+
+enum status book_check(struct book *b, book_finding_sink *sink, void *context, struct fault *f)
+{
+    static const struct part_check parts[] = {
+        {PAGES, check_pages}, {KEYS, check_keys}, {SCHEMA, check_schema}, {CHAIN, check_chain}};
+    struct arena *a = arena_new();
+    struct check *c = check_new(a, b, sink, context, f);
+    enum status rc = OK;
+    TRY(run_parts(c, parts, NELEM(parts)));
     TRY(sum_up(c));
 done:
+    names_end(&c->names);
+    arena_free(a);
+    return rc;
+}
+
+static enum status first_finding(void *context, const struct book_finding *x, struct fault *f)
+{
+    const struct book *b = context;
+    const char *more = strstr(x->note, GO_BACK); /* the fault says so itself */
+    int length = more ? (int)(more - x->note) : (int)strlen(x->note);
+    if (x->batch == 0)
+        return book_damaged(b, f, "%s: %.*s", x->what, length, x->note);
+    return book_damaged(b, f, "%s, batch %lld, %s:%ld: %.*s", x->what, (long long)x->batch, x->file,
+                        x->line, length, x->note);
+}
+
+enum status book_proved(struct book *b, struct fault *f)
+{
+    static const struct part_check parts[] = {
+        {PAGES, check_pages}, {KEYS, check_keys}, {CHAIN, check_chain}};
+    struct arena *a = arena_new();
+    struct check *c = check_new(a, b, first_finding, b, f);
+    enum status rc = run_parts(c, parts, NELEM(parts));
     names_end(&c->names);
     arena_free(a);
     return rc;

@@ -15,8 +15,8 @@ struct load {
     bool revise;
     struct stored_batch batch;
     struct book_counts counts;
-    int64_t next_reading, next_aside;
-    struct digest *readings, *asides; /* running over all that was added */
+    int64_t next_reading, next_aside, next_raw;
+    struct digest *readings, *asides, *raws; /* running over all that was added */
     struct pack pack;
     int64_t *point, *parameter, *unit; /* codes by index; 0: not met yet */
     struct codes series, details;
@@ -53,6 +53,7 @@ static struct load *load_new(const struct plant *plant, bool revise)
     l->revise = revise;
     l->readings = digest_new(a);
     l->asides = digest_new(a);
+    l->raws = digest_new(a);
     l->point = arena_alloc(a, (plant->point_count + 1) * sizeof *l->point);
     l->parameter = arena_alloc(a, (plant->parameter_count + 1) * sizeof *l->parameter);
     l->unit = arena_alloc(a, (unit_count() + 1) * sizeof *l->unit);
@@ -79,15 +80,15 @@ void load_drop(struct book *b)
     arena_free(l->arena);
 }
 
-enum status book_load_begin(struct book *b, const struct plant *plant, const struct author *author,
-                            bool revise, struct fault *f)
+static enum status begin(struct book *b, const char *kind, const struct plant *plant,
+                         const struct author *author, bool revise, struct fault *f)
 {
     enum status rc = OK;
     assert(!b->load);
     TRY(book_begin(b, f));
     struct load *l = load_new(plant, revise);
     b->load = l;
-    TRY(batch_add(b, &l->batch, "load", author, f));
+    TRY(batch_add(b, &l->batch, kind, author, f));
     l->batch.at = arena_text(l->arena, author->when);
     l->batch.who = arena_text(l->arena, author->who);
     l->batch.is_load = true;
@@ -105,6 +106,27 @@ done:
     if (rc != OK)
         book_rollback(b);
     return rc;
+}
+
+enum status book_load_begin(struct book *b, const struct plant *plant, const struct author *author,
+                            bool revise, struct fault *f)
+{
+    return begin(b, "load", plant, author, revise, f);
+}
+
+enum status book_bench_begin(struct book *b, const struct plant *plant, const struct author *author,
+                             bool revise, struct fault *f)
+{
+    if (begin(b, "bench", plant, author, revise, f) != OK)
+        return FAULT;
+    struct load *l = b->load;
+    if (last_id(b, LAST_RAW, &l->next_raw, f) != OK) {
+        book_rollback(b);
+        return FAULT;
+    }
+    l->batch.is_bench = true;
+    l->batch.first_raw = ++l->next_raw;
+    return OK;
 }
 
 void book_load_abandon(struct book *b)
@@ -131,6 +153,19 @@ static enum status add_load(struct book *b, const struct stored_batch *s, struct
     bind_int(q, 11, s->aside);
     bind_int(q, 12, s->first_reading);
     bind_int(q, 13, s->first_aside);
+    return book_run(b, q, f);
+}
+
+static enum status add_bench(struct book *b, struct load *l, struct fault *f)
+{
+    sqlite3_stmt *q = NULL;
+    if (book_statement(b, ADD_BENCH, &q, f) != OK)
+        return FAULT;
+    l->batch.raw_values = l->next_raw - l->batch.first_raw;
+    digest_end(l->raws, l->batch.raw_digest);
+    bind_int(q, 1, l->batch.id);
+    bind_int(q, 2, l->batch.raw_values);
+    bind_int(q, 3, l->batch.first_raw);
     return book_run(b, q, f);
 }
 
@@ -166,6 +201,8 @@ enum status book_load_end(struct book *b, const struct book_source *source, long
     }
     describe_batch(l, source);
     TRY(add_load(b, &l->batch, f));
+    if (l->batch.is_bench)
+        TRY(add_bench(b, l, f));
     digest_end(l->readings, readings);
     digest_end(l->asides, asides);
     TRY(chain_add(b, &l->pack, l->readings, &l->batch, readings, asides, f));
@@ -625,6 +662,32 @@ enum status book_load_aside(struct book *b, const struct row_text *row, enum rea
     digest_add(l->asides, l->pack.at, l->pack.length);
     l->next_aside++;
     l->counts.aside++;
+    return OK;
+}
+
+/* ---- one raw value of a bench sheet ---- */
+
+enum status book_load_raw(struct book *b, const struct raw_value *raw, struct fault *f)
+{
+    struct load *l = b->load;
+    sqlite3_stmt *q = NULL;
+    assert(l && l->batch.is_bench);
+    struct stored_raw s = {.id = l->next_raw, .batch = l->batch.id, .line = raw->line};
+    if (book_statement(b, ADD_RAW, &q, f) != OK)
+        return FAULT;
+    bind_int(q, 1, s.id);
+    bind_int(q, 2, s.batch);
+    bind_int(q, 3, s.line);
+    for (int i = 0; i < RAW_COLUMNS; i++) {
+        s.cell[i] = raw->cell[i] ? raw->cell[i] : "";
+        bind_text(q, 4 + i, s.cell[i]);
+    }
+    pack_raw(&l->pack, &s);
+    bind_int(q, 4 + RAW_COLUMNS, pack_mark(&l->pack));
+    if (book_run(b, q, f) != OK)
+        return FAULT;
+    digest_add(l->raws, l->pack.at, l->pack.length);
+    l->next_raw++;
     return OK;
 }
 

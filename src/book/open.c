@@ -212,6 +212,7 @@ done:
 enum status book_open(struct book **out, const char *path, enum book_mode mode, struct fault *f)
 {
     sqlite3 *db = NULL;
+    int format = 0;
     enum status rc = OK;
     *out = NULL;
     struct book *b = NULL;
@@ -232,6 +233,9 @@ enum status book_open(struct book **out, const char *path, enum book_mode mode, 
     if (mode == BOOK_WRITE)
         TRY(writing_settings(b, f));
     TRY(first_look(b, f));
+    TRY(book_format_of(b, &format, f));
+    if (format < book_format())
+        TRY(mode == BOOK_READ ? older_copied(b, f) : older_migrated(b, f));
     look_at_drive(b);
     *out = b;
 done:

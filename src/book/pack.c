@@ -136,6 +136,17 @@ void pack_aside(struct pack *p, const struct stored_aside *s)
     pack_text(p, s->explanation);
 }
 
+void pack_raw(struct pack *p, const struct stored_raw *s)
+{
+    pack_clear(p);
+    pack_bytes(p, "b", 1);
+    pack_int(p, s->id);
+    pack_int(p, s->batch);
+    pack_int(p, s->line);
+    for (size_t i = 0; i < RAW_COLUMNS; i++)
+        pack_text(p, s->cell[i]);
+}
+
 void pack_row(struct pack *p, const struct stored_row *s)
 {
     const struct plant_layout *layout = plant_layout(s->kind);
@@ -190,6 +201,11 @@ void pack_head(struct pack *p, struct digest *d, const struct stored_batch *s,
         pack_load(p, s);
     pack_bytes(p, content, DIGEST_BYTES);
     pack_bytes(p, asides, DIGEST_BYTES);
+    if (s->is_bench) {
+        pack_int(p, s->raw_values);
+        pack_int(p, s->first_raw);
+        pack_bytes(p, s->raw_digest, DIGEST_BYTES);
+    }
     digest_add(d, p->at, p->length);
     digest_end(d, head);
 }

@@ -56,6 +56,13 @@ struct stored_aside {
 };
 void pack_aside(struct pack *p, const struct stored_aside *s);
 
+/* A raw value of a bench sheet. */
+struct stored_raw {
+    int64_t id, batch, line, mark;
+    const char *cell[RAW_COLUMNS];
+};
+void pack_raw(struct pack *p, const struct stored_raw *s);
+
 /* A row of a description file. */
 struct stored_row {
     int64_t batch, place, builtin, line, mark;
@@ -76,9 +83,14 @@ struct stored_batch {
     int64_t bytes, accepted, present, revised, aside, first_reading, first_aside;
     uint8_t digest[DIGEST_BYTES];
     bool is_load, is_description; /* which of the two tables has a row for it */
+    /* a bench sheet, which is a load too */
+    bool is_bench; /* table bench has a row for it */
+    int64_t raw_values, first_raw;
+    uint8_t raw_digest[DIGEST_BYTES]; /* SHA-256 of its raw values; not kept in a table */
 };
 /* The head after a batch. `content`: SHA-256 of its readings, or of its description's rows;
- * `asides`: of its rows set aside (of nothing for a description). */
+ * `asides`: of its rows set aside (of nothing for a description). What a bench sheet adds comes
+ * last: other batches are packed as in format 1. */
 void pack_head(struct pack *p, struct digest *d, const struct stored_batch *s,
                const uint8_t previous[DIGEST_BYTES], const uint8_t content[DIGEST_BYTES],
                const uint8_t asides[DIGEST_BYTES], uint8_t head[DIGEST_BYTES]);

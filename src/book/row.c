@@ -121,6 +121,17 @@ enum status row_reading(struct book *b, struct names *n, struct pack *p, const s
     return names_file(b, n, s->batch, &out->file, f);
 }
 
+void row_raw(sqlite3_stmt *s, struct stored_raw *out)
+{
+    enum { FIRST_CELL = 3, MARK = FIRST_CELL + RAW_COLUMNS };
+    *out = (struct stored_raw){.id = sqlite3_column_int64(s, 0),
+                               .batch = sqlite3_column_int64(s, 1),
+                               .line = sqlite3_column_int64(s, 2),
+                               .mark = sqlite3_column_int64(s, MARK)};
+    for (int i = 0; i < RAW_COLUMNS; i++)
+        out->cell[i] = column_text(s, FIRST_CELL + i);
+}
+
 void row_aside(sqlite3_stmt *s, struct stored_aside *out)
 {
     enum { FIRST_CELL = 5, RAW = FIRST_CELL + LONG_COLUMNS };

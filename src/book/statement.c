@@ -16,6 +16,11 @@
     "a.reason, "                                                                                   \
     "a.explanation, a.mark"
 
+#define RAW_VALUE_COLUMNS                                                                          \
+    "v.id, v.batch, v.line, v.sheet, v.date, v.time, v.point, v.run, v.argument, v.value, "        \
+    "v.unit, "                                                                                     \
+    "v.mark"
+
 #define ROW_COLUMNS "batch, place, builtin, file, line, mark, "
 
 const char *const book_sql[] = {
@@ -79,10 +84,17 @@ const char *const book_sql[] = {
         "value, unit, sample, method, analyst, collected_by, analyzed, mdl, rl, note, raw, reason, "
         "explanation, mark) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13, ?14, "
         "?15, ?16, ?17, ?18, ?19, ?20, ?21, ?22, ?23)",
+    [LAST_RAW] = "SELECT coalesce(max(id), 0) FROM bench_value",
+    [ADD_RAW] =
+        "INSERT INTO bench_value (id, batch, line, sheet, date, time, point, run, argument, "
+        "value, unit, mark) VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12)",
+    [ADD_BENCH] = "INSERT INTO bench (batch, raw_values, first_raw) VALUES (?1, ?2, ?3)",
 
     [SERIES_SPAN] = "SELECT " READING_COLUMNS " FROM reading r "
                     "WHERE r.series = ?1 AND r.day BETWEEN ?2 AND ?3 "
                     "ORDER BY r.day, r.minute, r.version",
+    [ALL_OF_DAYS] = "SELECT " READING_COLUMNS " FROM reading r NOT INDEXED "
+                    "WHERE r.day BETWEEN ?1 AND ?2 ORDER BY r.id",
     [SERIES_BEFORE] =
         "SELECT " READING_COLUMNS " FROM reading r WHERE r.series = ?1 AND r.day < ?2 "
         "ORDER BY r.day DESC, r.minute DESC, r.version DESC",
@@ -105,6 +117,13 @@ const char *const book_sql[] = {
     [ASIDES_OF_DAYS] = "SELECT " ASIDE_COLUMNS " FROM aside a "
                        "WHERE a.day BETWEEN ?1 AND ?2 OR a.day IS NULL ORDER BY a.id",
     [ASIDES_ALL] = "SELECT " ASIDE_COLUMNS " FROM aside a ORDER BY a.id",
+    [RAW_OF_LINE] = "SELECT " RAW_VALUE_COLUMNS " FROM bench_value v "
+                    "WHERE v.batch = ?1 AND v.line = ?2 ORDER BY v.id LIMIT 1",
+    [RAW_OF_BATCH] = "SELECT " RAW_VALUE_COLUMNS " FROM bench_value v "
+                     "WHERE v.batch = ?1 ORDER BY v.id",
+    [RAW_NEWEST] = "SELECT " RAW_VALUE_COLUMNS " FROM bench_value v WHERE v.sheet = ?1 "
+                   "AND v.point = ?2 AND v.run = ?3 AND v.argument = ?4 "
+                   "ORDER BY v.id DESC LIMIT 1",
 
     [DESCRIPTION_IN_FORCE] = "SELECT coalesce(max(batch), 0) FROM description",
     [ADD_ROW + PLANT_FIELDS] = "INSERT INTO plant_field (" ROW_COLUMNS "field, value) "
@@ -136,6 +155,8 @@ const char *const book_sql[] = {
     [ADD_ROW + PLANT_PROCESS] = "INSERT INTO plant_process (" ROW_COLUMNS
                                 "name, at, parameter, formula, argument, source, unit) "
                                 "VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9, ?10, ?11, ?12, ?13)",
+    [ADD_ROW + PLANT_ROUND] = "INSERT INTO plant_round (" ROW_COLUMNS "point, parameter, sample) "
+                              "VALUES (?1, ?2, ?3, ?4, ?5, ?6, ?7, ?8, ?9)",
     [GET_ROWS + PLANT_FIELDS] = "SELECT " ROW_COLUMNS "field, value FROM plant_field "
                                 "WHERE batch = ?1 ORDER BY place",
     [GET_ROWS + PLANT_POINTS] = "SELECT " ROW_COLUMNS "point, name, role, outfall FROM plant_point "
@@ -159,6 +180,8 @@ const char *const book_sql[] = {
     [GET_ROWS + PLANT_PROCESS] =
         "SELECT " ROW_COLUMNS "name, at, parameter, formula, argument, source, unit "
         "FROM plant_process WHERE batch = ?1 ORDER BY place",
+    [GET_ROWS + PLANT_ROUND] = "SELECT " ROW_COLUMNS "point, parameter, sample FROM plant_round "
+                               "WHERE batch = ?1 ORDER BY place",
 
     [CHECK_PAGES] = "PRAGMA integrity_check(20)",
     [CHECK_KEYS] = "PRAGMA foreign_key_check",
@@ -168,10 +191,11 @@ const char *const book_sql[] = {
     [CHECK_BATCHES] =
         "SELECT b.id, b.kind, b.at, b.who, l.batch, l.file, l.bytes, l.digest, l.dialect, "
         "l.reason, l.rows, l.accepted, l.present, l.revised, l.aside, l.first_reading, "
-        "l.first_aside, d.batch, d.reason, d.rows, c.previous, c.head "
+        "l.first_aside, d.batch, d.reason, d.rows, n.batch, n.raw_values, n.first_raw, c.previous, "
+        "c.head "
         "FROM batch b LEFT JOIN load l ON l.batch = b.id "
-        "LEFT JOIN description d ON d.batch = b.id LEFT JOIN chain c ON c.batch = b.id "
-        "ORDER BY b.id",
+        "LEFT JOIN description d ON d.batch = b.id LEFT JOIN bench n ON n.batch = b.id "
+        "LEFT JOIN chain c ON c.batch = b.id ORDER BY b.id",
     [CHECK_READINGS] =
         "SELECT " READING_COLUMNS " FROM reading r WHERE r.id BETWEEN ?1 AND ?2 ORDER BY r.id",
     /* How many there are, and how many of them join a reading to the version before it. */
@@ -182,8 +206,11 @@ const char *const book_sql[] = {
         "r.version - 1",
     [CHECK_ASIDES] =
         "SELECT " ASIDE_COLUMNS " FROM aside a WHERE a.id BETWEEN ?1 AND ?2 ORDER BY a.id",
+    [CHECK_RAW] = "SELECT " RAW_VALUE_COLUMNS " FROM bench_value v "
+                  "WHERE v.id BETWEEN ?1 AND ?2 ORDER BY v.id",
     [ADD_QUALIFIER] = "INSERT INTO qualifier (id, word) VALUES (?1, ?2) ON CONFLICT DO NOTHING",
-    [ADD_REASON] = "INSERT INTO aside_reason (reason, todo) VALUES (?1, ?2) ON CONFLICT DO NOTHING",
+    [ADD_REASON] = "INSERT INTO aside_reason (reason, todo) VALUES (?1, ?2) "
+                   "ON CONFLICT (reason) DO UPDATE SET todo = excluded.todo",
     [GET_FORMAT] = "PRAGMA user_version",
 };
 _Static_assert(NELEM(book_sql) == STATEMENTS, "one text per statement");

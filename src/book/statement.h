@@ -40,8 +40,12 @@ enum statement {
     NEWEST_READING,
     LAST_ASIDE,
     ADD_ASIDE,
+    LAST_RAW,
+    ADD_RAW,
+    ADD_BENCH,
     /* readings out */
     SERIES_SPAN,
+    ALL_OF_DAYS,
     SERIES_BEFORE,
     SERIES_HAS,
     SERIES_FIRST,
@@ -50,6 +54,9 @@ enum statement {
     REVISIONS,
     ASIDES_OF_DAYS,
     ASIDES_ALL,
+    RAW_OF_LINE,
+    RAW_OF_BATCH,
+    RAW_NEWEST,
     /* the description */
     DESCRIPTION_IN_FORCE,
     ADD_ROW,                          /* one for each file of a description */
@@ -64,6 +71,7 @@ enum statement {
     CHECK_READINGS,
     CHECK_REVISIONS,
     CHECK_ASIDES,
+    CHECK_RAW,
     ADD_QUALIFIER,
     ADD_REASON,
     GET_FORMAT,

@@ -11,8 +11,9 @@ struct load;
 
 struct book {
     struct arena *arena;
-    const char *path;    /* as the person named it */
-    const char *warning; /* of book_warning */
+    const char *path;     /* as the person named it */
+    const char *warning;  /* of book_warning */
+    const char *migrated; /* of book_migrated */
     sqlite3 *db;
     enum book_mode mode;
     sqlite3_stmt *statement[STATEMENTS];
@@ -44,8 +45,12 @@ extern const struct migration book_migrations[];
 extern const size_t book_migrations_count;
 /* The text of a compiled-in file. */
 const char *book_file(const char *name);
-/* Brings an open, empty or older book to the newest format, one transaction a step. */
+/* Brings an open, empty or older book to the newest format, in one transaction. */
 MUST_USE enum status book_migrate(struct book *b, struct fault *f);
+/* The steps of it, in the transaction under way. */
+MUST_USE enum status book_steps(struct book *b, struct fault *f);
+/* The format the book has now; 0 for an empty file. */
+MUST_USE enum status book_format_of(struct book *b, int *version, struct fault *f);
 /* Refuses triggers that are not ours: they would run inside our transactions. */
 MUST_USE enum status book_refuse_triggers(struct book *b, struct fault *f);
 
@@ -118,6 +123,8 @@ MUST_USE enum status row_reading(struct book *b, struct names *n, struct pack *p
                                  const struct stored *s, struct reading *out, struct fault *f);
 /* A row of statement ASIDES_... or CHECK_ASIDES. */
 void row_aside(sqlite3_stmt *s, struct stored_aside *out);
+/* A row of statement RAW_... or CHECK_RAW. */
+void row_raw(sqlite3_stmt *s, struct stored_raw *out);
 
 /* ---- descriptions (describe.c) ---- */
 
@@ -129,6 +136,19 @@ MUST_USE enum status description_add(struct book *b, const struct plant_draft *d
 typedef enum status row_sink(void *context, const struct stored_row *row, struct fault *f);
 MUST_USE enum status description_rows(struct book *b, int64_t batch, enum plant_file kind,
                                       row_sink *sink, void *context, struct fault *f);
+
+/* ---- books of older formats (older.c) ---- */
+
+/* Puts a migrated copy, for reading alone, in the place of the book that is open. */
+MUST_USE enum status older_copied(struct book *b, struct fault *f);
+/* Keeps the book as BOOK.format-N.backup and migrates it. */
+MUST_USE enum status older_migrated(struct book *b, struct fault *f);
+
+/* ---- proof (check.c) ---- */
+
+/* Everything that was written against pages, keys and hashes, in the transaction under way; what
+ * tables, views and triggers there are is left out. What is found first is the fault. */
+MUST_USE enum status book_proved(struct book *b, struct fault *f);
 
 /* ---- loading (load.c) ---- */
 

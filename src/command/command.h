@@ -42,6 +42,7 @@ enum operand_kind {
     OPERAND_FORMULA,
     OPERAND_COMMAND,
     OPERAND_SHELL,
+    OPERAND_SHEET,
     OPERAND_DAY
 };
 
@@ -66,9 +67,9 @@ struct command {
     enum status (*run)(struct session *s, const void *options, struct fault *f);
 };
 
-extern const struct command command_new, command_load, command_day, command_process, command_waste,
-    command_permit, command_room, command_due, command_report, command_plant, command_export,
-    command_check, command_formula, command_help, command_completion;
+extern const struct command command_new, command_load, command_bench, command_day, command_process,
+    command_waste, command_permit, command_room, command_due, command_report, command_plant,
+    command_export, command_check, command_formula, command_help, command_completion;
 
 /* Runs the program on its words; returns the exit status: 0 done, 1 could not be done, 2 wrong
  * usage, 3 done and it found something. */

@@ -128,6 +128,11 @@ static void offer_operand(struct session *s, const struct command *c, const char
     case OPERAND_FORMULA:
         offer_formulas(s, count ? formula_find(given[0]) : NULL, prefix);
         break;
+    case OPERAND_SHEET:
+        offer(s, "round", prefix);
+        for (size_t i = 0; i < bench_count(); i++)
+            offer(s, bench_at(i)->name, prefix);
+        break;
     case OPERAND_COMMAND:
         offer_commands(s, prefix);
         break;

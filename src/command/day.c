@@ -52,7 +52,7 @@ static void add(struct making *m, struct table *shown, const char *kind, const c
     page[1] = cell_text(what);
     page[2] = on_page;
     page[3] = cell_text(unit);
-    page[4] = cell_text(note);
+    page[4] = cell_flagged(cell_text(note), strstr(note, "CHECK FAILED") ? FLAG_BAD : FLAG_NONE);
     struct cell *file = table_row(m->file);
     file[FILE_POINT] = cell_text(at);
     file[FILE_PARAMETER] = cell_text(what);

@@ -89,8 +89,9 @@ const struct command command_new = {
     .example = examples,
     .examples = NELEM(examples),
     .about = "DIR holds plant.csv, points.csv, limits.csv and, where needed, parameters.csv, "
-             "basins.csv, meters.csv\n"
-             "and process.csv: see weirbook-files(5). weirbook plant --example DIR writes a set to "
-             "start from.",
+             "basins.csv,\n"
+             "meters.csv, process.csv and round.csv: see weirbook-files(5). weirbook plant "
+             "--example DIR\n"
+             "writes a set to start from.",
     .run = run,
 };

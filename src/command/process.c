@@ -215,19 +215,61 @@ static void print_over(struct session *s, const struct plant *plant, const struc
     session_print(s, o->as, page, table);
 }
 
-static void print_table(struct session *s, const struct plant *plant, const struct process_given *o,
-                        const struct process_figure *figure, size_t count)
+static struct table *table_of(struct arena *a, const struct process_given *o,
+                              const struct process_figure *figure, size_t count)
 {
     bool daily = o->by <= STEP_DAY;
     int figures = o->as == AS_CSV || o->as == AS_JSON ? FIGURES_FILE : FIGURES_TEXT;
-    struct table *table = daily ? table_new(s->arena, "", day_columns, NELEM(day_columns))
-                                : table_new(s->arena, "", step_columns, NELEM(step_columns));
+    struct table *table = daily ? table_new(a, "", day_columns, NELEM(day_columns))
+                                : table_new(a, "", step_columns, NELEM(step_columns));
     for (size_t i = 0; i < count; i++)
-        (daily ? add_day : add_step)(s->arena, table, &figure[i], figures);
+        (daily ? add_day : add_step)(a, table, &figure[i], figures);
+    return table;
+}
+
+static void print_table(struct session *s, const struct plant *plant, const struct process_given *o,
+                        const struct process_figure *figure, size_t count)
+{
+    struct table *table = table_of(s->arena, o, figure, count);
     struct page *page = new_page(s, plant, count);
     if (count > 0)
         page_table(page, table);
     session_print(s, o->as, page, table);
+}
+
+/* A file of many years is written as it is worked: a page needs all rows for its widths, a file
+ * does not. */
+struct writing {
+    FILE *out;
+    const struct process_given *given;
+    bool begun; /* the line of names stands: not before the first figures are worked */
+};
+
+static void begin_file(struct writing *w, struct arena *a)
+{
+    if (!w->begun)
+        write_csv(w->out, table_of(a, w->given, NULL, 0));
+    w->begun = true;
+}
+
+static void write_step(void *context, const struct process_figure *figures, size_t count)
+{
+    struct writing *w = context;
+    struct arena *a = arena_new();
+    begin_file(w, a);
+    write_csv_rows(w->out, table_of(a, w->given, figures, count));
+    arena_free(a);
+}
+
+static enum status write_file(struct session *s, const struct frame *frame,
+                              const struct process_given *o, const struct process_options *how,
+                              struct fault *f)
+{
+    struct writing w = {.out = s->out, .given = o};
+    if (frame && process_each(frame, how, write_step, &w, f) != OK)
+        return FAULT;
+    begin_file(&w, s->arena);
+    return OK;
 }
 
 /* A table of days ends where the book ends: a century asked for would be one of empty rows. *any is
@@ -263,8 +305,11 @@ static enum status run(struct session *s, const void *given, struct fault *f)
     if (look_at(o, f) != OK || session_book(s, BOOK_READ, NULL, &plant, f) != OK ||
         keep_to_book(s, &how, &any, f) != OK)
         return FAULT;
-    if (any && (read_frame(s, plant, &how, &frame, f) != OK ||
-                process_table(s->arena, frame, &how, &figure, &count, f) != OK))
+    if (any && read_frame(s, plant, &how, &frame, f) != OK)
+        return FAULT;
+    if (o->as == AS_CSV && o->over < 0)
+        return write_file(s, frame, o, &how, f);
+    if (any && process_table(s->arena, frame, &how, &figure, &count, f) != OK)
         return FAULT;
     if (o->over >= 0) {
         print_over(s, plant, o, figure, count);

@@ -71,6 +71,10 @@ enum status session_open(struct session *s, enum book_mode mode, struct fault *f
         return FAULT;
     if (book_warning(s->book))
         fprintf(stderr, "weirbook: %s\n", book_warning(s->book));
+    if (book_migrated(s->book))
+        fprintf(stderr,
+                "weirbook: the book was brought to format %d; as it was before, it is kept in %s\n",
+                book_format(), book_migrated(s->book));
     return OK;
 }
 

@@ -59,7 +59,7 @@ static void mark_flow(struct frame *f, const struct column *c)
             continue;
         if (fraction_sign(v.amount.number) > 0)
             *mark_of(f, c->point, day) &= (uint8_t)~MARK_NO_DISCHARGE;
-        else if (!v.amount.part_less)
+        else if (fraction_sign(v.amount.number) == 0 && !v.amount.part_less)
             *mark_of(f, c->point, day) |= MARK_NO_DISCHARGE;
     }
 }

@@ -1,6 +1,6 @@
 /* frame: readings in, columns of days out. Readings are copied into blocks as they come; closing
- * the frame sorts pointers to them, keeps the newest version of each, and cuts them into columns.
- */
+ * the frame deals pointers to them into columns, sorts each, and keeps the newest version of each
+ * reading. */
 #include "frame/frame.h"
 #include "frame/store.h"
 
@@ -144,6 +144,30 @@ static void add_column(struct frame *f, const struct reading **at, size_t count)
     f->index[frame_cell(f, c->point, c->parameter)] = (int32_t)(f->column_count - 1);
 }
 
+static size_t cell_of(const struct frame *f, const struct reading *r)
+{
+    return frame_cell(f, r->point, r->parameter);
+}
+
+/* Readings by point and parameter, each in the order they were added in: `end` then holds where
+ * each cell's end. They come by series or by day; either way this is one look at each. */
+static void deal(const struct frame *f, const struct reading **at, size_t *end, size_t cells)
+{
+    size_t total = 0;
+
+    for (const struct block *b = f->newest; b; b = b->older)
+        for (size_t i = 0; i < b->count; i++)
+            end[cell_of(f, &b->at[i])]++;
+    for (size_t i = 0; i < cells; i++)
+        end[i] = total += end[i];
+    /* The newest come first, so that each cell is filled from its end. */
+    for (const struct block *b = f->newest; b; b = b->older)
+        for (size_t i = b->count; i > 0; i--)
+            at[--end[cell_of(f, &b->at[i - 1])]] = &b->at[i - 1];
+    for (size_t i = 0; i < cells; i++)
+        end[i] = i + 1 < cells ? end[i + 1] : total;
+}
+
 void frame_close(struct frame *f)
 {
     struct arena *passing = arena_new();
@@ -151,23 +175,20 @@ void frame_close(struct frame *f)
         arena_alloc(f->arena, (f->readings + 1) * sizeof(const struct reading *));
     const struct reading **spare =
         arena_alloc(passing, (f->readings + 1) * sizeof(const struct reading *));
-    size_t count = f->readings;
+    size_t cells = f->plant->point_count * f->plant->parameter_count;
+    size_t *end = arena_alloc(passing, (cells + 1) * sizeof *end);
 
     assert(!f->closed);
     f->closed = true;
-    for (const struct block *b = f->newest; b; b = b->older) {
-        count -= b->count;
-        for (size_t i = 0; i < b->count; i++)
-            at[count + i] = &b->at[i];
-    }
-    sort(at, f->readings, spare, by_version);
-    count = keep_newest(at, f->readings);
-    sort(at, count, spare, by_loading);
-    for (size_t from = 0, to; from < count; from = to) {
-        for (to = from + 1; to < count && at[to]->point == at[from]->point &&
-                            at[to]->parameter == at[from]->parameter;)
-            to++;
-        add_column(f, at + from, to - from);
+    deal(f, at, end, cells);
+    for (size_t i = 0, from = 0; i < cells; from = end[i++]) {
+        size_t count = end[i] - from;
+
+        sort(at + from, count, spare, by_version);
+        count = keep_newest(at + from, count);
+        sort(at + from, count, spare, by_loading);
+        if (count > 0)
+            add_column(f, at + from, count);
     }
     for (size_t i = 0; i < f->column_count; i++)
         if (totalizer_at(f->plant, f->columns[i].point, f->columns[i].parameter))

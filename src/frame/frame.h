@@ -105,7 +105,11 @@ extern const char
     X(BAD_QUOTES, "bad-quotes", "close the quotes, or double those inside a cell")                 \
     X(BAD_TEXT, "bad-text", "save the file as UTF-8 without control bytes")                        \
     X(TOO_LONG, "too-long", "shorten the cell")                                                    \
-    X(CONTRADICTS, "contradicts", "keep the old value, or load again with --revise --reason TEXT")
+    X(CONTRADICTS, "contradicts", "keep the old value, or load again with --revise --reason TEXT") \
+    X(UNKNOWN_SHEET, "unknown-sheet", "name a sheet that 'weirbook bench' lists")                  \
+    X(UNKNOWN_ARGUMENT, "unknown-argument",                                                        \
+      "name an argument of the sheet: 'weirbook bench --list'")                                    \
+    X(NO_RESULT, "no-result", "correct the raw values and take the sheet again")
 
 enum reason {
 #define X(id, word, todo) REASON_##id,
@@ -122,6 +126,30 @@ struct row_text {
     int column;                     /* of a wide file's cell; 0 in a long file */
     const char *cell[LONG_COLUMNS]; /* as written; "" where absent */
     const char *raw; /* the whole line where its cells could not be told apart; else "" */
+};
+
+/* ---- a raw value of a bench sheet, as a person wrote it ----------------------------------------
+ * Columns of a raw values file, all required. A sheet's rows of one date, time and point belong
+ * together; rows without a point (blanks, seed, standards) serve all points of their sheet and
+ * date. */
+
+enum raw_column {
+    RAW_SHEET,    /* "suspended-solids" */
+    RAW_DATE,     /* the day sampled */
+    RAW_TIME,     /* or blank */
+    RAW_POINT,    /* or blank */
+    RAW_RUN,      /* which filter, bottle or tube row: "1", "blank", "seed-2"; or blank */
+    RAW_ARGUMENT, /* "dried" */
+    RAW_VALUE,
+    RAW_UNIT, /* blank: the argument's own */
+    RAW_COLUMNS
+};
+extern const char *const raw_columns[RAW_COLUMNS]; /* "sheet", "date", ... */
+
+struct raw_value {
+    const char *file;
+    long line;
+    const char *cell[RAW_COLUMNS]; /* as written */
 };
 
 /* ---- which readings a piece of work needs ------------------------------------------------------

@@ -1,5 +1,5 @@
-/* words: qualifiers, no-data codes, the columns of a long file and the reasons for setting a row
- * aside: each list once, for parser, book, manual and tests. */
+/* words: qualifiers, no-data codes, the columns of long and raw values files and the reasons for
+ * setting a row aside: each list once, for parser, book, manual and tests. */
 #include "frame/frame.h"
 
 #include "base/poison.h"
@@ -63,6 +63,12 @@ const char *const long_columns[LONG_COLUMNS] = {
     [LONG_MDL] = "mdl",
     [LONG_RL] = "rl",
     [LONG_NOTE] = "note",
+};
+
+const char *const raw_columns[RAW_COLUMNS] = {
+    [RAW_SHEET] = "sheet", [RAW_DATE] = "date", [RAW_TIME] = "time",
+    [RAW_POINT] = "point", [RAW_RUN] = "run",   [RAW_ARGUMENT] = "argument",
+    [RAW_VALUE] = "value", [RAW_UNIT] = "unit",
 };
 
 #define X(id, word, todo) [REASON_##id] = (word),

@@ -72,6 +72,14 @@ MUST_USE enum status intake_readings(struct arena *a, const char *path, const st
 enum reason intake_value(struct reading *r, const struct parameter *p, const char *text,
                          bool comma);
 
+/* ---- raw values of bench sheets ---------------------------------------------------------------
+ * A CSV file of the columns raw_columns, in any order; comma, semicolon or tab, UTF-8 (or else
+ * Windows-1252, as readings files). Whole in memory: a file of a shift or a month is small, and one
+ * above 64 MB is refused. FAULT: it cannot be read, its header lacks a column, a row has not the
+ * header's cells, or there are no rows. */
+MUST_USE enum status intake_raw(struct arena *a, const char *path, struct raw_value **out,
+                                size_t *count, struct intake_summary *summary, struct fault *f);
+
 /* ---- small CSV tables (maps, and later claims): whole in memory ---- */
 
 struct intake_table {

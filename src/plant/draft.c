@@ -177,7 +177,7 @@ static const struct reader {
     /* Rules may name points, so points come before the fields of the plant. */
     {PLANT_POINTS, read_point},    {PLANT_FIELDS, read_field}, {PLANT_PARAMETERS, read_parameter},
     {PLANT_BASINS, read_basin},    {PLANT_LIMITS, read_limit}, {PLANT_METERS, read_meter},
-    {PLANT_PROCESS, read_process},
+    {PLANT_PROCESS, read_process}, {PLANT_ROUND, read_stop},
 };
 
 /* Arrays as long as their files: no element ever moves. */
@@ -196,6 +196,7 @@ static void make_room(struct plant_draft *d)
     p->limits = arena_alloc(d->arena, (rows[PLANT_LIMITS] + 1) * sizeof *p->limits);
     p->meters = arena_alloc(d->arena, (rows[PLANT_METERS] + 1) * sizeof *p->meters);
     p->process = arena_alloc(d->arena, (rows[PLANT_PROCESS] + 1) * sizeof *p->process);
+    p->round = arena_alloc(d->arena, (rows[PLANT_ROUND] + 1) * sizeof *p->round);
 }
 
 static void read_file(struct plant_draft *d, const struct reader *r, bool builtin)

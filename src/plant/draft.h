@@ -1,4 +1,4 @@
-/* draft: what the readers of the seven files share: the rows as they came, the problems found, the
+/* draft: what the readers of the eight files share: the rows as they came, the problems found, the
  * plant being built, and the reading of single cells. Private to this room. */
 #ifndef WEIRBOOK_PLANT_DRAFT_H
 #define WEIRBOOK_PLANT_DRAFT_H
@@ -74,6 +74,7 @@ enum {
     PROCESS_SOURCE,
     PROCESS_UNIT
 };
+enum { ROUND_POINT, ROUND_PARAMETER, ROUND_SAMPLE };
 
 #define WHOLE_LINE (-1) /* as a column: the problem is of the line, not of one cell */
 
@@ -184,6 +185,7 @@ void read_basin(struct plant_draft *d, const struct plant_row *row);
 void read_limit(struct plant_draft *d, const struct plant_row *row);
 void read_meter(struct plant_draft *d, const struct plant_row *row);
 void read_process(struct plant_draft *d, const struct plant_row *row);
+void read_stop(struct plant_draft *d, const struct plant_row *row);
 /* What only the whole plant shows: limits that contradict, groups of one. */
 void limits_agree(struct plant_draft *d);
 /* Whether two spans of days share one; DAY_NONE is an open end. */

@@ -16,6 +16,7 @@ enum plant_file {
     PLANT_LIMITS,     /* limits.csv */
     PLANT_METERS,     /* meters.csv */
     PLANT_PROCESS,    /* process.csv */
+    PLANT_ROUND,      /* round.csv */
     PLANT_FILES
 };
 
@@ -323,6 +324,12 @@ struct process_row {
     const struct unit *unit;     /* NULL when blank */
 };
 
+/* A stop of the shift round: what is read where, in walking order. */
+struct round_stop {
+    int point, parameter;
+    const char *sample; /* which sample of the day; "" mostly */
+};
+
 struct plant {
     const char *name, *permit, *receiving_water, *time_zone;
     bool metric;
@@ -334,7 +341,9 @@ struct plant {
     struct limit *limits;
     struct meter *meters;
     struct process_row *process;
-    size_t point_count, parameter_count, basin_count, limit_count, meter_count, process_count;
+    struct round_stop *round; /* in the order of round.csv */
+    size_t point_count, parameter_count, basin_count, limit_count, meter_count, process_count,
+        round_count;
 };
 
 int plant_point(const struct plant *p, const char *id);     /* -1 when unknown */

@@ -1,4 +1,4 @@
-/* read: the rows of plant.csv, points.csv, basins.csv and meters.csv. */
+/* read: the rows of plant.csv, points.csv, basins.csv, meters.csv and round.csv. */
 #include "plant/draft.h"
 
 #include "base/poison.h"
@@ -265,4 +265,39 @@ void read_meter(struct plant_draft *d, const struct plant_row *row)
         return;
     d->origin[PLANT_METERS][d->plant->meter_count] = row;
     d->plant->meters[d->plant->meter_count++] = m;
+}
+
+/* ---- round.csv ---- */
+
+static bool stop_new(struct plant_draft *d, const struct plant_row *row,
+                     const struct round_stop *stop)
+{
+    for (size_t i = 0; i < d->plant->round_count; i++) {
+        const struct round_stop *known = &d->plant->round[i];
+        bool named = *stop->sample != '\0';
+
+        if (known->point != stop->point || known->parameter != stop->parameter ||
+            !text_equal(known->sample, stop->sample))
+            continue;
+        problem(d, row, named ? ROUND_SAMPLE : ROUND_PARAMETER, "keep one, or name another sample",
+                "the stop %s %s%s%s stands already in line %ld", cell(row, ROUND_POINT),
+                cell(row, ROUND_PARAMETER), named ? " " : "", stop->sample,
+                d->origin[PLANT_ROUND][i]->line);
+        return false;
+    }
+    return true;
+}
+
+void read_stop(struct plant_draft *d, const struct plant_row *row)
+{
+    struct round_stop stop = {.sample = cell(row, ROUND_SAMPLE)};
+    bool ok = read_given(d, row, ROUND_POINT) &&
+              point_in(d, row, ROUND_POINT, cell(row, ROUND_POINT), &stop.point);
+
+    ok = read_given(d, row, ROUND_PARAMETER) &&
+         parameter_in(d, row, ROUND_PARAMETER, cell(row, ROUND_PARAMETER), &stop.parameter) && ok;
+    if (!ok || !stop_new(d, row, &stop))
+        return;
+    d->origin[PLANT_ROUND][d->plant->round_count] = row;
+    d->plant->round[d->plant->round_count++] = stop;
 }

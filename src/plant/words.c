@@ -38,6 +38,7 @@ static const struct plant_layout layouts[PLANT_FILES] = {
                        7,
                        6,
                        {"name", "at", "parameter", "formula", "argument", "source", "unit"}},
+    [PLANT_ROUND] = {"round.csv", false, 3, 2, {"point", "parameter", "sample"}},
 };
 
 const char *const role_words[ROLES] = {

@@ -402,6 +402,18 @@ static const struct formula rows[] = {
         .source = "definition",
     },
     {
+        .name = "cake-hauled-per-million-gallons",
+        .subject = "digestion, dewatering and land",
+        .argument = {{.name = "hauled", .unit = "lb", .at_least = "0"},
+                     {.name = "treated_volume", .unit = "MG", .above = "0"}},
+        .arguments = 2,
+        .result = "cake_hauled",
+        .unit = "lb/MG",
+        .equation = "hauled / treated_volume",
+        .source = "definition: wet cake by volume treated",
+        .trap = "wet, as weighed; cake and water of the same period",
+    },
+    {
         .name = "dry-tons",
         .subject = "digestion, dewatering and land",
         .argument = {{.name = "wet_tons", .unit = "ton", .at_least = "0"},

@@ -18,6 +18,18 @@ static const struct formula rows[] = {
         .trap = "as collected or washed and pressed: state which",
     },
     {
+        .name = "hauled-waste-share",
+        .subject = "screens, tertiary treatment and reuse",
+        .argument = {{.name = "hauled_volume", .unit = "gal", .at_least = "0"},
+                     {.name = "treated_volume", .unit = "gal", .above = "0"}},
+        .arguments = 2,
+        .result = "hauled_share",
+        .unit = "%",
+        .equation = "hauled_volume / treated_volume * 100",
+        .source = "definition: septage and other hauled waste by volume treated",
+        .trap = "waste and water of the same period; by volume, though septage is far stronger",
+    },
+    {
         .name = "ozone-applied-dose",
         .subject = "screens, tertiary treatment and reuse",
         .argument = {{.name = "feed", .unit = "lb/d", .at_least = "0"},

@@ -60,6 +60,7 @@ static void start(struct supplies *s, struct line *line, const char *formula)
     assert(f != NULL);
     line->ready = formula_ready(s->arena, f);
     line->name = f->name;
+    line->counted = text_equal(f->name, "log-removal") ? "effluent" : NULL;
     line->at = line->parameter = line->note = "";
     line->unit = s->plant->metric ? formula_metric_unit(f->unit) : f->unit;
     while (line->order < formula_count() && formula_at(line->order) != f)

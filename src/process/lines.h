@@ -25,8 +25,10 @@ struct line {
     bool smoothed;
     const char *basin; /* the basin the line is about, or NULL */
     enum basin_kind kind;
-    const char *note;                       /* what always holds for the line, "" mostly */
-    const char *unit;                       /* the plant's: metric or not */
+    const char *counted; /* an argument of which none, or a less-than, gives no figure but a bound;
+                            NULL mostly */
+    const char *note;    /* what always holds for the line, "" mostly */
+    const char *unit;    /* the plant's: metric or not */
     const struct fraction *factor, *offset; /* of the result into `unit`; NULL: as it is */
     size_t order;                           /* in the catalogue, then as found */
 };

@@ -195,6 +195,10 @@ static const struct plan plans[] = {
      .passage = THROUGH_AERATION, .of = "NH3N",
      .note = "ammonia oxidized taken as its fall, no nitrate removed",
      .feed = {READ("alkalinity", "ALK"), FALL("ammonia_oxidized", "NH3N")}},
+    {.formula = "alkalinity-supplement", .extent = FOR_PASSAGE,
+     .passage = THROUGH_AERATION, .of = "NH3N",
+     .note = "ammonia oxidized taken as its fall, no nitrate removed, 75 mg/L kept",
+     .feed = {READ("alkalinity", "ALK"), FALL("ammonia_oxidized", "NH3N")}},
 
     /* disinfection */
     {.formula = "chlorine-dose", .extent = FOR_EFFLUENT,
@@ -287,6 +291,10 @@ static const struct plan plans[] = {
     {.formula = "screenings-removal", .extent = FOR_POINT, .roles = ANYWHERE,
      .feed = {READ("screenings_volume", "SCREENINGS"),
               TAKE("treated_volume", SUPPLY_PLANT_FLOW)}},
+    {.formula = "hauled-waste-share", .extent = FOR_POINT, .roles = ANYWHERE,
+     .feed = {READ("hauled_volume", "SEPTAGE"), TAKE("treated_volume", SUPPLY_PLANT_FLOW)}},
+    {.formula = "cake-hauled-per-million-gallons", .extent = FOR_POINT, .roles = ROLE(ROLE_CAKE),
+     .feed = {READ("hauled", "CAKE"), TAKE("treated_volume", SUPPLY_PLANT_FLOW)}},
     {.formula = "concentration-from-load", .extent = FOR_POINT, .roles = ROLE(ROLE_CHEMICAL),
      .of = "FEED", .note = "fed, over the effluent flow",
      .feed = {READ("load", "FEED"), TAKE("flow", SUPPLY_OUT_FLOW), FACTOR}},

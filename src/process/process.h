@@ -98,6 +98,11 @@ day_t process_reach(const struct process_options *o);
 MUST_USE enum status process_table(struct arena *a, const struct frame *frame,
                                    const struct process_options *o, struct process_figure **out,
                                    size_t *count, struct fault *f);
+/* The same, a day or step at a time: the figures, and all they point at, die when `sink` returns.
+ */
+typedef void process_sink(void *context, const struct process_figure *figures, size_t count);
+MUST_USE enum status process_each(const struct frame *frame, const struct process_options *o,
+                                  process_sink *sink, void *context, struct fault *f);
 /* Of all columns that have readings, those the table can use: the others need not be in its frame.
  * `out` has room for `count`; gives how many are in it. */
 size_t process_reads(const struct plant *plant, const struct frame_span *spans, size_t count,
@@ -128,6 +133,95 @@ size_t process_problems(const struct plant *plant, void (*tell)(void *context, c
                         void *context);
 /* The same for those who only ask whether it is fine: the fault is the first problem. */
 MUST_USE enum status process_check(const struct plant *plant, struct fault *f);
+
+/* ---- bench sheets -------------------------------------------------------------------------------
+ * From raw values (weights, oxygen in bottles, colonies) to readings, with the quality checks of
+ * the published method. One table of sheets serves the command, the blank sheet, the manual and the
+ * tests. */
+
+enum bench_run { /* told by the first word of a row's run: "2", "blank", "seed-2", "standard" */
+                 BENCH_SAMPLE,
+                 BENCH_BLANK,
+                 BENCH_SEED,
+                 BENCH_STANDARD,
+                 BENCH_RUNS
+};
+extern const char *const bench_run_words[BENCH_RUNS]; /* "", "blank", "seed", "standard" */
+
+#define BENCH_ARGUMENTS_MOST 10
+
+struct bench_argument {
+    const char *name, *unit; /* as in the catalogue; unit "" for a text */
+    const char *asked;       /* what a person is asked: "weight of the filter alone" */
+    const char *fallback;    /* taken when not given; NULL: none */
+    bool optional;           /* may be left out without a fallback */
+    bool carries;            /* yesterday's value is a fair offer: a bottle's or a tube's volume */
+    bool text;               /* a word, not a number: analyst, parameter, sample, note */
+    bool once;               /* for the sheet's point, not for each run: run is blank */
+    unsigned runs;           /* bits 1u << enum bench_run: kinds of run that have it */
+    const char *above, *at_least, *below, *at_most; /* bounds; NULL: none */
+};
+
+struct bench_sheet {
+    const char *name, *title; /* "suspended-solids", "Suspended and volatile solids by weight" */
+    const char *run_name;     /* what a run is called: "filter", "bottle", "dilution" */
+    const char *gives;        /* which parameters, in words */
+    const char *source;       /* the published method */
+    const char *beware;       /* one line or NULL */
+    bool record;              /* gives no reading: a calibration that is kept with its checks */
+    bool pointless;           /* has no point: a calibration */
+    unsigned runs;            /* kinds of run that may come */
+    struct bench_argument argument[BENCH_ARGUMENTS_MOST];
+    size_t arguments;
+};
+
+/* The sheet "round" (plain readings in walking order) is not among them: its arguments are the
+ * plant's parameters, its run says which sample of the day; bench_work knows it, and takes numbers,
+ * <n, >n, E n and no-data codes. */
+size_t bench_count(void);
+const struct bench_sheet *bench_at(size_t i);
+const struct bench_sheet *bench_find(const char *name); /* NULL when unknown */
+const char *bench_nearest(const char *name);            /* "round" is known too */
+enum bench_run bench_run_of(const char *run);
+/* A typed value against the argument's bounds, kind of unit and form; the fault says what is wrong.
+ * `unit` may be "" (the argument's own). */
+MUST_USE enum status bench_value(struct arena *a, const struct bench_argument *argument,
+                                 const char *value, const char *unit, struct fault *f);
+
+struct bench_check {
+    const char *text; /* "blank depletes 0.31 mg/L; at most 0.2" */
+    const char *source;
+    bool passed;
+};
+
+enum bench_kind {
+    BENCH_READING, /* `reading` stands */
+    BENCH_RECORD,  /* a calibration: checks alone */
+    BENCH_REFUSED  /* `reason` and `explanation` say why there is no reading */
+};
+
+struct bench_outcome {
+    enum bench_kind kind;
+    const char *sheet;
+    const char *parameter;  /* id; "" where not known */
+    struct reading reading; /* file and line: of the first raw value of its group; its detail's note
+                               tells the checks, failed ones first and in words */
+    struct row_text row; /* of a refusal: what stands in its date, time, point, parameter, value */
+    enum reason reason;
+    const char *explanation;
+    struct bench_check *check;
+    size_t checks;
+    const char **working; /* lines: the equation with the numbers put in, run by run */
+    size_t workings;
+};
+/* Works all sheets of a file. Every raw value takes part in an outcome: a row that cannot be used
+ * at all (unknown sheet, argument, point; no number) is a refusal of its own, and so is a group
+ * whose formula refuses. A result is rounded once, by the plant's rounding rule, to the parameter's
+ * decimals (counts: to two significant figures, as Standard Methods 9222 and 9221 report them, from
+ * memory). A result with a failed check is QUALIFIER_ESTIMATED, or keeps its less-than. `today`:
+ * later dates are refused. */
+void bench_work(struct arena *a, const struct plant *plant, const struct raw_value *raw,
+                size_t count, day_t today, struct bench_outcome **out, size_t *outcomes);
 
 /* ---- wasting ----------------------------------------------------------------------------------
  * How much sludge to waste on a day. Aeration basins in service are taken as one, in a unit of the

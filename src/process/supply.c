@@ -21,11 +21,6 @@ void supplies_tidy(struct supplies *s)
     s->passing = arena_new();
 }
 
-const struct fraction *supplies_keep(struct supplies *s, const struct fraction *x)
-{
-    return fraction_add(s->arena, x, s->zero);
-}
-
 /* ---- readings ---- */
 
 static const char *missing(const struct supplies *s, const struct series *series, day_t day,
@@ -131,6 +126,12 @@ static const struct fraction *part_amount(struct supplies *s, const struct part 
     return c->number;
 }
 
+/* Where the numbers of a day's streams go. */
+static struct arena *lasting(const struct supplies *s)
+{
+    return s->in_turn ? s->passing : s->arena;
+}
+
 /* Adds what the part carries to the product. Nothing carries nothing, whatever its strength. */
 static void part_product(struct supplies *s, const struct part *part, day_t day,
                          const struct fraction *amount, struct carried *out)
@@ -146,7 +147,7 @@ static void part_product(struct supplies *s, const struct part *part, day_t day,
         return;
     }
     out->product =
-        fraction_add(s->arena, out->product, fraction_multiply(s->passing, amount, c->number));
+        fraction_add(lasting(s), out->product, fraction_multiply(s->passing, amount, c->number));
 }
 
 static struct carried work_day(struct supplies *s, const struct stream *stream, day_t day)
@@ -164,9 +165,9 @@ static struct carried work_day(struct supplies *s, const struct stream *stream, 
             return out;
         }
         if (part->minus)
-            out.amount = fraction_subtract(s->arena, out.amount, amount);
+            out.amount = fraction_subtract(lasting(s), out.amount, amount);
         else
-            out.amount = out.idle ? amount : fraction_add(s->arena, out.amount, amount);
+            out.amount = out.idle ? amount : fraction_add(lasting(s), out.amount, amount);
         out.idle = false;
         part_product(s, part, day, amount, &out);
     }
@@ -187,10 +188,23 @@ static struct carried *slot(struct supplies *s, struct carried **by_day, day_t d
     return &(*by_day)[day - s->first];
 }
 
+static struct carried latest(struct supplies *s, struct stream *stream, day_t day)
+{
+    if (stream->latest == NULL)
+        stream->latest = arena_alloc(s->arena, sizeof *stream->latest);
+    if (!stream->latest->known || stream->day != day) {
+        *stream->latest = work_day(s, stream, day);
+        stream->day = day;
+    }
+    return *stream->latest;
+}
+
 struct carried stream_day(struct supplies *s, struct stream *stream, day_t day)
 {
     if (is_simple(stream))
         return work_day(s, stream, day);
+    if (s->in_turn)
+        return latest(s, stream, day);
     struct carried *c = slot(s, &stream->daily, day);
     if (!c->known)
         *c = work_day(s, stream, day);

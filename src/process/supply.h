@@ -1,5 +1,6 @@
 /* Where the arguments of a process figure come from: readings day by day, and streams of amount and
- * strength made of them. Everything is worked once and kept by day. */
+ * strength made of them. Everything is worked once; it is kept by day, or for one day alone where
+ * days are only ever asked for in turn. */
 #ifndef WEIRBOOK_PROCESS_SUPPLY_H
 #define WEIRBOOK_PROCESS_SUPPLY_H
 
@@ -26,6 +27,8 @@ struct supplies {
     const struct plant *plant;
     day_t first, last; /* the days asked for and those that smoothing reaches back to */
     int smooth;
+    bool in_turn; /* a day is done with when the next is asked for: streams keep one day alone, in
+                     `passing`. Not with smoothing, which looks back. */
     struct series *series;
     const struct fraction *zero;
 };
@@ -56,6 +59,8 @@ struct stream {
     struct part *part;
     size_t parts, room;
     struct carried *daily, *smoothed; /* by day from supplies.first, where it pays to keep them */
+    struct carried *latest;           /* where days come in turn: of `day` alone */
+    day_t day;
 };
 
 /* NULL when the frame holds no reading of the column. `unit`: NULL for the parameter's own. */
@@ -70,9 +75,8 @@ struct carried stream_day(struct supplies *s, struct stream *stream, day_t day);
 /* The mean over the days of the window that ends on `day` and that have what is needed. */
 struct carried stream_smoothed(struct supplies *s, struct stream *stream, day_t day);
 
-/* Drops what was worked in passing once it has grown. Results must have been copied. */
+/* Drops what was worked in passing once it has grown: between two days. Results must have been
+ * copied. */
 void supplies_tidy(struct supplies *s);
-/* A copy that outlives `passing`. */
-const struct fraction *supplies_keep(struct supplies *s, const struct fraction *x);
 
 #endif

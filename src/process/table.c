@@ -3,7 +3,9 @@
 
 #include <assert.h>
 #include <stdlib.h>
+#include <string.h>
 
+#include "process/catalogue.h"
 #include "process/lines.h"
 
 #include "base/poison.h"
@@ -18,12 +20,25 @@ day_t process_reach(const struct process_options *o)
     return o->from - back;
 }
 
+/* What the days of a longer step come to, of one line. */
+struct gathered {
+    const struct fraction *sum, *least, *most;
+    long count, present; /* days with a figure; days on which there could be one */
+    bool less, greater;
+    const char *first_missing;
+};
+
 struct table {
     struct supplies s;
     struct lines lines;
     const struct process_options *options;
+    struct arena *results; /* where figures and their notes go */
     struct process_figure *figures;
     size_t count;
+    struct gathered *gathered;
+    struct arena *gathering; /* of one step alone */
+    process_sink *sink;      /* takes each step's figures; NULL: all are kept */
+    void *context;
 };
 
 /* ---- one figure of one day ---- */
@@ -132,6 +147,64 @@ static const struct fraction *input_number(struct table *t, const struct line *l
     return x;
 }
 
+/* The count's most: what it is with every less-than at its number. NULL: nothing above 0. */
+static const struct fraction *most_of(struct table *t, const struct series *series, day_t day)
+{
+    struct day_value v;
+    struct rules rules = t->s.plant->parameters[series->parameter].rules;
+    rules.word[RULE_NONDETECT] = NONDETECT_FULL;
+    frame_day(t->s.frame, series->point, series->parameter, day, &rules, series->unit, &v);
+    bool any = v.state == DAY_VALUED && fraction_sign(v.amount.number) > 0;
+    return any ? v.amount.number : NULL;
+}
+
+/* Cut, not rounded: a bound must not promise more than there is. */
+static const char *cut(struct table *t, const struct fraction *x)
+{
+    struct arena *a = t->s.passing;
+    const struct fraction *low = fraction_subtract(a, x, fraction_from_ratio(a, 1, 200));
+    return fraction_print(a, low, 2, ROUND_HALF_UP);
+}
+
+/* What a count that was not found tells: the figure at its most, as a bound. */
+static const char *bound_note(struct table *t, const struct line *line, size_t argument, day_t day,
+                              struct formula_value *value)
+{
+    struct arena *a = t->s.passing;
+    struct fault fault = {.set = false};
+    const struct part *part = line->input[argument].stream->part;
+    const struct fraction *most = part->reading ? most_of(t, part->reading, day) : NULL;
+    const struct fraction *least = NULL;
+    const char *at = part->reading ? t->s.plant->points[part->reading->point].id : "the effluent";
+    bool none = most == NULL;
+    if (none) /* the least a count can be */
+        most = fraction_from_int(a, 1);
+    value[argument] = (struct formula_value){.number = &most, .count = 1};
+    if (ready_work(a, line->ready, value, &least, &fault) != OK)
+        return arena_text(t->results, fault.text);
+    if (none)
+        return arena_print(t->results, "none counted at %s: more than %s if below 1", at,
+                           cut(t, least));
+    return arena_print(t->results, "more than %s: a less-than at %s, at most %s", cut(t, least), at,
+                       formula_number(a, most));
+}
+
+/* Whether the count is one: more than none, and no less-than. Else the note has the bound. */
+static bool is_counted(struct table *t, const struct line *line, day_t day,
+                       struct formula_value *value, struct day_figure *out)
+{
+    int i = formula_argument_index(line->ready->formula, line->counted);
+    assert(i >= 0);
+    const struct input *in = &line->input[i];
+    if (in->stream == NULL)
+        return true;
+    bool less = stream_day(&t->s, in->stream, day).less;
+    if (!less && fraction_sign(value[i].number[0]) != 0)
+        return true;
+    out->note = bound_note(t, line, (size_t)i, day, value);
+    return false;
+}
+
 static void work_figure(struct table *t, const struct line *line, day_t day, struct day_figure *out)
 {
     const struct fraction *number[FORMULA_ARGUMENTS_MOST];
@@ -149,11 +222,11 @@ static void work_figure(struct table *t, const struct line *line, day_t day, str
             return;
         value[i] = (struct formula_value){.number = &number[i], .count = 1};
     }
-    if (out->absent)
+    if (out->absent || (line->counted && !is_counted(t, line, day, value, out)))
         return;
     if (ready_work(a, line->ready, value, &out->value, &fault) != OK) {
         out->value = NULL;
-        out->note = arena_text(t->s.arena, fault.text);
+        out->note = arena_text(t->results, fault.text);
         return;
     }
 }
@@ -180,7 +253,7 @@ static void add_note(struct text *t, const char *note)
 
 static const char *kept(struct table *t, const char *s)
 {
-    return *s == '\0' ? "" : arena_text(t->s.arena, s);
+    return *s == '\0' ? "" : arena_text(t->results, s);
 }
 
 /* What must be known of a figure that has a value. */
@@ -214,13 +287,13 @@ static struct process_figure *figure_new(struct table *t, const struct line *lin
                                          day_t to)
 {
     struct process_figure *f = &t->figures[t->count++];
-    f->from = from;
-    f->to = to;
-    f->name = line->name;
-    f->at = line->at;
-    f->parameter = line->parameter;
-    f->unit = line->unit;
-    f->note = "";
+    *f = (struct process_figure){.from = from,
+                                 .to = to,
+                                 .name = line->name,
+                                 .at = line->at,
+                                 .parameter = line->parameter,
+                                 .unit = line->unit,
+                                 .note = ""};
     return f;
 }
 
@@ -235,7 +308,7 @@ static void add_day(struct table *t, const struct line *line, day_t day)
         f->note = d.note;
         return;
     }
-    f->value = supplies_keep(&t->s, d.value);
+    f->value = fraction_add(t->results, d.value, t->s.zero);
     f->count = 1;
     f->note = value_note(t, line, &d);
 }
@@ -272,14 +345,6 @@ static day_t step_last(const struct table *t, day_t day)
     }
 }
 
-struct gathered {
-    struct arena *arena; /* of this step alone */
-    const struct fraction *sum, *least, *most;
-    long count, present; /* days with a figure; days on which there could be one */
-    bool less, greater;
-    const char *first_missing;
-};
-
 static void gather(struct table *t, const struct line *line, day_t day, struct gathered *g)
 {
     struct day_figure d;
@@ -292,8 +357,8 @@ static void gather(struct table *t, const struct line *line, day_t day, struct g
             g->first_missing = d.note;
         return;
     }
-    const struct fraction *x = fraction_add(g->arena, d.value, t->s.zero);
-    g->sum = g->count == 0 ? x : fraction_add(g->arena, g->sum, x);
+    const struct fraction *x = fraction_add(t->gathering, d.value, t->s.zero);
+    g->sum = g->count == 0 ? x : fraction_add(t->gathering, g->sum, x);
     if (g->count == 0 || fraction_compare(x, g->least) < 0)
         g->least = x;
     if (g->count == 0 || fraction_compare(x, g->most) > 0)
@@ -328,21 +393,31 @@ static void add_gathered(struct table *t, const struct line *line, day_t from, d
     f->note = step_note(t, line, g);
     if (g->count == 0)
         return;
-    f->value = fraction_divide(t->s.arena, g->sum, fraction_from_int(g->arena, g->count));
-    f->least = supplies_keep(&t->s, g->least);
-    f->most = supplies_keep(&t->s, g->most);
+    f->value = fraction_divide(t->results, g->sum, fraction_from_int(t->gathering, g->count));
+    f->least = fraction_add(t->results, g->least, t->s.zero);
+    f->most = fraction_add(t->results, g->most, t->s.zero);
 }
 
-static void add_step(struct table *t, const struct line *line, day_t from, day_t to)
+static void work_day(struct table *t, day_t day)
 {
-    struct gathered g = {.arena = arena_new()};
+    for (size_t i = 0; i < t->lines.count; i++)
+        add_day(t, &t->lines.line[i], day);
+    supplies_tidy(&t->s);
+}
+
+static void work_step(struct table *t, day_t from, day_t to)
+{
+    t->gathering = arena_new();
+    memset(t->gathered, 0, t->lines.count * sizeof *t->gathered);
     for (day_t day = from; day <= to; day++) {
-        gather(t, line, day, &g);
+        for (size_t i = 0; i < t->lines.count; i++)
+            gather(t, &t->lines.line[i], day, &t->gathered[i]);
         supplies_tidy(&t->s);
     }
-    if (g.present > 0)
-        add_gathered(t, line, from, to, &g);
-    arena_free(g.arena);
+    for (size_t i = 0; i < t->lines.count; i++)
+        if (t->gathered[i].present > 0)
+            add_gathered(t, &t->lines.line[i], from, to, &t->gathered[i]);
+    arena_free(t->gathering);
 }
 
 /* ---- all of it ---- */
@@ -376,52 +451,81 @@ static size_t step_count(const struct table *t)
     return steps;
 }
 
-/* Room for every line in every step is taken at once: growing would leave copies behind. */
+static void hand_over(struct table *t)
+{
+    t->sink(t->context, t->figures, t->count);
+    t->count = 0;
+    arena_free(t->results);
+    t->results = arena_new();
+}
+
+/* Room for every line in every step that is kept is taken at once: growing would leave copies
+ * behind. */
 static void work_all(struct table *t)
 {
     const struct process_options *o = t->options;
-    t->figures = arena_alloc(t->s.arena, step_count(t) * t->lines.count * sizeof *t->figures);
+    size_t lines = t->lines.count;
+    size_t kept_steps = t->sink ? 1 : step_count(t);
+    t->figures = arena_alloc(t->s.arena, kept_steps * lines * sizeof *t->figures);
+    t->gathered = arena_alloc(t->s.arena, lines * sizeof *t->gathered);
     for (day_t from = o->from, to; from <= o->to; from = to + 1) {
         to = step_last(t, from);
         if (to > o->to)
             to = o->to;
-        for (size_t i = 0; i < t->lines.count; i++) {
-            if (o->step == STEP_DAY)
-                add_day(t, &t->lines.line[i], from);
-            else
-                add_step(t, &t->lines.line[i], from, to);
-            supplies_tidy(&t->s);
-        }
+        if (o->step == STEP_DAY)
+            work_day(t, from);
+        else
+            work_step(t, from, to);
+        if (t->sink)
+            hand_over(t);
     }
+}
+
+/* `a` holds what lasts as long as the table is worked. */
+static enum status work_table(struct table *t, struct arena *a, const struct frame *frame,
+                              struct fault *f)
+{
+    const struct process_options *o = t->options;
+    assert(o->from <= o->to);
+    if (o->smooth < 1)
+        return fault_usage(f, "give at least 1 day", "cannot take a mean over %d days", o->smooth);
+    if (process_check(frame_plant(frame), f) != OK)
+        return FAULT;
+    t->s = (struct supplies){.arena = a,
+                             .passing = arena_new(),
+                             .frame = frame,
+                             .zero = fraction_from_int(a, 0),
+                             .plant = frame_plant(frame),
+                             .first = o->from - (o->smooth - 1),
+                             .last = o->to,
+                             .smooth = o->smooth,
+                             .in_turn = o->smooth == 1};
+    lines_find(&t->s, &t->lines);
+    lines_own(&t->s, &t->lines);
+    sort_lines(&t->lines);
+    work_all(t);
+    arena_free(t->s.passing);
+    return OK;
 }
 
 enum status process_table(struct arena *a, const struct frame *frame,
                           const struct process_options *o, struct process_figure **out,
                           size_t *count, struct fault *f)
 {
-    enum status rc = OK;
-    struct table t = {.options = o};
-    assert(o->from <= o->to);
-    *out = NULL;
-    *count = 0;
-    if (o->smooth < 1)
-        return fault_usage(f, "give at least 1 day", "cannot take a mean over %d days", o->smooth);
-    TRY(process_check(frame_plant(frame), f));
-    t.s = (struct supplies){.arena = a,
-                            .passing = arena_new(),
-                            .frame = frame,
-                            .zero = fraction_from_int(a, 0),
-                            .plant = frame_plant(frame),
-                            .first = o->from - (o->smooth - 1),
-                            .last = o->to,
-                            .smooth = o->smooth};
-    lines_find(&t.s, &t.lines);
-    lines_own(&t.s, &t.lines);
-    sort_lines(&t.lines);
-    work_all(&t);
+    struct table t = {.options = o, .results = a};
+    enum status rc = work_table(&t, a, frame, f);
     *out = t.figures;
     *count = t.count;
-done:
-    arena_free(t.s.passing);
+    return rc;
+}
+
+enum status process_each(const struct frame *frame, const struct process_options *o,
+                         process_sink *sink, void *context, struct fault *f)
+{
+    struct arena *a = arena_new();
+    struct table t = {.options = o, .results = arena_new(), .sink = sink, .context = context};
+    enum status rc = work_table(&t, a, frame, f);
+    arena_free(t.results);
+    arena_free(a);
     return rc;
 }

@@ -92,7 +92,10 @@ struct text_style {
 };
 
 void write_text(FILE *out, const struct page *p, const struct text_style *style);
-void write_csv(FILE *out, const struct table *t); /* columns with a key, RFC 4180, LF, guarded */
+void write_csv(FILE *out, const struct table *t);
+/* The same without the line of names: more rows of a table whose first were written before. */
+void write_csv_rows(FILE *out,
+                    const struct table *t); /* columns with a key, RFC 4180, LF, guarded */
 void write_json(
     FILE *out,
     const struct table *t); /* an array of objects; numbers as written, empty cells null */

@@ -23,9 +23,17 @@ void write_csv(FILE *out, const struct table *t)
     }
     text_add_char(&line, '\n');
     fwrite(line.at, 1, line.length, out);
+    text_free(&line);
+    write_csv_rows(out, t);
+}
+
+void write_csv_rows(FILE *out, const struct table *t)
+{
+    struct text line;
+    text_init(&line, row_bytes_most);
     for (size_t r = 0; r < t->rows; r++) {
+        const char *comma = "";
         text_clear(&line);
-        comma = "";
         for (size_t i = 0; i < t->columns; i++) {
             if (t->column[i].key == NULL)
                 continue;

@@ -1,5 +1,6 @@
 /* books: making, loading, reading and damaging books for tests. */
 #include "book/books.h"
+#include "book/store.h"
 #include "plant/describe.h"
 
 #include <stdio.h>
@@ -59,6 +60,13 @@ int shelf_setup(void **state)
     struct shelf *s = shelf_new();
     good(s, book_create(s->path, s->draft, &tester, &s->fault));
     *state = s;
+    return 0;
+}
+
+int shelf_setup_format_1(void **state)
+{
+    *state = shelf_new();
+    shelf_put_format_1(*state);
     return 0;
 }
 
@@ -193,6 +201,16 @@ static void add_aside(struct shelf *s, struct book *b, const struct row_text *fr
     good(s, book_load_aside(b, &row, reason, why, &s->fault));
 }
 
+static void add_raw(struct shelf *s, struct book *b, const struct row_text *from, char **word,
+                    size_t count)
+{
+    struct raw_value raw = {.file = from->file, .line = from->line};
+    assert_int_equal(count, RAW_COLUMNS);
+    for (size_t i = 0; i < RAW_COLUMNS; i++)
+        raw.cell[i] = strcmp(word[i], "-") == 0 ? "" : word[i];
+    good(s, book_load_raw(b, &raw, &s->fault));
+}
+
 static char add_line(struct shelf *s, struct book *b, const struct row_text *row, char **word,
                      size_t count)
 {
@@ -205,6 +223,10 @@ static char add_line(struct shelf *s, struct book *b, const struct row_text *row
     if (strncmp(word[0], "aside:", 6) == 0) {
         add_aside(s, b, row, word + 1, count - 1, reason_of(word[0] + 6), "because");
         return 'S';
+    }
+    if (strcmp(word[0], "raw:") == 0) {
+        add_raw(s, b, row, word + 1, count - 1);
+        return '\0';
     }
     struct reading r = reading_of(s->arena, s->plant, word, count);
     r.file = row->file;
@@ -227,7 +249,9 @@ const char *add_lines(struct shelf *s, struct book *b, const char *file, const c
         size_t length = strcspn(lines, "\n");
         row.line++;
         size_t count = words_of(s->arena, lines, length, word, NELEM(word));
-        text_add_char(&out, add_line(s, b, &row, word, count));
+        char became = add_line(s, b, &row, word, count);
+        if (became)
+            text_add_char(&out, became);
         lines += length + (lines[length] == '\n');
     }
     const char *told = arena_text(s->arena, out.at);
@@ -250,6 +274,16 @@ const char *shelf_load(struct shelf *s, const char *file, const char *reason, co
     good(s, book_load_begin(b, s->plant, &tester, reason != NULL, &s->fault));
     const char *told = add_lines(s, b, file, lines);
     good(s, end_load(s, b, file, reason, (long)strlen(told)));
+    book_close(b);
+    return told;
+}
+
+const char *shelf_bench(struct shelf *s, const char *file, const char *lines)
+{
+    struct book *b = shelf_open(s, BOOK_WRITE);
+    good(s, book_bench_begin(b, s->plant, &tester, false, &s->fault));
+    const char *told = add_lines(s, b, file, lines);
+    good(s, end_load(s, b, file, NULL, (long)strlen(told)));
     book_close(b);
     return told;
 }
@@ -302,6 +336,48 @@ static enum status tell_revision(void *context, const struct book_revision *r, s
     return OK;
 }
 
+static enum status tell_raw(void *context, const struct raw_value *r, struct fault *f)
+{
+    struct text *t = context;
+    (void)f;
+    text_print(t, "raw %s:%ld", r->file, r->line);
+    for (size_t i = 0; i < RAW_COLUMNS; i++)
+        text_print(t, " '%s'", r->cell[i]);
+    text_add(t, "\n");
+    return OK;
+}
+
+enum { BENCHES_MOST = 16, BENCH_LINES = 40 };
+
+struct benches {
+    struct text *told;
+    int64_t batch[BENCHES_MOST];
+    size_t count;
+};
+
+static enum status tell_batch(void *context, const struct book_batch *x, struct fault *f)
+{
+    struct benches *all = context;
+    (void)f;
+    text_print(all->told, "batch %d %s %s\n", (int)x->batch, x->kind, x->file);
+    if (strcmp(x->kind, "bench") == 0 && all->count < BENCHES_MOST)
+        all->batch[all->count++] = x->batch;
+    return OK;
+}
+
+/* By every line of every bench sheet. */
+static enum status tell_benches(struct book *b, struct text *t, struct fault *f)
+{
+    struct benches all = {.told = t};
+    enum status rc = OK;
+    TRY(book_batches(b, tell_batch, &all, f));
+    for (size_t i = 0; i < all.count; i++)
+        for (long line = 2; line < BENCH_LINES; line++)
+            TRY(book_raw_of(b, all.batch[i], line, tell_raw, t, f));
+done:
+    return rc;
+}
+
 static enum status tell_all(struct shelf *s, struct book *b, struct text *t, struct fault *f)
 {
     struct plant_draft *draft = NULL;
@@ -318,6 +394,7 @@ static enum status tell_all(struct shelf *s, struct book *b, struct text *t, str
     TRY(book_each(b, plant, DAY_NONE, DAY_NONE, tell_reading, t, f));
     TRY(book_asides(b, DAY_NONE, DAY_NONE, tell_aside, t, f));
     TRY(book_revisions(b, plant, DAY_NONE, DAY_NONE, tell_revision, t, f));
+    TRY(tell_benches(b, t, f));
 done:
     return rc;
 }
@@ -408,6 +485,22 @@ static sqlite3 *raw_open(struct shelf *s)
     sqlite3 *db = NULL;
     assert_int_equal(sqlite3_open(s->path, &db), SQLITE_OK);
     return db;
+}
+
+void shelf_put_format_1(struct shelf *s)
+{
+    const char *source = getenv("WEIRBOOK_SOURCE");
+    size_t length;
+    sqlite3 *db = NULL;
+    if (!source)
+        fail_msg("WEIRBOOK_SOURCE is to name the checkout");
+    const uint8_t *rows =
+        file_bytes(s->arena, arena_print(s->arena, "%s/tests/book/format-1.sql", source), &length);
+    assert_int_equal(sqlite3_open(s->path, &db), SQLITE_OK);
+    run(db, "PRAGMA page_size = 8192; PRAGMA synchronous = OFF");
+    run(db, book_file("001-book.sql"));
+    run(db, arena_bytes(s->arena, (const char *)rows, length));
+    sqlite3_close(db);
 }
 
 void raw(struct shelf *s, const char *sql)

@@ -3,6 +3,8 @@
  *     POINT PARAMETER DATE VALUE UNIT [@HH:MM] [#SAMPLE] [note:WORD] [mdl:NUMBER] [rl:NUMBER]
  * VALUE is 12.5, <2, >2420, E12, DNQ0.4, a no-data code as code:C, or withdrawn. A line that begins
  * with "aside:REASON " is a row set aside, its cells parted by blanks in the order of a long file.
+ * One that begins with "raw: " is a raw value of a bench sheet, its cells in the order of
+ * raw_columns, "-" for a blank; it is no row of the counts.
  */
 #ifndef WEIRBOOK_TESTS_BOOKS_H
 #define WEIRBOOK_TESTS_BOOKS_H
@@ -33,6 +35,9 @@ extern const struct author tester;
 int shelf_setup(void **state);
 int shelf_teardown(void **state);
 struct shelf *shelf_new(void); /* the same without the book */
+/* As setup: the book is one that the program of format 1 wrote (format-1.sql). */
+int shelf_setup_format_1(void **state);
+void shelf_put_format_1(struct shelf *s);
 void shelf_free(struct shelf *s);
 
 /* A draft of the small plant, with more rows of a file behind it (NULL: none). */
@@ -45,6 +50,8 @@ struct book *shelf_open(struct shelf *s, enum book_mode mode);
  * revised R, contradicts C (which is then set aside), set aside S. reason: NULL, or why it revises.
  */
 const char *shelf_load(struct shelf *s, const char *file, const char *reason, const char *lines);
+/* The same as a bench sheet. */
+const char *shelf_bench(struct shelf *s, const char *file, const char *lines);
 /* The same on an open book, up to its end; the load is still under way. */
 const char *add_lines(struct shelf *s, struct book *b, const char *file, const char *lines);
 /* Ends a load that add_lines fed. */

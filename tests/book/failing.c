@@ -2,6 +2,7 @@
  * count. */
 #include "book/failing.h"
 
+#include <signal.h>
 #include <sqlite3.h>
 #include <stddef.h>
 #include <string.h>
@@ -27,13 +28,16 @@ bool failing_came(void)
 
 static bool fails(enum failing kind)
 {
-    if (plan.kind != kind || plan.left == 0)
+    bool kills = plan.kind == FAIL_KILL && kind == FAIL_FILES;
+    if ((plan.kind != kind && !kills) || plan.left == 0)
         return false;
     if (plan.left > 1) {
         plan.left--;
         return false;
     }
     plan.came = true;
+    if (kills)
+        raise(SIGKILL);
     if (!plan.forever)
         plan.left = 0;
     return true;

@@ -5,7 +5,8 @@
 
 #include <stdbool.h>
 
-enum failing { FAIL_MEMORY, FAIL_FILES };
+/* FAIL_KILL: the program is killed at the n-th request of its files. */
+enum failing { FAIL_MEMORY, FAIL_FILES, FAIL_KILL };
 
 void failing_install(void);
 /* From now on the n-th (from 1) request of the kind fails, and with `forever` all after it. n = 0:

@@ -16,6 +16,12 @@ static void fill(struct shelf *s)
     shelf_load(s, "b.csv", "typing error",
                "EFF BOD5 2025-03-05 3.0 mg/L\nEFF ECOLI 2025-03-05 code:E MPN/100mL");
     shelf_load(s, "c.csv", NULL, "EFF FLOW 2025-03-05 2.4 MGD");
+    shelf_bench(s, "bench.csv",
+                "raw: suspended-solids 2025-03-16 - EFF 1 tare 1.2345 g\n"
+                "raw: suspended-solids 2025-03-16 - EFF 1 dried 1.2385 g\n"
+                "raw: suspended-solids 2025-03-16 - - blank dried 1.1110 g\n"
+                "raw: suspended-solids 2025-03-16 - INF 1 dried x g\n"
+                "EFF TSS 2025-03-16 8 mg/L");
 }
 
 static enum status list(void *context, const struct book_finding *x, struct fault *f)
@@ -38,9 +44,10 @@ static void a_sound_book_passes_and_says_what_was_looked_at(void **state)
                               "foreign keys: every reference leads somewhere\n"
                               "schema: tables, views and triggers are as weirbook makes them\n"
                               "chain: every batch follows the one before it\n"
-                              "batch: 4 checked, all as they were written\n"
-                              "reading: 6 checked, all as they were written\n"
+                              "batch: 5 checked, all as they were written\n"
+                              "reading: 7 checked, all as they were written\n"
                               "row set aside: 1 checked, all as they were written\n"
+                              "raw value: 4 checked, all as they were written\n"
                               "description: 12 checked, all as they were written\n");
     text_free(&t);
 }
@@ -95,10 +102,10 @@ static void whatever_is_changed_is_named(void **state)
         {"reading", "DELETE FROM reading WHERE id = 6",
          "reading 4 c.csv:0: 1 of its 1 readings are missing"},
         {"reading",
-         "INSERT INTO reading SELECT 7, series, day + 1, minute, 0, batch, line, qualifier, code, "
+         "INSERT INTO reading SELECT 8, series, day + 1, minute, 0, batch, line, qualifier, code, "
          "value, coefficient, scale, "
          "detail, mark FROM reading WHERE id = 1",
-         "reading 0 :0: number 7 belongs to no batch"},
+         "reading 0 :0: number 8 belongs to no batch"},
         {"point_code", "UPDATE point_code SET name = 'INF2' WHERE name = 'INF'",
          "reading 2 a.csv:4: INF2 TSS"},
         {"parameter_code", "UPDATE parameter_code SET name = 'TDS' WHERE name = 'TSS'",
@@ -113,6 +120,47 @@ static void whatever_is_changed_is_named(void **state)
         {"aside", "UPDATE aside SET explanation = ''", "row set aside 2 a.csv:5: "},
         {"aside", "DELETE FROM aside",
          "row set aside 2 a.csv:0: 1 of its 1 rows set aside are missing"},
+        {"bench_value", "UPDATE bench_value SET value = '1.2345' WHERE id = 2",
+         "raw value 5 bench.csv:3: dried of sheet suspended-solids, '1.2345' (raw value 2), is not "
+         "what was loaded; go back to a sound copy\n"},
+        {"bench_value", "UPDATE bench_value SET sheet = 'bod' WHERE id = 1",
+         "raw value 5 bench.csv:2: "},
+        {"bench_value", "UPDATE bench_value SET date = '2025-03-07' WHERE id = 1",
+         "raw value 5 bench.csv:2: "},
+        {"bench_value", "UPDATE bench_value SET time = '08:00' WHERE id = 1",
+         "raw value 5 bench.csv:2: "},
+        {"bench_value", "UPDATE bench_value SET point = 'EFF' WHERE id = 3",
+         "raw value 5 bench.csv:4: "},
+        {"bench_value", "UPDATE bench_value SET run = '2' WHERE id = 1",
+         "raw value 5 bench.csv:2: "},
+        {"bench_value", "UPDATE bench_value SET argument = 'tare' WHERE id = 2",
+         "raw value 5 bench.csv:3: tare"},
+        {"bench_value", "UPDATE bench_value SET unit = 'mg' WHERE id = 4",
+         "raw value 5 bench.csv:5: "},
+        {"bench_value", "UPDATE bench_value SET line = 9 WHERE id = 4",
+         "raw value 5 bench.csv:9: "},
+        {"bench_value", "UPDATE bench_value SET batch = 4 WHERE id = 4",
+         "raw value 5 bench.csv:5: "},
+        {"bench_value", "UPDATE bench_value SET mark = 1 WHERE id = 4",
+         "raw value 5 bench.csv:5: "},
+        {"bench_value", "DELETE FROM bench_value WHERE id = 4",
+         "raw value 5 bench.csv:0: 1 of its 4 raw values are missing"},
+        {"bench_value", "DELETE FROM bench_value WHERE id = 4", "batch 5 bench.csv:0: what stands"},
+        {"bench_value",
+         "INSERT INTO bench_value SELECT 5, batch, line, sheet, date, time, point, run, argument, "
+         "value, unit, mark FROM bench_value WHERE id = 1",
+         "raw value 0 :0: number 5 belongs to no batch"},
+        {"bench", "UPDATE bench SET raw_values = 3", "batch 5 bench.csv:0: what stands in it"},
+        {"bench", "UPDATE bench SET raw_values = 3",
+         "raw value 0 :0: number 4 belongs to no batch"},
+        {"bench", "UPDATE bench SET first_raw = 2", "batch 5 bench.csv:0: what stands in it"},
+        {"bench", "DELETE FROM bench", "batch 5 bench.csv:0: nothing says what came with it"},
+        {"bench", "DELETE FROM bench", "batch 5 bench.csv:0: what stands in it"},
+        {"bench", "INSERT INTO bench VALUES (4, 0, 1)",
+         "batch 4 c.csv:0: nothing says what came with it"},
+        {"bench", "INSERT INTO bench VALUES (4, 0, 1)", "batch 4 c.csv:0: what stands in it"},
+        {"batch", "UPDATE batch SET kind = 'load' WHERE id = 5",
+         "batch 5 bench.csv:0: what stands in it"},
         {"load", "UPDATE load SET file = 'z.csv' WHERE batch = 3",
          "batch 3 z.csv:0: what stands in it"},
         {"load", "UPDATE load SET reason = 'none' WHERE batch = 3",
@@ -121,10 +169,10 @@ static void whatever_is_changed_is_named(void **state)
         {"load", "UPDATE load SET present = 1, rows = 2 WHERE batch = 4", "batch 4 c.csv:0: "},
         {"batch", "UPDATE batch SET who = 'nobody' WHERE id = 3", "batch 3 b.csv:0: "},
         {"batch", "UPDATE batch SET at = '2025-04-02T06:10:00Z' WHERE id = 4", "batch 4 c.csv:0: "},
-        {"batch", "INSERT INTO batch VALUES (5, 'load', '2025-04-02T06:10:00Z', 'x')",
-         "batch 5 :0: nothing says what came with it"},
+        {"batch", "INSERT INTO batch VALUES (6, 'load', '2025-04-02T06:10:00Z', 'x')",
+         "batch 6 :0: nothing says what came with it"},
         {"batch", "INSERT INTO batch VALUES (9, 'load', '2025-04-02T06:10:00Z', 'x')",
-         "chain 9 :0: batch 5 should come here"},
+         "chain 9 :0: batch 6 should come here"},
         {"chain", "UPDATE chain SET head = zeroblob(32) WHERE batch = 3", "batch 3 b.csv:0: "},
         {"chain", "UPDATE chain SET head = zeroblob(32) WHERE batch = 3",
          "chain 4 c.csv:0: it does not follow the head before it"},
@@ -132,6 +180,8 @@ static void whatever_is_changed_is_named(void **state)
          "chain 3 b.csv:0: it does not follow"},
         {"chain", "DELETE FROM chain WHERE batch = 4",
          "chain 4 c.csv:0: it has no link in the chain"},
+        {"chain", "DELETE FROM chain WHERE batch = 5",
+         "chain 5 bench.csv:0: it has no link in the chain"},
         {"description", "UPDATE description SET reason = 'x'", "batch 1 :0: "},
         {"plant_limit", "UPDATE plant_limit SET \"limit\" = '35.0' WHERE parameter = 'BOD5'",
          "description 1 limits.csv:2: this row of limits.csv is not what was put in"},

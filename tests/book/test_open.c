@@ -88,7 +88,7 @@ static void a_newer_book_is_refused_by_its_number(void **state)
     assert_int_equal(chdir(s->folder), 0);
     raw(s, "PRAGMA user_version = 7");
     refused(s, "plant.book",
-            "'plant.book' is a book of format 7; this program knows formats up to 1; use a newer "
+            "'plant.book' is a book of format 7; this program knows formats up to 2; use a newer "
             "weirbook");
     raw(s, "PRAGMA user_version = 0");
     refused(s, "plant.book",
@@ -186,7 +186,7 @@ static void a_connection_is_set_as_it_must_be(void **state)
     }
     assert_string_equal(raw_text(s, "PRAGMA application_id"), "1466263922");
     assert_string_equal(raw_text(s, "PRAGMA journal_mode"), "delete");
-    assert_int_equal(book_format(), 1);
+    assert_int_equal(book_format(), 2);
     assert_string_equal(book_sqlite_version(), sqlite3_libversion());
 }
 

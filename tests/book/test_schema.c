@@ -119,9 +119,9 @@ static void readings_read_like_the_report(void **state)
 
 static void views_work_where_the_schema_is_not_trusted(void **state)
 {
-    static const char *const views[] = {"readings",       "daily",  "revisions", "batches",
-                                        "rows_set_aside", "plant",  "points",    "parameters",
-                                        "basins",         "limits", "meters",    "process"};
+    static const char *const views[] = {
+        "readings",   "daily",  "revisions", "batches", "rows_set_aside", "plant",        "points",
+        "parameters", "basins", "limits",    "meters",  "process",        "bench_values", "round"};
     struct shelf *s = THIS;
     sqlite3 *db = NULL;
     assert_int_equal(sqlite3_open(s->path, &db), SQLITE_OK);

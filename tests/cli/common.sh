@@ -43,3 +43,18 @@ END
 # Says whether a file is byte for byte what it was.
 remember() { sha256sum "$1" >.remembered; }
 unchanged() { sha256sum --quiet -c .remembered && echo "unchanged"; }
+
+# A book as the program of format 1 wrote it.
+old_book() {
+    { echo "PRAGMA page_size = 8192; PRAGMA synchronous = OFF;"; cat "$fixtures/../schema/001-book.sql" "$fixtures/../tests/book/format-1.sql"; } | sqlite3 old.book
+}
+
+# The files of raw values beside the scripts of bench sheets.
+sheets=$(dirname "$common")/bench
+
+# A book for bench sheets, named small.book: a digester and an aeration basin beside the small plant's points.
+bench_book() {
+    small_plant
+    printf 'AER,Aeration basin,aeration,\nDIG,Digester,digester,\n' >>plant/points.csv
+    "$weirbook" new small.book plant >/dev/null
+}

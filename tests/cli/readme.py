@@ -57,6 +57,7 @@ def main():
         os.symlink(program(), os.path.join(folder, ".bin", "weirbook"))
         for name in ("plant", "readings", "maps"):
             shutil.copytree(os.path.join(source(), "fixtures", "marrow-bend", name), os.path.join(folder, name))
+        shutil.copy(os.path.join(source(), "fixtures", "marrow-bend", "bench-2025-03-20.csv"), folder)
         blocks = []
         for block in BLOCK.findall(text):
             lines = []

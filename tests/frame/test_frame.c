@@ -490,6 +490,8 @@ static void every_code_and_word_is_there(void **state)
         assert_non_null(qualifier_words[i]);
     for (size_t i = 0; i < LONG_COLUMNS; i++)
         assert_non_null(long_columns[i]);
+    for (size_t i = 0; i < RAW_COLUMNS; i++)
+        assert_non_null(raw_columns[i]);
     for (size_t i = 0; i < REASON_COUNT; i++) {
         assert_non_null(reason_words[i]);
         assert_non_null(reason_todo[i]);

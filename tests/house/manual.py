@@ -244,7 +244,11 @@ def listed_columns(name):
 def make_book(folder):
     with open(os.path.join(folder, "march.csv"), "w", encoding="utf-8") as f:
         f.write("date,time,point,parameter,value,unit\n2025-03-04,,EFF,BOD5,20.0,mg/L\n2025-03-04,,EFF,FLOW,1.2,MGD\n"
-                "2025-03-05,,EFF,BOD5,about 3,mg/L\n")
+                "2025-03-05,,EFF,BOD5,about 3,mg/L\n2025-03-04,,AER,MLSS,2500,mg/L\n2025-03-04,,INF,FLOW,1.3,MGD\n"
+                "2025-03-04,,EFF,TSS,10,mg/L\n2025-03-04,,WAS,FLOW,0.02,MGD\n2025-03-04,,WAS,TSS,8000,mg/L\n"
+                "2025-03-04,,RAS,TSS,8000,mg/L\n2025-03-04,,PE,BOD5,140,mg/L\n")
+    with open(os.path.join(folder, "bench.csv"), "w", encoding="utf-8") as f:
+        f.write("sheet,date,time,point,run,argument,value,unit\nround,2025-03-04,,EFF,,PH,7.1,\n")
     for words_ in (("plant", "--example", "plant"), ("new", "small.book", "plant")):
         result = call(*words_, folder=folder)
         if result.returncode != 0:
@@ -253,8 +257,10 @@ def make_book(folder):
 
 def check_columns(checks):
     day = ("--from", "2025-03-04", "--to", "2025-03-04")
-    asked = (("load", 0, ("march.csv", "--as", "csv")), ("day", 0, ("2025-03-04", "--as", "csv")),
+    asked = (("load", 0, ("march.csv", "--as", "csv")), ("bench", 0, ("--from", "bench.csv", "--as", "csv")),
+             ("day", 0, ("2025-03-04", "--as", "csv")),
              ("process", 0, day + ("--as", "csv")), ("process", 1, day + ("--step", "month", "--as", "csv")),
+             ("waste", 0, ("--srt", "10", "--on", "2025-03-04", "--as", "csv")),
              ("permit", 0, ("--month", "2025-03", "--as", "csv")), ("room", 0, ("--on", "2025-03-04", "--as", "csv")),
              ("due", 0, ("--on", "2025-03-04", "--as", "csv")), ("plant", 0, ("--as", "csv")), ("check", 0, ("--as", "csv")),
              ("export", 0, ()), ("formula", 0, ("--as", "csv")), ("formula", 1, ("mass-load", "--as", "csv")),
@@ -268,6 +274,9 @@ def check_columns(checks):
             header = next(csv.reader(io.StringIO(result.stdout)), [])
             checks.that(result.returncode in (0, 3), f"weirbook {command} {' '.join(rest)}: {result.stderr.strip()}")
             checks.that(header == in_page, f"weirbook-{command}.1: COLUMNS has {in_page}, the program prints {header}")
+        ahead = next(csv.reader(io.StringIO(call("waste", "--srt", "10", "--on", "2025-03-04", "--days", "2", "--as", "csv", folder=folder).stdout)), [])
+        lists = listed_columns("weirbook-waste.1")
+        checks.that(ahead == lists[0] + lists[1], f"weirbook-waste.1: COLUMNS has {lists}, --days prints {ahead}")
         aside = next(csv.reader(io.StringIO(call("export", "--set-aside", folder=folder).stdout)), [])
         lists = listed_columns("weirbook-export.1")
         checks.that(aside == lists[0] + lists[1], f"weirbook-export.1: COLUMNS has {lists}, --set-aside prints {aside}")
@@ -288,7 +297,7 @@ def check_columns(checks):
 def check_description(checks):
     lines = page("weirbook-files.5")
     layouts = re.findall(r'\{"(\w+\.csv)",\s*(?:true|false),\s*\d+,\s*\d+,\s*\{(.*?)\}\}', read("src", "plant", "words.c"), re.S)
-    checks.that(len(layouts) == 7, "src/plant/words.c: seven layouts were not found")
+    checks.that(len(layouts) == 8, "src/plant/words.c: eight layouts were not found")
     for name, columns in layouts:
         part = section(lines, name)
         tags = set(entries(part, "Cm"))
@@ -314,6 +323,8 @@ def check_readings(checks):
     checks.same("weirbook-files.5: Long", set(array("src/frame/words.c", "long_columns")), set(entries(section(lines, "Long"), "Cm")))
     aside = array("src/intake/layout.c", "aside_columns")
     checks.that(aside and set(aside) <= words(section(lines, "Long")), "weirbook-files.5: Long: the columns of rows set aside are not all named")
+    checks.same("weirbook-files.5: RAW VALUES FILES", set(array("src/frame/words.c", "raw_columns")),
+                set(entries(section(lines, "RAW VALUES FILES"), "Cm")))
     columns = array("src/intake/map.c", r"columns")
     checks.same("weirbook-files.5: Column map", set(columns), set(entries(section(lines, "Column map"), "Cm")))
     dialect = entries(section(lines, "Dialect file"), "Cm")

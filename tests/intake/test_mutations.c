@@ -25,6 +25,16 @@ static const char *const sound[] = {
     ("date\tEFF TSS\tEFF PH\r\n03/14/2025\t1,234\t7.1\r\n03/15/2025\t\"1,234.5\"\t\r\n"),
 };
 
+static const char *const sound_raw[] = {
+    ("sheet,date,time,point,run,argument,value,unit\n"
+     "suspended-solids,2025-03-04,08:00,EFF,1,dried,1.2345,g\n"
+     "suspended-solids,2025-03-04,,,blank,dried,1.2001,\"g\"\n\n"
+     "bod,2025-03-04,08:00,EFF,\"a, \"\"b\"\"\nc\",initial,8.41,\n"),
+    ("\xef\xbb\xbfunit;value;argument;run;point;time;date;sheet\r\n"
+     "\xc2\xb5g;1,2345;dried;1;EFF;08:00;2025-03-04;suspended-solids\r\n"
+     ";12;colonies;2;EFF;;2025-03-04;membrane-filter\r\n"),
+};
+
 /* What does most harm to a reader of CSV, and a few bytes of anything. */
 static const char harmful[] = "\"\"\",;\t\n\r' \x80\xc3\xff\x01<>=-0123456789.,/:EeDNQ";
 
@@ -84,10 +94,44 @@ static void spoilt_files_lose_no_row(void **state)
     text_free(&t);
 }
 
+static void a_spoilt_file_of_raw_values_is_read_whole_or_not_at_all(void **state)
+{
+    struct scene *s = *state;
+    uint32_t seed = 2424;
+    long read = 0;
+    struct text t;
+    text_init(&t, 1 << 16);
+    for (long i = 0; i < MUTATIONS; i++) {
+        struct raw_value *value = NULL;
+        struct fault f = {.set = false};
+        size_t count = 0;
+        text_clear(&t);
+        text_add(&t, sound_raw[(size_t)i % NELEM(sound_raw)]);
+        for (uint32_t k = next(&seed) % CHANGES_MOST; k > 0 && t.length > 1; k--)
+            spoil(&t, &seed);
+        const char *path = scene_bytes(s, "spoilt-raw.csv", t.at, t.length);
+        if (intake_raw(s->arena, path, &value, &count, &s->summary, &f) != OK) {
+            assert_true(f.set && count == 0 && value == NULL && s->summary.rows == 0);
+            assert_null(strchr(f.text, '\n'));
+            continue;
+        }
+        read++;
+        assert_true(count > 0 && s->summary.rows == (long)count);
+        assert_int_equal(s->summary.bytes, t.length);
+        for (size_t k = 0; k < count; k++)
+            for (size_t c = 0; c < RAW_COLUMNS; c++)
+                assert_true(text_is_utf8(value[k].cell[c], strlen(value[k].cell[c])));
+    }
+    assert_in_range(read, MUTATIONS / 10, MUTATIONS - MUTATIONS / 10);
+    print_message("%d files, %ld read\n", MUTATIONS, read);
+    text_free(&t);
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(spoilt_files_lose_no_row),
+        cmocka_unit_test(a_spoilt_file_of_raw_values_is_read_whole_or_not_at_all),
     };
     return cmocka_run_group_tests(tests, scene_setup, scene_teardown);
 }

@@ -50,6 +50,16 @@ static const struct {
     {"Basins.csv", "basin,kind\n",
      ": 'Basins.csv' is no file of a description; the nearest is 'basins.csv'; rename it, or take "
      "it out of the folder\n"},
+    {"round.csv", "point,paramter\nEFF,PH\n",
+     "round.csv:1:2: no column 'paramter'; the nearest is 'parameter'; correct the heading\n"},
+    {"round.csv", "point,sample\nEFF,grab\n",
+     "round.csv:1: the column 'parameter' is missing; add it\n"},
+    {"round.csv", "point,parameter,sample\nEFF,PH\n",
+     "round.csv:2: the row has 2 cells, the header 3; give the row as many cells as the header\n"},
+    {"rounds.csv", "point,parameter\nEFF,PH\n",
+     ": 'rounds.csv' is no file of a description; the nearest is 'round.csv'; rename it, or take "
+     "it out of the folder\n"},
+    {"round.csv", "sample;parameter;point\ngrab;PH;EFF\n", ""},
     {"limits2.csv", LIMITS, ""}, /* a copy beside the real one */
     {"readings.csv", "date,EFF TSS\n", ""},
     {"notes.txt", "x", ""},
@@ -202,6 +212,30 @@ static void odd_cells_survive_writing(void **state)
     text_free(&after);
 }
 
+static const char *round_told(struct scene *s, const struct plant *p)
+{
+    text_clear(&s->said);
+    for (size_t i = 0; i < p->round_count; i++)
+        text_print(&s->said, "%s %s %s\n", p->points[p->round[i].point].id,
+                   p->parameters[p->round[i].parameter].id, p->round[i].sample);
+    return s->said.at;
+}
+
+static void a_round_keeps_its_order_on_the_way_in_and_out(void **state)
+{
+    struct scene *s = *state;
+    const char *from = sound_folder(s, "walked");
+    const char *to = scene_path(s, "walked-back");
+    const char *walk = "INF PH grab\nEFF TEMP \nEFF PH \nEFF DO =1, \"x\"\n";
+    scene_file(s, "walked/points.csv", POINTS "INF,Influent,influent,\n");
+    scene_file(s, "walked/round.csv",
+               "\xef\xbb\xbfsample;point;parameter\r\ngrab;INF;PH\r\n;EFF;TEMP\r\n\r\n;EFF;PH\r\n"
+               "\"=1, \"\"x\"\"\";EFF;DO\r\n");
+    assert_string_equal(round_told(s, plant_in(s->arena, from)), walk);
+    write_back(s, from, to, false);
+    assert_string_equal(round_told(s, plant_in(s->arena, to)), walk);
+}
+
 static const char *file_text(struct scene *s, const char *path)
 {
     char *text = arena_alloc(s->arena, 4096);
@@ -272,6 +306,7 @@ static void the_starter_description_is_a_sound_plant(void **state)
     assert_true(plant->point_count > 3);
     assert_true(plant->limit_count > 5);
     assert_true(plant_point(plant, "EFF") >= 0);
+    assert_true(plant->round_count > 5);
     struct stat info;
     assert_int_equal(stat(scene_path(s, "example/plant.csv"), &info), 0);
     mode_t mask = umask(0);
@@ -287,6 +322,7 @@ int main(void)
         cmocka_unit_test(the_catalogue_is_read_without_a_problem),
         cmocka_unit_test(what_is_written_back_is_the_same_description),
         cmocka_unit_test(odd_cells_survive_writing),
+        cmocka_unit_test(a_round_keeps_its_order_on_the_way_in_and_out),
         cmocka_unit_test(a_file_that_is_there_is_never_written_over),
         cmocka_unit_test(what_cannot_be_written_says_so),
         cmocka_unit_test(the_starter_description_is_a_sound_plant),

@@ -360,6 +360,17 @@ static const struct {
     {PLANT_PROCESS, "q,INF,BOD5,f,x,a b c d,",
      "process.csv:20:6: cannot read the source 'a b c d'; write POINT PARAMETER, basin NAME volume "
      "(or area, weir), or a number"},
+    {PLANT_ROUND, "INF,FLOW,\nEFF,FLOW,\nINF,FLOW,",
+     "round.csv:22:2: the stop INF FLOW stands already in line 20; keep one, or name another "
+     "sample"},
+    {PLANT_ROUND, "INF,PH,grab\nINF,PH,grab",
+     "round.csv:21:3: the stop INF PH grab stands already in line 20; keep one, or name another "
+     "sample"},
+    {PLANT_ROUND, "INX,PH,", "round.csv:20:1: no point 'INX'; the nearest is 'INF'"},
+    {PLANT_ROUND, "INF,FLOOW,", "round.csv:20:2: no parameter 'FLOOW'; the nearest is 'FLOW'"},
+    {PLANT_ROUND, "QQQQQQ,PH,", "round.csv:20:1: no point 'QQQQQQ'; add it to points.csv"},
+    {PLANT_ROUND, ",PH,", "round.csv:20:1: point is blank; fill it in"},
+    {PLANT_ROUND, "INF", "round.csv:20:2: parameter is blank; fill it in"},
 };
 
 static void each_mistake_gives_its_own_line(void **state)
@@ -435,6 +446,8 @@ static const struct {
     {PLANT_METERS, "INF,FLOW,totalizer,999999,0.001,2025-01-01,"},
     {PLANT_PROCESS, "q,AB1,,f,x,8.34,"},
     {PLANT_PROCESS, "q,,,f,x,basin SC1 weir,ft"},
+    /* One place more than once on a round: other things are read there, or another sample. */
+    {PLANT_ROUND, "INF,FLOW,\nINF,PH,\nINF,PH,grab\nEFF,PH,\nINF,PH,composite"},
 };
 
 static void what_only_looks_like_a_mistake_is_taken(void **state)

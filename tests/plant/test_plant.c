@@ -340,6 +340,39 @@ static void the_source_of_an_argument_is_a_reading_a_basin_or_a_number(void **st
     arena_free(a);
 }
 
+static void a_round_is_walked_in_the_order_of_its_rows(void **state)
+{
+    static const struct {
+        const char *point, *parameter, *sample;
+    } stops[] = {{"RAS", "FLOW", ""}, {"EFF", "PH", "grab"}, {"INF", "TEMP", ""},
+                 {"EFF", "TEMP", ""}, {"EFF", "PH", ""},     {"INF", "PH", ""}};
+    struct arena *a = arena_new();
+    struct plant_draft *d = small_plant(a);
+    struct plant *p;
+
+    (void)state;
+    add_rows(d, PLANT_ROUND, false, NEXT,
+             "RAS,FLOW,\nEFF, PH ,grab\nINF,TEMP\nEFF,TEMP,\nEFF,PH,\nINF,PH");
+    p = finished(d);
+    assert_int_equal(p->round_count, NELEM(stops));
+    for (size_t i = 0; i < NELEM(stops); i++) {
+        assert_string_equal(p->points[p->round[i].point].id, stops[i].point);
+        assert_string_equal(p->parameters[p->round[i].parameter].id, stops[i].parameter);
+        assert_string_equal(p->round[i].sample, stops[i].sample);
+    }
+    arena_free(a);
+}
+
+static void a_plant_may_have_no_round(void **state)
+{
+    struct arena *a = arena_new();
+    struct plant *p = finished(small_plant(a));
+
+    (void)state;
+    assert_int_equal(p->round_count, 0);
+    arena_free(a);
+}
+
 static void the_rows_are_kept_as_they_came(void **state)
 {
     struct arena *a = arena_new();
@@ -375,6 +408,8 @@ int main(void)
         cmocka_unit_test(a_row_replaces_what_it_fills_in_and_leaves_the_rest),
         cmocka_unit_test(built_in_bounds_follow_into_another_unit),
         cmocka_unit_test(the_source_of_an_argument_is_a_reading_a_basin_or_a_number),
+        cmocka_unit_test(a_round_is_walked_in_the_order_of_its_rows),
+        cmocka_unit_test(a_plant_may_have_no_round),
         cmocka_unit_test(the_rows_are_kept_as_they_came),
     };
 

@@ -245,6 +245,7 @@ static void the_layouts_are_those_of_the_design(void **state)
                          "season,from,to,when,samples,sample,allowed,ceiling,group,rules,note",
         [PLANT_METERS] = "meters.csv:point,parameter,kind,rolls_at,multiplier,from,to",
         [PLANT_PROCESS] = "process.csv:name,at,parameter,formula,argument,source,unit",
+        [PLANT_ROUND] = "round.csv:point,parameter,sample",
     };
 
     (void)state;
@@ -266,6 +267,8 @@ static void the_layouts_are_those_of_the_design(void **state)
     assert_true(plant_layout(PLANT_FIELDS)->required && plant_layout(PLANT_POINTS)->required &&
                 plant_layout(PLANT_LIMITS)->required);
     assert_false(plant_layout(PLANT_BASINS)->required);
+    assert_false(plant_layout(PLANT_ROUND)->required);
+    assert_int_equal(plant_layout(PLANT_ROUND)->needed, 2);
 }
 
 static void an_unknown_column_gets_the_nearest_one(void **state)

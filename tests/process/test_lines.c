@@ -8,6 +8,9 @@
 
 #include <cmocka.h>
 
+#include <math.h>
+#include <string.h>
+
 #include "process/catalogue.h"
 #include "process/plans.h"
 #include "process/small.h"
@@ -76,6 +79,7 @@ static const struct small_row works[] = {
     PARAMETER("CAKE", "ton"),
     PARAMETER("GRIT", "ft3"),
     PARAMETER("SCREENINGS", "ft3"),
+    PARAMETER("SEPTAGE", "gal"),
     PARAMETER("ENERGY", "kWh"),
     {PLANT_PARAMETERS, "ECOLI,E. coli,MPN/100mL,0,geometric,geometric,,,,,,"},
     {PLANT_BASINS, "AB,aeration,AER,1,MG,,,,,,"},
@@ -106,6 +110,7 @@ static const struct small_reading readings[] = {
     ON("INF", "ALK", "300"),
     ON("INF", "GRIT", "4"),
     ON("INF", "SCREENINGS", "3"),
+    ON("INF", "SEPTAGE", "5000"),
     ON("INF", "ENERGY", "3000"),
     ON("AER", "MLSS", "3000"),
     ON("AER", "MLVSS", "2400"),
@@ -213,6 +218,8 @@ static void every_kind_of_figure_is_worked_as_by_hand(void **state)
         {"bod-to-nutrient-ratio", "INF", "TP", "25", "1"},         /* 200 / 8 */
         {"nitrification-alkalinity-demand", "INF>EFF", "NH3N", "199.92", "mg/L"}, /* 28 x 7.14 */
         {"alkalinity-after-nitrification", "INF>EFF", "NH3N", "100.08", "mg/L"},
+        /* 75 + 28 x 7.14 - 300 is below 0: nothing is needed */
+        {"alkalinity-supplement", "INF>EFF", "NH3N", "0", "mg/L"},
         {"chlorine-dose", "EFF", "", "5", "mg/L"},              /* 83.4 / (2 x 8.34) */
         {"chlorine-demand", "CC", "", "3.5", "mg/L"},           /* 5 - 1.5 */
         {"contact-product", "CC", "", "54", "mg.min/L"},        /* 1.5 x 0.05 / 2 x 1440 */
@@ -245,8 +252,10 @@ static void every_kind_of_figure_is_worked_as_by_hand(void **state)
         {"grit-removal", "INF", "", "2", "ft3/MG"},
         {"screenings-removal", "INF", "", "1.5", "ft3/MG"},
         {"power-use-per-million-gallons", "INF", "", "1500", "kWh/MG"},
-        {"concentration-from-load", "POLY", "FEED", "1.25", "mg/L"}, /* 20.85 / (2 x 8.34) */
-        {"polymer-cost", "POLY", "", "20.85", "$/MG"},               /* 20.85 x 2 / 2 */
+        {"hauled-waste-share", "INF", "", "0.25", "%"},                   /* 5000 / 2000000 */
+        {"cake-hauled-per-million-gallons", "CAKE", "", "5000", "lb/MG"}, /* 5 x 2000 / 2 */
+        {"concentration-from-load", "POLY", "FEED", "1.25", "mg/L"},      /* 20.85 / (2 x 8.34) */
+        {"polymer-cost", "POLY", "", "20.85", "$/MG"},                    /* 20.85 x 2 / 2 */
     };
     for (size_t i = 0; i < NELEM(expected); i++) {
         const struct process_figure *f =
@@ -309,8 +318,208 @@ static void a_part_that_is_missing_is_named_through_the_figures_it_goes_into(voi
     /* Less than one left of ten thousand: counted as none by the default rule, and said. */
     assert_string_equal(the(&w, "2025-03-02", "percent-kill", "SE>EFF", "ECOLI")->note,
                         "with a less-than");
-    assert_null(the(&w, "2025-03-02", "log-removal", "SE>EFF", "ECOLI")->value);
     arena_free(w.arena);
+}
+
+/* The 1st with one reading changed. */
+static struct worked work_with(const char *point, const char *parameter, const char *value)
+{
+    static struct small_reading changed[NELEM(readings)];
+    struct worked w = {.arena = arena_new()};
+    struct plant *p = small_plant(w.arena, works, NELEM(works));
+    struct process_options o = {.from = small_day("2025-03-01"),
+                                .to = small_day("2025-03-01"),
+                                .step = STEP_DAY,
+                                .smooth = 1};
+    struct fault fault = {.set = false};
+    memcpy(changed, readings, sizeof changed);
+    for (size_t i = 0; i < NELEM(changed); i++)
+        if (text_equal(changed[i].point, point) && text_equal(changed[i].parameter, parameter) &&
+            text_equal(changed[i].day, "2025-03-01"))
+            changed[i].value = value;
+    w.frame = small_frame(w.arena, p, "2025-03-01", "2025-03-02", changed, NELEM(changed));
+    if (process_table(w.arena, w.frame, &o, &w.figures, &w.count, &fault) != OK)
+        fail_msg("%s", fault.text);
+    return w;
+}
+
+static void alkalinity_is_asked_for_where_too_little_is_left(void **state)
+{
+    (void)state;
+    struct worked w = work_with("INF", "ALK", "250");
+    const struct process_figure *f =
+        the(&w, "2025-03-01", "alkalinity-supplement", "INF>EFF", "NH3N");
+    assert_non_null(f->value);
+    /* 75 kept and 28 x 7.14 used up, of 250: the catalogue's equation by hand */
+    assert_int_equal(fraction_compare(f->value, fraction_parse(w.arena, "24.92")), 0);
+    assert_string_equal(f->note,
+                        "ammonia oxidized taken as its fall, no nitrate removed, 75 mg/L kept");
+    arena_free(w.arena);
+}
+
+/* Of 10000 /100mL: log10 by hand, cut to two decimals. */
+static void a_count_that_is_none_or_a_less_than_bounds_the_log_removal(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *value, *note;
+    } cases[] = {
+        {"0", "none counted at EFF: more than 4.00 if below 1"},
+        {"<1", "more than 4.00: a less-than at EFF, at most 1"},
+        {"<2", "more than 3.69: a less-than at EFF, at most 2"}, /* log10 5000 is 3.69897 */
+        {"<10", "more than 3.00: a less-than at EFF, at most 10"},
+        {"A", "no ECOLI at EFF on 2025-03-01: "},
+    };
+    for (size_t i = 0; i < NELEM(cases); i++) {
+        struct worked w = work_with("EFF", "ECOLI", cases[i].value);
+        const struct process_figure *f = the(&w, "2025-03-01", "log-removal", "SE>EFF", "ECOLI");
+        assert_null(f->value);
+        if (strncmp(f->note, cases[i].note, strlen(cases[i].note)) != 0)
+            fail_msg("of %s: '%s', not '%s'", cases[i].value, f->note, cases[i].note);
+        arena_free(w.arena);
+    }
+}
+
+/* ---- hostile values ---- */
+
+static bool may_be_none(const char *name)
+{
+    /* max(0, ...), or a difference that may be none */
+    static const char *const names[] = {"alkalinity-supplement"};
+    for (size_t i = 0; i < NELEM(names); i++)
+        if (text_equal(names[i], name))
+            return true;
+    return false;
+}
+
+static void check_hostile(const struct worked *w, const char *what, const char *value)
+{
+    assert_true(w->count > 0);
+    for (size_t i = 0; i < w->count; i++) {
+        const struct process_figure *f = &w->figures[i];
+        if (f->value == NULL) {
+            if (*f->note == '\0')
+                fail_msg("%s of %s: %s is empty without a reason", what, value, f->name);
+            assert_int_equal(f->count, 0);
+            continue;
+        }
+        if (!isfinite(fraction_double(f->value)))
+            fail_msg("%s of %s: %s is no finite number", what, value, f->name);
+        if (fraction_sign(f->value) == 0 && !text_equal(value, "0") && !may_be_none(f->name))
+            fail_msg("%s of %s: %s is 0 without a word", what, value, f->name);
+    }
+}
+
+/* Larger numbers than these never come to be readings: 1e308 is refused as it is read. */
+static const char *const hostile[] = {
+    "0", "-1", "-999999999999999999", "999999999999999999", "0.000000000000000001", "-0.5", "250"};
+
+static void no_hostile_reading_gives_a_figure_that_is_none(void **state)
+{
+    (void)state;
+    for (size_t i = 0; i < NELEM(readings); i++) {
+        if (!text_equal(readings[i].day, "2025-03-01"))
+            continue;
+        for (size_t h = 0; h < NELEM(hostile); h++) {
+            struct worked w = work_with(readings[i].point, readings[i].parameter, hostile[h]);
+            check_hostile(&w, readings[i].parameter, hostile[h]);
+            arena_free(w.arena);
+        }
+    }
+}
+
+static void no_figure_is_made_of_more_volatile_than_total_or_of_no_volume(void **state)
+{
+    (void)state;
+    static const struct {
+        const char *point, *parameter, *value, *name, *at;
+    } cases[] = {
+        {"DIGF", "VS", "100.5", "volatile-solids-reduction-van-kleeck", "DIGF>DS"},
+        {"DIGF", "VS", "100.5", "digester-volatile-loading", "DIGF>DS"},
+        {"INF", "FLOW", "0", "grit-removal", "INF"},
+        {"INF", "FLOW", "0", "hauled-waste-share", "INF"},
+        {"INF", "FLOW", "0", "cake-hauled-per-million-gallons", "CAKE"},
+        {"INF", "FLOW", "-1", "screenings-removal", "INF"},
+        {"INF", "SEPTAGE", "-1", "hauled-waste-share", "INF"},
+        {"CAKE", "CAKE", "-1", "cake-hauled-per-million-gallons", "CAKE"},
+        {"INF", "ALK", "-1", "alkalinity-supplement", "INF>EFF"},
+        {"INF", "NH3N", "1", "alkalinity-supplement", "INF>EFF"}, /* less than leaves */
+        {"EFF", "ECOLI", "-1", "log-removal", "SE>EFF"},
+        {"SE", "ECOLI", "0", "log-removal", "SE>EFF"},
+    };
+    for (size_t i = 0; i < NELEM(cases); i++) {
+        struct worked w = work_with(cases[i].point, cases[i].parameter, cases[i].value);
+        const struct process_figure *f = the(&w, "2025-03-01", cases[i].name, cases[i].at, NULL);
+        if (f->value != NULL)
+            fail_msg("%s with %s of %s is %s", f->name, cases[i].parameter, cases[i].value,
+                     fraction_print(w.arena, f->value, 9, ROUND_HALF_EVEN));
+        assert_true(*f->note != '\0');
+        arena_free(w.arena);
+    }
+}
+
+/* With every basin out of service no basin has a row, and nothing is divided by their volume. */
+static void with_all_basins_out_of_service_nothing_is_worked_from_them(void **state)
+{
+    (void)state;
+    static struct small_row closed[NELEM(works)];
+    struct arena *a = arena_new();
+    memcpy(closed, works, sizeof closed);
+    for (size_t i = 0; i < NELEM(closed); i++) {
+        size_t length = strlen(closed[i].cells);
+        if (closed[i].file == PLANT_BASINS) /* ...,from,to: the last cell is `to` */
+            closed[i].cells = arena_print(a, "%.*s,2025-02-28", (int)length - 1, closed[i].cells);
+    }
+    struct plant *p = small_plant(a, closed, NELEM(closed));
+    struct process_options o = {.from = small_day("2025-03-01"),
+                                .to = small_day("2025-03-01"),
+                                .step = STEP_DAY,
+                                .smooth = 1};
+    struct worked w = {.arena = a};
+    struct fault fault = {.set = false};
+    w.frame = small_frame(a, p, "2025-03-01", "2025-03-02", readings, NELEM(readings));
+    assert_int_equal(process_table(a, w.frame, &o, &w.figures, &w.count, &fault), OK);
+    check_hostile(&w, "basins", "out of service");
+    for (size_t i = 0; i < w.count; i++)
+        for (size_t k = 0; k < p->basin_count; k++)
+            assert_string_not_equal(w.figures[i].at, p->basins[k].id);
+    arena_free(a);
+}
+
+static void keep_names(void *context, const struct process_figure *figures, size_t count)
+{
+    struct text *t = context;
+    for (size_t i = 0; i < count; i++) {
+        text_print(t, "%d %s %s %s %s ", (int)figures[i].from, figures[i].name, figures[i].at,
+                   figures[i].unit, figures[i].note);
+        if (figures[i].value)
+            fraction_write(t, figures[i].value, 12, ROUND_HALF_EVEN);
+        text_print(t, "\n");
+    }
+}
+
+static void a_table_handed_over_by_steps_is_the_same_table(void **state)
+{
+    (void)state;
+    for (int step = STEP_DAY; step <= STEP_YEAR; step++) {
+        struct worked w = work("2025-03-01");
+        struct process_options o = {.from = small_day("2025-03-01"),
+                                    .to = small_day("2025-03-02"),
+                                    .step = (enum process_step)step,
+                                    .smooth = 1 + step % 2};
+        struct text whole, parts;
+        struct fault fault = {.set = false};
+        text_init(&whole, SIZE_MAX);
+        text_init(&parts, SIZE_MAX);
+        assert_int_equal(process_table(w.arena, w.frame, &o, &w.figures, &w.count, &fault), OK);
+        keep_names(&whole, w.figures, w.count);
+        assert_int_equal(process_each(w.frame, &o, keep_names, &parts, &fault), OK);
+        assert_true(whole.length > 1000);
+        assert_string_equal(whole.at, parts.at);
+        text_free(&whole);
+        text_free(&parts);
+        arena_free(w.arena);
+    }
 }
 
 static void what_the_table_cannot_use_need_not_be_read(void **state)
@@ -380,6 +589,12 @@ int main(void)
         cmocka_unit_test(every_kind_of_figure_is_worked_as_by_hand),
         cmocka_unit_test(figures_with_powers_are_near_what_is_published),
         cmocka_unit_test(a_part_that_is_missing_is_named_through_the_figures_it_goes_into),
+        cmocka_unit_test(alkalinity_is_asked_for_where_too_little_is_left),
+        cmocka_unit_test(a_count_that_is_none_or_a_less_than_bounds_the_log_removal),
+        cmocka_unit_test(no_hostile_reading_gives_a_figure_that_is_none),
+        cmocka_unit_test(no_figure_is_made_of_more_volatile_than_total_or_of_no_volume),
+        cmocka_unit_test(with_all_basins_out_of_service_nothing_is_worked_from_them),
+        cmocka_unit_test(a_table_handed_over_by_steps_is_the_same_table),
         cmocka_unit_test(every_plan_feeds_its_formula_whole),
         cmocka_unit_test(what_the_table_cannot_use_need_not_be_read),
     };

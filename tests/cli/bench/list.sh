@@ -1,0 +1,2 @@
+"$weirbook" bench --list
+"$weirbook" bench --list bod
