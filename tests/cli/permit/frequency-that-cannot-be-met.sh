@@ -15,4 +15,4 @@ outfall,point,parameter,basis,statistic,bound,limit,unit,samples,rules
 001,EFF,BOD5,concentration,monthly-average,max,30,mg/L,8/week,count_by=reading
 001,EFF,TSS,concentration,daily,max,30,mg/L,2/day,count_by=reading
 END
-"$weirbook" new small.book plant
+"$weirbook" new small.book plant >/dev/null && echo "by reading: a book is made"
