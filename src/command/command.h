@@ -17,7 +17,13 @@ enum option_kind {
     OPTION_ONE_OF, /* int: index of the word in `argument`, "text|csv|json"; -1 until given */
     OPTION_DAY,    /* day_t: YYYY-MM-DD; DAY_NONE until given */
     OPTION_MONTH,  /* day_t: YYYY-MM, its first day; DAY_NONE until given */
-    OPTION_COUNT   /* long: a whole number from 1 to 10000; 0 until given */
+    OPTION_COUNT,  /* long: a whole number from 1 to 10000; 0 until given */
+    OPTION_TEXTS   /* struct option_texts: may be given several times */
+};
+
+struct option_texts {
+    const char **at; /* in the order given */
+    size_t count, room;
 };
 
 struct option_spec {
@@ -51,7 +57,8 @@ struct command {
     const char *operands; /* "FILE..." as the help shows them; NULL: none */
     size_t least, most;   /* how many operands */
     enum operand_kind operand;
-    bool book; /* works on a book (-b) */
+    bool book;  /* works on a book (-b) */
+    bool fleet; /* and on several at once */
     const struct option_spec *option;
     size_t options, options_size;  /* count; bytes of the struct they are stored into */
     const struct example *example; /* two at least */
@@ -61,9 +68,9 @@ struct command {
 };
 
 extern const struct command command_new, command_load, command_bench, command_day, command_process,
-    command_waste, command_permit, command_report, command_plant, command_export, command_check,
-    command_remark, command_amend, command_withdraw, command_history, command_backup,
-    command_doubts, command_formula, command_help, command_completion;
+    command_waste, command_permit, command_room, command_due, command_report, command_plant,
+    command_export, command_check, command_remark, command_amend, command_withdraw, command_history,
+    command_backup, command_doubts, command_formula, command_help, command_completion;
 
 /* Runs the program on its words; returns the exit status: 0 done, 1 could not be done, 2 wrong
  * usage, 3 done and it found something. */

@@ -53,11 +53,20 @@ static enum status read_count(const struct option_spec *o, const char *value, lo
     return OK;
 }
 
-static enum status store(const struct option_spec *o, void *options, const char *value,
-                         struct fault *f)
+static void keep_text(struct arena *a, struct option_texts *texts, const char *value)
+{
+    const char **at = arena_push(a, &texts->at, &texts->count, &texts->room, sizeof *at);
+    *at = value;
+}
+
+static enum status store(struct arena *a, const struct option_spec *o, void *options,
+                         const char *value, struct fault *f)
 {
     void *at = slot(options, o);
     switch (o->kind) {
+    case OPTION_TEXTS:
+        keep_text(a, at, value);
+        return OK;
     case OPTION_FLAG:
         *(bool *)at = true;
         return OK;
@@ -168,11 +177,11 @@ enum status options_read(struct session *s, const struct command *c, int argc, c
         if (got == ':')
             return missing_argument(c, word, f);
         if (got == BY_BOOK) {
-            s->book_path = optarg;
+            session_name(s, optarg);
             continue;
         }
         given[got - BY_TABLE] = true;
-        if (store(&c->option[got - BY_TABLE], options, optarg, f) != OK)
+        if (store(s->arena, &c->option[got - BY_TABLE], options, optarg, f) != OK)
             return FAULT;
     }
     s->operand = (const char *const *)argv + optind;

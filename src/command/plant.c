@@ -1,4 +1,5 @@
 /* plant: the description out of a book and in again, and one to start from. */
+#include "command/plant_changes.h"
 #include "command/read.h"
 #include "command/session.h"
 
@@ -42,15 +43,19 @@ static enum status apply(struct session *s, const struct plant_options *o, struc
     struct plant *old = NULL, *plant = NULL;
     struct author author = {0};
     bool changed = false;
+    day_t first = DAY_NONE, last = DAY_NONE;
     if (session_author(s, o->by, &author, f) != OK ||
         session_book(s, BOOK_WRITE, NULL, &old, f) != OK ||
         command_read_folder(s, o->apply, &draft, &plant, f) != OK ||
+        book_extent(s->book, &first, &last, f) != OK ||
         book_apply(s->book, draft, &author, o->reason ? o->reason : "", &changed, f) != OK)
         return FAULT;
     fprintf(s->out,
             changed ? "%s: the description of %s is in force\n"
                     : "%s: %s says what the book says already; nothing was changed\n",
             s->book_path, o->apply);
+    if (changed)
+        plant_changes_tell(s, old, plant, first, last);
     return OK;
 }
 

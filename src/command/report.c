@@ -87,7 +87,7 @@ static enum status gather_revision(void *context, const struct book_revision *fr
     return OK;
 }
 
-static enum status make_folder(const char *folder, struct fault *f)
+enum status month_folder(const char *folder, struct fault *f)
 {
     if (mkdir(folder, 0777) == 0 || errno == EEXIST)
         return OK;
@@ -153,7 +153,7 @@ static enum status run(struct session *s, const void *given, struct fault *f)
         day_write(o->as_of, as_of);
         in.as_of = as_of;
     }
-    if (gather(s, o, &in, &month, f) != OK || make_folder(o->out, f) != OK)
+    if (gather(s, o, &in, &month, f) != OK || month_folder(o->out, f) != OK)
         return FAULT;
     char iso[11];
     day_write(o->month, iso);

@@ -85,6 +85,14 @@ static enum status step_back(struct session *s, struct fault *f)
     return book_as_of(s->book, batch, f);
 }
 
+void session_name(struct session *s, const char *path)
+{
+    const char **book =
+        arena_push(s->arena, &s->books, &s->book_count, &s->book_room, sizeof *book);
+    *book = path;
+    s->book_path = path;
+}
+
 enum status session_open(struct session *s, enum book_mode mode, struct fault *f)
 {
     if (mode == BOOK_WRITE && session_may_write(s, f) != OK)
@@ -290,13 +298,13 @@ static enum status read_globals(struct session *s, int argc, char **argv, int *n
             help_program(s);
             *done = true;
         } else if ((strcmp(word, "-b") == 0 || strcmp(word, "--book") == 0) && i + 1 < argc) {
-            s->book_path = argv[++i];
+            session_name(s, argv[++i]);
         } else if (strcmp(word, "--read-only") == 0) {
             s->read_only = true;
         } else if (strncmp(word, "--book=", 7) == 0) {
-            s->book_path = word + 7;
+            session_name(s, word + 7);
         } else if (strncmp(word, "-b", 2) == 0 && word[2]) {
-            s->book_path = word + 2;
+            session_name(s, word + 2);
         } else {
             return fault_usage(f, "see: weirbook --help", "cannot use '%s' before a command", word);
         }
@@ -328,6 +336,8 @@ static enum status run_command(struct session *s, int argc, char **argv, struct 
         help_command(s, s->command);
         return OK;
     }
+    if (s->book_count > 1 && !s->command->fleet)
+        return fault_usage(f, "name one book", "%s works on one book at a time", s->command->name);
     return s->command->run(s, options, f);
 }
 

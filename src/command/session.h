@@ -29,10 +29,12 @@ struct session {
     const struct command *command;
     const char *const *operand;
     size_t operands;
-    const char *book_path; /* from -b or $WEIRBOOK; NULL: not said */
-    const char *by;        /* who, for the record */
-    bool read_only;        /* from --read-only: whatever would write the book is refused */
-    day_t as_of;           /* set before the book is opened: read as it stood then; DAY_NONE */
+    const char *book_path; /* the last -b, or $WEIRBOOK; NULL: not said */
+    const char **books;    /* every -b */
+    size_t book_count, book_room;
+    const char *by; /* who, for the record */
+    bool read_only; /* from --read-only: whatever would write the book is refused */
+    day_t as_of;    /* set before the book is opened: read as it stood then; DAY_NONE */
     FILE *out;
     bool found; /* ends with status 3 */
     int width;
@@ -40,6 +42,8 @@ struct session {
     struct book *book; /* opened by session_book, closed at the end */
 };
 
+/* Notes a book that -b names. */
+void session_name(struct session *s, const char *path);
 /* Opens the book that -b, $WEIRBOOK or the current folder names, and its plant. */
 MUST_USE enum status session_book(struct session *s, enum book_mode mode,
                                   struct plant_draft **draft, struct plant **plant,

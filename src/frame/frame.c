@@ -197,6 +197,23 @@ void frame_close(struct frame *f)
     arena_free(passing);
 }
 
+struct frame *frame_under(struct arena *a, const struct frame *f, const struct plant *plant)
+{
+    struct frame *other = arena_alloc(a, sizeof *other);
+
+    assert(f->closed && plant->point_count == f->plant->point_count &&
+           plant->parameter_count == f->plant->parameter_count);
+    *other = *f;
+    other->arena = a;
+    other->plant = plant;
+    other->empty =
+        arena_alloc(a, (plant->point_count * plant->parameter_count + 1) * sizeof *other->empty);
+    /* Rules can change what a flow amounts to, and so which days are without discharge. */
+    other->marks = arena_alloc(a, plant->point_count * (size_t)(f->last - f->first + 1) + 1);
+    discharge_mark(other);
+    return other;
+}
+
 /* ---- questions ---- */
 
 day_t frame_first(const struct frame *f)

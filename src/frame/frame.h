@@ -171,6 +171,9 @@ struct frame *frame_new(struct arena *a, const struct plant *plant, day_t first,
 void frame_add(struct frame *f, const struct reading *r);
 /* Sorts and groups; work out totalizers' daily differences. Call once, after the last frame_add. */
 void frame_close(struct frame *f);
+/* The same readings (not copied; the closed frame must outlive this one) under a plant that differs
+ * in rules and limits alone. */
+struct frame *frame_under(struct arena *a, const struct frame *f, const struct plant *plant);
 
 day_t frame_first(const struct frame *f);
 day_t frame_last(const struct frame *f);

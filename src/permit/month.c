@@ -25,9 +25,9 @@ bool work_without_discharge(const struct work *w, day_t from, day_t to)
 {
     bool any = false;
 
-    for (day_t day = from; day <= to && day <= w->end; day++) {
-        if (!work_takes(w, day))
-            continue;
+    for (day_t day = from; day <= to && day <= w->on; day++) {
+        if (w->from <= day && day <= w->to && !work_takes(w, day))
+            continue; /* a week may reach over the row's ends */
         for (int i = 0; i < w->limit->points; i++) {
             int point = w->limit->point[i];
 
@@ -41,8 +41,8 @@ bool work_without_discharge(const struct work *w, day_t from, day_t to)
     return any;
 }
 
-static struct work work_on(struct arena *a, const struct frame *frame, const struct limit *l,
-                           const struct period *p, day_t on)
+struct work work_on(struct arena *a, const struct frame *frame, const struct limit *l,
+                    const struct period *p, day_t on)
 {
     return (struct work){
         .arena = a,
@@ -55,13 +55,12 @@ static struct work work_on(struct arena *a, const struct frame *frame, const str
         .to = p->to,
         .reach = period_reach(frame_plant(frame), l, p),
         .end = on < p->to ? on : p->to,
+        .on = on,
         .influent = -1,
     };
 }
 
 /* ---- conditions ---- */
-
-enum holds { HOLDS_NOT, HOLDS, HOLDS_UNKNOWN };
 
 static enum basis basis_of_unit(const struct parameter *p, const struct unit *unit)
 {
@@ -82,8 +81,8 @@ static enum basis basis_of_unit(const struct parameter *p, const struct unit *un
 }
 
 /* A row that only reports, under the parameter's own rules. */
-static struct limit plain_limit(const struct plant *plant, int point, int parameter,
-                                enum statistic statistic, const struct unit *unit)
+struct limit plain_limit(const struct plant *plant, int point, int parameter,
+                         enum statistic statistic, const struct unit *unit)
 {
     const struct parameter *p = &plant->parameters[parameter];
     struct limit l = {
@@ -139,9 +138,8 @@ static bool compares(const struct condition *c, int order)
 }
 
 /* R2: the exact figure of the month is compared. */
-static enum status condition_holds(struct arena *a, const struct frame *frame,
-                                   const struct limit *l, day_t month, day_t on, enum holds *out,
-                                   struct fault *f)
+enum status condition_holds(struct arena *a, const struct frame *frame, const struct limit *l,
+                            day_t month, day_t on, enum holds *out, struct fault *f)
 {
     const struct fraction *number;
     struct period periods[PERIODS_MOST];

@@ -37,9 +37,11 @@ static int by_procedure(const void *x, const void *y)
     return compare_ranked(x, y, true);
 }
 
+/* Loads and removals have nothing to rank: a less-than counts as its number there (R28). */
 static bool by_the_procedure(const struct work *w)
 {
-    return w->rules->word[RULE_NONDETECT] == NONDETECT_MEDIAN;
+    return w->rules->word[RULE_NONDETECT] == NONDETECT_MEDIAN && w->limit->basis != BASIS_LOAD &&
+           w->limit->basis != BASIS_REMOVAL;
 }
 
 static struct list ranked(const struct work *w, struct list l)

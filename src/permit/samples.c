@@ -6,16 +6,19 @@
 
 #define DAYS_A_WEEK 7
 
-/* R8, R34: days with a value, or their readings; in a rolling row those of its own days. */
+/* R8, R34: days with a value, or their readings; of loads and removals days, whatever count_by
+ * says; in a rolling row those of its own days. */
 long samples_taken(const struct work *w, const struct series *s)
 {
     struct list l = list_between(s->days, w->from, w->end);
+    bool by_reading = w->rules->word[RULE_COUNT_BY] == COUNT_BY_READING &&
+                      w->limit->basis != BASIS_LOAD && w->limit->basis != BASIS_REMOVAL;
     long taken = 0;
 
     for (size_t i = 0; i < l.count; i++) {
         if (!l.at[i].sample || !work_takes(w, l.at[i].day))
             continue;
-        taken += w->rules->word[RULE_COUNT_BY] == COUNT_BY_READING ? (long)l.at[i].readings : 1;
+        taken += by_reading ? (long)l.at[i].readings : 1;
     }
     return taken;
 }
@@ -42,12 +45,18 @@ static bool is_exempt(const struct work *w, day_t day)
     return true;
 }
 
+/* What stands on record after the day it is judged on is passed over (G1). */
+static bool is_owed(const struct work *w, day_t day)
+{
+    return day > w->on || (!work_no_discharge(w, day) && !is_exempt(w, day));
+}
+
 static long days_required(const struct work *w)
 {
     long days = 0;
 
     for (day_t day = w->from; day <= w->to; day++)
-        if (work_takes(w, day) && !work_no_discharge(w, day) && !is_exempt(w, day))
+        if (work_takes(w, day) && is_owed(w, day))
             days++;
     return days;
 }

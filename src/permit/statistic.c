@@ -213,7 +213,9 @@ static void figure_geomean(const struct work *w, const struct series *s, struct 
         return;
     x->exact.product = product;
     x->exact.root = root * (unsigned)l.count;
-    x->exact.number = root_round(a, product, x->exact.root, ROOT_DECIMALS, ROUND_HALF_EVEN);
+    x->exact.number = w->verdict_only
+                          ? product
+                          : root_round(a, product, x->exact.root, ROOT_DECIMALS, ROUND_HALF_EVEN);
     set_signs(x, &signs);
     set_stand(w, &signs, signs.largest, x);
 }

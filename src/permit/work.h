@@ -59,12 +59,18 @@ struct work {
     const struct limit *limit;
     const struct rules *rules;
     const struct statistic_kind *kind;
-    day_t from, to; /* the row's */
-    day_t reach;    /* the first day whose readings take part */
-    day_t end;      /* the last one: `to`, or the day the month is judged on */
-    int influent;   /* of a removal */
+    day_t from, to;    /* the row's */
+    day_t reach;       /* the first day whose readings take part */
+    day_t end;         /* the last one: `to`, or the day the month is judged on */
+    day_t on;          /* that day */
+    int influent;      /* of a removal */
+    bool verdict_only; /* a geometric mean is compared by its product alone: its 40 decimals, most
+                        * of the work, are left out */
 };
 
+/* The work on a period as it stands on the day `on`; the influent of a removal is still to find. */
+struct work work_on(struct arena *a, const struct frame *frame, const struct limit *l,
+                    const struct period *p, day_t on);
 /* A day in force, where only those count (R3). */
 bool work_takes(const struct work *w, day_t day);
 /* Whether the days from..to that have any entry are all without discharge; there must be one (R39).
@@ -153,8 +159,28 @@ void verdict_row(const struct work *w, const struct figure *x, bool when_missing
 long samples_taken(const struct work *w, const struct series *s);
 bool samples_required(const struct work *w, long *out);
 
+/* ---- needs ---- */
+
+/* Widens `needs` by what another month, or the same under other rules, needs. */
+void needs_add(struct arena *a, const struct plant *plant, day_t month, struct frame_span **needs,
+               size_t *count, size_t *room);
+
+/* What these days of each limit need, one period a limit (from > to: none), and the conditions of
+ * those limits in the month. */
+void needs_of_periods(struct arena *a, const struct plant *plant, day_t month,
+                      const struct period *periods, struct frame_span **needs, size_t *count);
+
 /* ---- conditions ---- */
 
+enum holds { HOLDS_NOT, HOLDS, HOLDS_UNKNOWN };
+
+/* A row that only reports, under the parameter's own rules. */
+struct limit plain_limit(const struct plant *plant, int point, int parameter,
+                         enum statistic statistic, const struct unit *unit);
+/* Whether the condition holds by the month's figure as it stands on `on` (R2, R37). */
+MUST_USE enum status condition_holds(struct arena *a, const struct frame *frame,
+                                     const struct limit *l, day_t month, day_t on, enum holds *out,
+                                     struct fault *f);
 /* The limit whose figure a condition asks for. */
 void condition_limit(const struct plant *plant, const struct limit *l, struct limit *out);
 

@@ -218,10 +218,36 @@ static bool one_figure(const struct limit *a, const struct limit *b)
            same_parts(a->parameter, a->parameters, b->parameter, b->parameters);
 }
 
-/* Both hold at once; rows of a group are choices, and rows of different conditions are tiers. */
-static bool both_hold(const struct limit *a, const struct limit *b)
+/* Whether some figure fulfils both conditions: tiers must part what they ask of. Conditions on
+ * different figures say nothing of each other, and a row without one is a limit for all tiers. */
+static bool conditions_meet(struct arena *arena, const struct condition *a,
+                            const struct condition *b)
 {
-    return *a->group == '\0' && *b->group == '\0' && text_equal(a->when.text, b->when.text) &&
+    bool over_a = a->comparison == WHEN_OVER || a->comparison == WHEN_AT_LEAST;
+    bool over_b = b->comparison == WHEN_OVER || b->comparison == WHEN_AT_LEAST;
+    const struct condition *least = over_a ? a : b, *most = over_a ? b : a;
+    const struct fraction *from, *to;
+    int order;
+
+    if (!a->set || !b->set)
+        return a->set == b->set;
+    if (a->point != b->point || a->parameter != b->parameter || a->statistic != b->statistic ||
+        a->percentile != b->percentile || !unit_same_kind(a->unit, b->unit))
+        return false;
+    if (over_a == over_b)
+        return true;
+    from =
+        unit_convert(arena, fraction_from_decimal(arena, least->number), least->unit, most->unit);
+    to = fraction_from_decimal(arena, most->number);
+    order = fraction_compare(from, to);
+    return order < 0 ||
+           (order == 0 && least->comparison == WHEN_AT_LEAST && most->comparison == WHEN_AT_MOST);
+}
+
+/* Both hold at once; rows of a group are choices. */
+static bool both_hold(struct arena *arena, const struct limit *a, const struct limit *b)
+{
+    return *a->group == '\0' && *b->group == '\0' && conditions_meet(arena, &a->when, &b->when) &&
            share_a_day(a, b);
 }
 
@@ -274,7 +300,7 @@ static bool pair_agrees(struct plant_draft *d, size_t i, size_t j)
     const struct plant_row *row = d->origin[PLANT_LIMITS][i];
     const struct limit *a = &d->plant->limits[i], *b = &d->plant->limits[j];
 
-    if (!one_figure(a, b) || !both_hold(a, b))
+    if (!one_figure(a, b) || !both_hold(d->arena, a, b))
         return true;
     if (repeats(d, i, j)) {
         problem(d, row, WHOLE_LINE, "part the two by from, to, season or when, or keep one",

@@ -112,6 +112,13 @@ struct rules {
  * zero in averages". In the arena. */
 const char *rule_sentence(struct arena *a, const struct rules *rules, enum rule r);
 
+struct plant;
+/* Reads `name=value`, or several with ; between, as a column `rules` holds them, into *r, each
+ * marked as its own. An unknown rule or word, and a rule that is its own already, is a fault of
+ * usage; `where` says where it stands. */
+MUST_USE enum status plant_rules_read(struct arena *a, const struct plant *plant, const char *where,
+                                      const char *text, struct rules *r, struct fault *f);
+
 /* ---- what a plant holds ----------------------------------------------------------------------
  * Cross references are indexes into the plant's arrays; -1 where there is none. */
 

@@ -249,6 +249,22 @@ bool read_rules(struct plant_draft *d, const struct plant_row *row, int column, 
     return ok;
 }
 
+/* What a person asks for outside a description is read as a row of limits.csv would be. */
+enum status plant_rules_read(struct arena *a, const struct plant *plant, const char *where,
+                             const char *text, struct rules *r, struct fault *f)
+{
+    struct plant_draft *d = plant_draft_new(a);
+    struct plant_row row = {.file = PLANT_LIMITS, .name = where};
+
+    d->plant = (struct plant *)plant; /* only looked into */
+    row.cell[LIMIT_RULES] = text;
+    if (*text == '\0')
+        problem(d, &row, WHOLE_LINE, "write it as RULE=VALUE, such as nondetect=half", "no rule");
+    if (read_rules(d, &row, LIMIT_RULES, r) && plant_draft_problems(d) == 0)
+        return OK;
+    return fault_usage(f, NULL, "%s", plant_draft_problem_at(d, 0));
+}
+
 /* ---- saying one ---- */
 
 #define WORDS_MOST 7

@@ -160,6 +160,98 @@ struct page *report_permit_page(struct arena *a, const struct plant *plant,
 bool report_remark_of_row(const struct month_remark *r, const struct permit_row *row);
 /* "remark 12: TEXT", in the arena. */
 const char *report_remark_note(struct arena *a, const struct month_remark *r);
+/* A limit and a row in words, for roll-ups: "EFF TSS, weekly average", "at most 45 mg/L", "52
+ * mg/L", "2025-03-16 to 2025-03-22". */
+const char *report_limit_name(struct arena *a, const struct limit *l);
+const char *report_limit_bound(struct arena *a, const struct limit *l);
+const char *report_row_figure(struct arena *a, const struct permit_row *row);
+const char *report_row_when(struct arena *a, const struct permit_row *row);
+/* How far a row is beyond its limit, as a number with three decimals: the figure over the limit, of
+ * a minimum the limit over the figure; for a shortfall of samples the share that is lacking. ""
+ * where it cannot be said (a limit or figure of 0). */
+char *report_share(struct arena *a, const struct permit_row *row);
+
+struct fleet_plant {
+    const char *book, *name, *exceeded, *shortfalls; /* counts as text */
+};
+struct fleet_finding {
+    const char *book, *plant;
+    bool exceeded;     /* else samples are short */
+    const char *share; /* report_share */
+    const char *what, *when, *figure, *limit, *times, *samples, *required;
+};
+struct fleet_missing {
+    const char *book, *why;
+};
+struct fleet_summary {
+    day_t month, on;
+    struct fleet_plant *plants;
+    size_t plant_count;
+    struct fleet_finding *findings;
+    size_t finding_count;
+    struct fleet_missing *missing;
+    size_t missing_count;
+};
+/* Many plants' month: books not read, exceedances and shortfalls, the farthest beyond first, and
+ * how many plants have neither. Sorts the findings. */
+struct page *report_fleet_page(struct arena *a, struct fleet_summary *summary);
+
+/* Months side by side: exceedances by month, every limit's months (the worst figure of each), then
+ * highest, lowest and mean. The table has a row for each limit and month, and one for the span,
+ * whose month is empty. */
+struct table *report_span_table(struct arena *a, const struct permit_span *span);
+struct page *report_span_page(struct arena *a, const struct plant *plant,
+                              const struct permit_span *span);
+/* A month beside itself under other rules, a row for each difference, verdicts first: limit,
+ * period, rule, both figures, both verdicts. */
+struct table *report_compare_table(struct arena *a, const struct permit_comparison *c);
+/* In words; `asked` is "nondetect=half, sign=all". */
+struct page *report_what_if_page(struct arena *a, const struct plant *plant,
+                                 const struct permit_comparison *c, const char *asked);
+/* The limits whose verdict hangs on a rule, and how many others there are. */
+struct page *report_rules_page(struct arena *a, const struct plant *plant,
+                               const struct permit_comparison *c);
+/* What the month's exceedances count as, one row each. */
+struct table *report_count_table(struct arena *a, const struct permit_count *counts, size_t count);
+struct page *report_count_page(struct arena *a, const struct plant *plant,
+                               const struct permit_month *m, const struct permit_count *counts,
+                               size_t count);
+/* Six months beside the federal screening criteria: a row for each parameter at an outfall, worst
+ * first. */
+struct table *report_standing_table(struct arena *a, const struct permit_standing *s);
+struct page *report_standing_page(struct arena *a, const struct plant *plant,
+                                  const struct permit_standing *s);
+/* ---- notices ---- */
+
+struct notice {
+    const struct plant *plant;
+    const struct frame *frame;
+    const struct permit_finding *const *finding; /* of one day and outfall */
+    size_t findings;
+    bool written;        /* the written one, of 5 days; else the first, of 24 hours */
+    struct moment aware; /* day DAY_NONE: not known */
+    /* What is on record about the day or its limits, one line each: printed above what the person
+     * is to write, never in its place. */
+    const char *const *remark;
+    size_t remarks;
+};
+
+/* A draft as text, marked so on every page: facts filled in, cause and remedy left blank. */
+void report_notice(FILE *out, struct arena *a, const struct notice *n);
+
+struct notice_listed { /* a finding and its drafts; "" where there is none */
+    const struct permit_finding *finding;
+    struct moment aware; /* day DAY_NONE: not known */
+    const char *draft, *written_draft;
+};
+struct table *report_notices_table(struct arena *a, const struct notice_listed *l, size_t count);
+/* "drafts/notice-24-hours-2025-03-18-001.txt: draft written" */
+const char *report_notice_file(struct arena *a, const char *path, bool was_there);
+/* `files`: such a line for each draft. */
+struct page *report_notices_page(struct arena *a, const struct plant *plant,
+                                 const struct permit_month *m, const struct notice_listed *l,
+                                 size_t count, const char *const *files, size_t file_count);
+
 /* The monthly summary as text: the permit page, daily values, rows set aside, revisions, the rules
  * used, cautions, a place for the certification. Fits 100 columns, US Letter or A4. */
 struct page *report_month_page(struct arena *a, const struct month_input *in);

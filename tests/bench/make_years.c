@@ -1,8 +1,8 @@
 /* make_years: the benchmark's plants and their readings, the same every time: ROWS rows over ten
- * years and a hundred series, in the order of their dates. make_years FOLDER ROWS writes
- * FOLDER/plant/ (a description), FOLDER/years.csv and FOLDER/next-month.csv; and of a plant with
- * basins, which has what the process table asks for, FOLDER/works/ and FOLDER/works.csv: a hundred
- * series with one reading a day. */
+ * years (or YEARS, to the end of 2024) and a hundred series, in the order of their dates.
+ * make_years FOLDER ROWS [YEARS] writes FOLDER/plant/ (a description), FOLDER/years.csv and
+ * FOLDER/next-month.csv; and of a plant with basins, which has what the process table asks for,
+ * FOLDER/works/ and FOLDER/works.csv: a hundred series with one reading a day. */
 #include <inttypes.h>
 #include <stdio.h>
 #include <stdlib.h>
@@ -21,7 +21,7 @@ static const struct measure measures[] = {
     {"NH3N", "mg/L", "SM 4500-NH3", 1, 20, 1},     {"TP", "mg/L", "SM 4500-P", 1, 6, 1},
     {"COD", "mg/L", "SM 5220 D", 20, 120, 0},      {"PH", "pH", "SM 4500-H", 6, 8, 1},
     {"DO", "mg/L", "SM 4500-O", 4, 10, 1},         {"TEMP", "degC", "SM 2550", 8, 25, 1},
-    {"ECOLI", "MPN/100mL", "Colilert", 1, 300, 0}, {"NO3N", "mg/L", "EPA 300.0", 1, 20, 1},
+    {"ECOLI", "MPN/100mL", "SM 9223 B", 1, 300, 0}, {"NO3N", "mg/L", "EPA 300.0", 1, 20, 1},
 };
 static const char *const points[] = {"EFF", "INF", "PE", "AER1", "AER2",
                                      "RAS", "WAS", "UP", "DOWN", "EF2"};
@@ -87,12 +87,14 @@ static void write_days(FILE *f, int year, int month, long *day, long days, long 
     }
 }
 
-static void write_readings(const char *folder, long rows)
+static void write_readings(const char *folder, long rows, int years)
 {
     FILE *f = opened(folder, "years.csv");
-    long day = 0, days = 3653; /* 2015-01-01 to 2024-12-31 */
+    long day = 0, days = 0;
+    for (int year = 2025 - years; year <= 2024; year++)
+        days += year % 4 == 0 ? 366 : 365;
     fprintf(f, "date,time,point,parameter,value,unit,sample,method,analyst\n");
-    for (int year = 2015; year <= 2024; year++)
+    for (int year = 2025 - years; year <= 2024; year++)
         for (int month = 1; month <= 12; month++)
             write_days(f, year, month, &day, days, rows);
     closed(f);
@@ -272,12 +274,13 @@ static void write_works(const char *folder)
 
 int main(int argc, char **argv)
 {
-    if (argc != 3) {
-        fprintf(stderr, "usage: make_years FOLDER ROWS\n");
+    int years = argc == 4 ? (int)strtol(argv[3], NULL, 10) : 10;
+    if (argc < 3 || argc > 4 || years < 1 || years > 100) {
+        fprintf(stderr, "usage: make_years FOLDER ROWS [YEARS]\n");
         return 2;
     }
     write_plant(argv[1]);
-    write_readings(argv[1], strtol(argv[2], NULL, 10));
+    write_readings(argv[1], strtol(argv[2], NULL, 10), years);
     write_works(argv[1]);
     write_works_readings(argv[1]);
     return 0;

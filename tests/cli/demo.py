@@ -82,6 +82,53 @@ def months(run):
                           f"{month} {b['point']} {b['parameter']} {b['statistic']} {b['from']}: {column} is '{a[column]}', expected '{b[column]}'")
 
 
+def half_even(number, decimals):
+    scaled = number * 10**decimals
+    whole = scaled.numerator // scaled.denominator
+    rest = scaled - whole
+    whole += rest > Fraction(1, 2) or (rest == Fraction(1, 2) and whole % 2)
+    digits = str(whole).rjust(decimals + 1, "0")
+    return f"{digits[:-decimals]}.{digits[-decimals:]}" if decimals else digits
+
+
+def span_of(line, per_month):
+    """What a limit's months come to, from rows worked independently: one row a month, then one for all."""
+    low = line[6] in ("min", "above")
+    number = {r["figure"]: Fraction(re.sub("[<>]", "", r["figure"])) for rs in per_month.values() for r in rs if r["figure"]}
+    figures = [r["figure"] for m in sorted(per_month) for r in per_month[m] if r["figure"]]
+    totals = [0, 0]
+    for month, found in sorted(per_month.items()):
+        beyond = [r for r in found if r["verdict"] == "exceeded"]
+        short = sum(r["required"] != "" and int(r["samples"]) < int(r["required"]) for r in found)
+        times = sum(int(r["times"] or 1) for r in beyond)
+        valued = [r for r in (beyond or found) if r["figure"]]
+        worst = (min if low else max)(valued, key=lambda r: number[r["figure"]]) if valued else found[0]
+        totals = [totals[0] + times, totals[1] + short]
+        yield (*line, month, worst["figure"], worst["verdict"], str(times), str(short), "", "", "")
+    mean = ""
+    if figures and not any(f[0] in "<>" for f in figures):
+        mean = half_even(sum(number[f] for f in figures) / len(figures), max(len(f.partition(".")[2]) for f in figures))
+    yield (*line, "", "", "", str(totals[0]), str(totals[1]), max(figures, key=number.get, default=""),
+           min(figures, key=number.get, default=""), mean)
+
+
+def spans(run):
+    """A year side by side: the figures are those of the months, gathered here a second time."""
+    key = ("outfall", "point", "parameter", "basis", "statistic", "unit", "bound", "limit")
+    found = {}
+    for row in table("expected.csv"):
+        found.setdefault(tuple(row[k] for k in key), {}).setdefault(row["month"], []).append(row)
+    months_told = sorted({row["month"] for row in table("expected.csv")})
+    got = rows(run.call("permit", "--month", months_told[0], "--to", months_told[-1], "--as", "csv"))
+    told = {}
+    for row in got:
+        told.setdefault(tuple(row[k] for k in key), []).append(tuple(row.values()))
+    run.check(set(told) == set(found), f"limits side by side: {set(told) ^ set(found)}")
+    for line, per_month in found.items():
+        expected = list(span_of(line, per_month))
+        run.check(told.get(line) == expected, f"side by side: {told.get(line)}, expected {expected}")
+
+
 def where(expected):
     """Where the program prints a figure: those of all basins together stand under the plant."""
     whole = ("solids-inventory", "solids-retention-time", "solids-retention-time-wasting-only", "food-to-microorganism")
@@ -190,6 +237,7 @@ def main():
         load(run)
         asides(run)
         months(run)
+        spans(run)
         process(run)
         behaves(run)
         again(run)

@@ -261,8 +261,9 @@ def check_columns(checks):
              ("day", 0, ("2025-03-04", "--as", "csv")),
              ("process", 0, day + ("--as", "csv")), ("process", 1, day + ("--step", "month", "--as", "csv")),
              ("waste", 0, ("--srt", "10", "--on", "2025-03-04", "--as", "csv")),
-             ("permit", 0, ("--month", "2025-03", "--as", "csv")), ("doubts", 0, ("--month", "2025-03", "--as", "csv")), ("plant", 0, ("--as", "csv")), ("check", 0, ("--as", "csv")),
-             ("export", 0, ()),
+             ("permit", 0, ("--month", "2025-03", "--as", "csv")), ("room", 0, ("--on", "2025-03-04", "--as", "csv")),
+             ("due", 0, ("--on", "2025-03-04", "--as", "csv")), ("doubts", 0, ("--month", "2025-03", "--as", "csv")),
+             ("plant", 0, ("--as", "csv")), ("check", 0, ("--as", "csv")), ("export", 0, ()),
              ("history", 0, ("--as", "csv")), ("history", 1, ("--batches", "--as", "csv")), ("remark", 0, ("--list", "--as", "csv")),
              ("formula", 0, ("--as", "csv")), ("formula", 1, ("mass-load", "--as", "csv")),
              ("formula", 2, ("mass-load", "flow=1", "concentration=2", "--as", "csv")))
@@ -281,11 +282,18 @@ def check_columns(checks):
         aside = next(csv.reader(io.StringIO(call("export", "--set-aside", folder=folder).stdout)), [])
         lists = listed_columns("weirbook-export.1")
         checks.that(aside == lists[0] + lists[1], f"weirbook-export.1: COLUMNS has {lists}, --set-aside prints {aside}")
+        for title, rest in (("Under other rules", ("--rules",)), ("Months", ("--to", "2025-04")), ("Counts", ("--count",)), ("Standing", ("--standing",)),
+                            ("Notices", ("--notices", "drafts"))):
+            result = call("permit", "--month", "2025-03", *rest, "--as", "csv", folder=folder)
+            header = next(csv.reader(io.StringIO(result.stdout)), [])
+            told = [c for x in section(page("weirbook-permit.1"), title) if x.startswith(".It Cm ") for c in x[7:].split(" , ")]
+            checks.that(header == told, f"weirbook-permit.1: {title} has {told}, the program prints {header}")
     kinds = [entries(section(page("weirbook-doubts.1"), title), "Li") for title in ("Cannot be right", "Deserves a question")]
     checks.same("weirbook-doubts.1: kinds", set(array("src/process/doubt.c", "doubt_words")), {tag for tags in kinds for tag in tags})
     verdicts = array("src/permit/verdict.c", "verdict_words")
     tags = entries(section(page("weirbook-permit.1"), "Verdicts"), "Li")
     checks.same("weirbook-permit.1: Verdicts", set(verdicts), set(tags))
+    checks.same("weirbook-due.1: States", set(array("src/permit/due.c", "due_words")), set(entries(section(page("weirbook-due.1"), "States"), "Li")))
 
 
 # ---- words of files --------------------------------------------------------------------------------------------------
