@@ -266,7 +266,7 @@ struct book_revision {
     day_t day;
     int minute;
     int point, parameter;
-    const char *sample, *old_text, *new_text, *unit, *who, *when, *reason, *file;
+    const char *sample, *old_text, *old_unit, *new_text, *unit, *who, *when, *reason, *file;
     long line;
     int version;
 };

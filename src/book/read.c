@@ -604,17 +604,19 @@ enum {
     AT_WHO,
     AT_WHEN,
     AT_REASON,
-    AT_FILE
+    AT_FILE,
+    AT_OLD_DETAIL
 };
 
 static enum status give_revision(struct book *b, struct names *n, sqlite3_stmt *s,
                                  book_revision_sink *sink, void *context, struct fault *f)
 {
     const struct series_name *series = names_series(n, sqlite3_column_int64(s, AT_SERIES));
-    const struct common *common = NULL;
-    if (names_common(b, n, sqlite3_column_int64(s, AT_DETAIL), &common, f) != OK)
+    const struct common *common = NULL, *old = NULL;
+    if (names_common(b, n, sqlite3_column_int64(s, AT_DETAIL), &common, f) != OK ||
+        names_common(b, n, sqlite3_column_int64(s, AT_OLD_DETAIL), &old, f) != OK)
         return FAULT;
-    if (!series || series->plant_point < 0 || series->plant_parameter < 0 || !common)
+    if (!series || series->plant_point < 0 || series->plant_parameter < 0 || !common || !old)
         return book_damaged(b, f, "a revision is of a reading its description does not know");
     bool withdrawn = sqlite3_column_int(s, AT_QUALIFIER) == QUALIFIER_WITHDRAWN;
     const struct book_revision out = {
@@ -626,6 +628,7 @@ static enum status give_revision(struct book *b, struct names *n, sqlite3_stmt *
         .old_text = column_text(s, AT_OLD),
         .new_text = withdrawn ? "withdrawn" : column_text(s, AT_NEW),
         .unit = common->unit_name,
+        .old_unit = old->unit_name,
         .who = column_text(s, AT_WHO),
         .when = column_text(s, AT_WHEN),
         .reason = column_text(s, AT_REASON),

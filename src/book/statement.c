@@ -133,7 +133,8 @@ const char *const book_sql[] = {
         "ORDER BY r.day, r.minute, s.sample",
     [REVISIONS] =
         "SELECT r.day, r.minute, r.series, r.detail, r.qualifier, r.value, o.value, r.version, "
-        "r.batch, r.line, b.who, b.at, coalesce(l.reason, t.reason, ''), coalesce(l.file, '') "
+        "r.batch, r.line, b.who, b.at, coalesce(l.reason, t.reason, ''), coalesce(l.file, ''), "
+        "o.detail "
         "FROM revision v JOIN reading r ON r.id = v.reading JOIN reading o ON o.id = v.replaced "
         "JOIN batch b ON b.id = r.batch LEFT JOIN load l ON l.batch = r.batch "
         "LEFT JOIN act t ON t.batch = r.batch "

@@ -75,7 +75,9 @@ static enum status gather_revision(void *context, const struct book_revision *fr
         .date = arena_text(a, date),
         .point = g->plant->points[from->point].id,
         .parameter = g->plant->parameters[from->parameter].id,
-        .old_text = arena_text(a, from->old_text),
+        .old_text = text_equal(from->old_unit, from->unit)
+                        ? arena_text(a, from->old_text)
+                        : arena_print(a, "%s %s", from->old_text, from->old_unit),
         .new_text = arena_text(a, from->new_text),
         .unit = arena_text(a, from->unit),
         .who = arena_text(a, from->who),
