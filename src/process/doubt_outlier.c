@@ -156,13 +156,16 @@ double doubt_grubbs_critical(size_t count, double tail)
 
 /* ---- Dixon ---- */
 
-static const int dixon_95[] = {970, 829, 710, 625, 568, 526, 493, 466};
-static const int dixon_99[] = {994, 926, 821, 740, 680, 634, 598, 568};
+/* In thousandths, of 3 to 10 values, at 95 and at 99 %. */
+static const int dixon[2][8] = {
+    {970, 829, 710, 625, 568, 526, 493, 466},
+    {994, 926, 821, 740, 680, 634, 598, 568},
+};
 
 int doubt_dixon_critical(size_t count, bool at_99)
 {
     assert(count >= 3 && count <= 10);
-    return (at_99 ? dixon_99 : dixon_95)[count - 3];
+    return dixon[at_99 ? 1 : 0][count - 3];
 }
 
 const struct fraction *doubt_dixon(struct arena *a, const int64_t *y, size_t count, bool top)

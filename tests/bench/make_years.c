@@ -17,10 +17,10 @@ struct measure {
 };
 
 static const struct measure measures[] = {
-    {"BOD5", "mg/L", "SM 5210 B", 2, 40, 1},       {"TSS", "mg/L", "SM 2540 D", 2, 60, 1},
-    {"NH3N", "mg/L", "SM 4500-NH3", 1, 20, 1},     {"TP", "mg/L", "SM 4500-P", 1, 6, 1},
-    {"COD", "mg/L", "SM 5220 D", 20, 120, 0},      {"PH", "pH", "SM 4500-H", 6, 8, 1},
-    {"DO", "mg/L", "SM 4500-O", 4, 10, 1},         {"TEMP", "degC", "SM 2550", 8, 25, 1},
+    {"BOD5", "mg/L", "SM 5210 B", 2, 40, 1},        {"TSS", "mg/L", "SM 2540 D", 2, 60, 1},
+    {"NH3N", "mg/L", "SM 4500-NH3", 1, 20, 1},      {"TP", "mg/L", "SM 4500-P", 1, 6, 1},
+    {"COD", "mg/L", "SM 5220 D", 20, 120, 0},       {"PH", "pH", "SM 4500-H", 6, 8, 1},
+    {"DO", "mg/L", "SM 4500-O", 4, 10, 1},          {"TEMP", "degC", "SM 2550", 8, 25, 1},
     {"ECOLI", "MPN/100mL", "SM 9223 B", 1, 300, 0}, {"NO3N", "mg/L", "EPA 300.0", 1, 20, 1},
 };
 static const char *const points[] = {"EFF", "INF", "PE", "AER1", "AER2",
