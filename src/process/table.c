@@ -179,7 +179,9 @@ static const char *bound_note(struct table *t, const struct line *line, size_t a
     bool none = most == NULL;
     if (none) /* the least a count can be */
         most = fraction_from_int(a, 1);
-    value[argument] = (struct formula_value){.number = &most, .count = 1};
+    const struct fraction **bound = arena_alloc(a, sizeof(const struct fraction *));
+    *bound = most;
+    value[argument] = (struct formula_value){.number = bound, .count = 1};
     if (ready_work(a, line->ready, value, &least, &fault) != OK)
         return arena_text(t->results, fault.text);
     if (none)
@@ -198,6 +200,7 @@ static bool is_counted(struct table *t, const struct line *line, day_t day,
     const struct input *in = &line->input[i];
     if (in->stream == NULL)
         return true;
+    assert(value[i].number != NULL); /* what has a stream has a number by now */
     bool less = stream_day(&t->s, in->stream, day).less;
     if (!less && fraction_sign(value[i].number[0]) != 0)
         return true;

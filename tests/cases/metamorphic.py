@@ -210,7 +210,7 @@ def main():
         names = sorted(n for n in os.listdir(root) if os.path.isdir(os.path.join(root, n)))
         for i, name in enumerate(names):
             jobs.append((name, "worked", (root, name, built_in), CHANGES if wide else CHANGES[i % len(CHANGES):][:1]))
-    jobs += [(f"seed {seed}", "invented", seed, CHANGES) for seed in range(FIRST_SEED, FIRST_SEED + (120 if wide else 4))]
+    jobs += [(f"seed {seed}", "invented", seed, CHANGES) for seed in range(FIRST_SEED, FIRST_SEED + (120 if wide else 2))]
     with concurrent.futures.ProcessPoolExecutor(max_workers=min(2, os.cpu_count() or 1)) as pool:
         done = list(pool.map(check, jobs))
     for words in [line for one in done for line in one.words][:10]:
