@@ -190,7 +190,8 @@ static enum status add_row(struct work *w, bool when_missing, struct permit_row 
         x.note = series.why;
     verdict_row(w, &x, when_missing, row);
     if (when_missing)
-        row->note = arena_print(w->arena, "no figure for its condition: %s", w->limit->when.text);
+        row->note = arena_print(w->arena, "no figure for its condition: %s; load its readings",
+                                w->limit->when.text);
     row->samples = samples_taken(w, &series);
     row->has_required = samples_required(w, &row->required);
 done:

@@ -199,8 +199,9 @@ static void a_missing_condition_is_told_in_the_note(void **state)
     struct fault f = {0};
 
     assert_int_equal(work_month(m, "2035-01-01", &pm, &f), OK);
-    assert_string_equal(pm.rows[0].note,
-                        "no figure for its condition: EFF FLOW monthly-average <= 2.5 MGD");
+    assert_string_equal(
+        pm.rows[0].note,
+        "no figure for its condition: EFF FLOW monthly-average <= 2.5 MGD; load its readings");
     made_free(m);
 }
 
